@@ -1,0 +1,98 @@
+package planar
+
+import (
+	"example.com/twopoint/rigid"
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+// A system is a Design after everything that is exact: links fused into bodies,
+// pins merged, sliding pins and driven distances taken apart into hidden bodies,
+// the equations between angles alone eliminated, and the scalar equations that
+// remain sorted into blocks in the order of solution. It is immutable once New
+// has made it. Structure (what is solved when) ends here; the program compiled
+// from it says how.
+type system struct {
+	links  int     // links of the Design, without the hidden ones
+	seats  []seat  // of every link, then of every hidden one
+	angles []angle // of every body; angles[0] is the frame's: zero
+	free   []int   // ψk is the angle of body free[k]
+	rows   []row   // all scalar equations that are solved
+	blocks []block // in the order of solution
+	checks []check // redundant equations set aside: verified after each Move
+	groups []Group // Assur groups, for Groups
+	drives int     // inputs, in the order of Design.Drives
+	length float64 // the largest length, m
+}
+
+// A seat is where a link lies: on which body (0 is the frame's), in which pose.
+type seat struct {
+	body  int
+	local rigid.Pose
+}
+
+// An angle is the linear form of a body's angle, in rad:
+//
+//	θ = Σ Coef·ψ + Σ Coef·in + Const
+type angle struct {
+	psi   []term // index into system.free
+	in    []term // index of a drive
+	Const float64
+	// phases that are read at Assemble (AsAssembled), added with their coefficients
+	phase []term // index of a joint of the Design
+}
+
+type term struct {
+	Index int
+	Coef  float64
+}
+
+// Scalar unknowns are numbered: x and y of body b > 0 are 2(b−1) and 2(b−1)+1;
+// ψk is 2(bodies−1)+k.
+func (s *system) xy(body int) int { return 2 * (body - 1) }
+func (s *system) psi(k int) int   { return 2*(len(s.angles)-1) + k }
+
+type rowKind uint8
+
+const (
+	rowX     rowKind = iota // x of the point on a = x of the point on b
+	rowY                    // y, likewise; always the row after its rowX
+	rowGuide                // n·(pb − pa) = value, n = u⊥, u turning with a
+	rowSlide                // u·(pb − pa) = value + in[drive]
+	rowRack                 // u·(pb − pa) + rate·(θb − θa) = value (+ phase), a the rack's body, b the pinion's
+)
+
+// A row is a scalar equation between two bodies.
+type row struct {
+	kind   rowKind
+	a, b   int     // bodies
+	pa, pb r2.Vec  // points of a and b, in their axes
+	u      r2.Vec  // unit vector in a's axes (rowGuide, rowSlide, rowRack)
+	value  float64 // m
+	drive  int     // rowSlide: index of the drive, or −1
+	rate   float64 // rowRack: signed radius, m/rad
+	joint  int     // index into Design.Joints, or len(Joints) + index of the drive
+	phased bool    // value is read at Assemble (AsAssembled)
+}
+
+// A block is a square set of unknowns and rows that must be solved together, all
+// else in its rows being known by then.
+type block struct {
+	unknowns []int
+	rows     []int // indices into system.rows
+	group    int   // index into system.groups of the group it is part of, or −1
+}
+
+// A check is an equation that holds by itself if the design is right.
+type check struct {
+	row   row
+	angle *angleCheck // instead of row: a redundant equation between angles
+	unit  string      // what to call it in an error
+}
+
+// An angleCheck is Σ Coef·θ(body) = Const, modulo 2π when Mod.
+type angleCheck struct {
+	of    []term
+	Const float64
+	mod   bool
+	joint int
+}
