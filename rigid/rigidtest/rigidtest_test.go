@@ -1,0 +1,331 @@
+package rigidtest_test
+
+import (
+	"math"
+	"strings"
+	"testing"
+
+	"github.com/google/go-cmp/cmp"
+	"gonum.org/v1/gonum/spatial/r2"
+
+	"example.com/twopoint/rigid"
+	"example.com/twopoint/rigid/rigidtest"
+)
+
+// A state is what a mechanism package writes: motions and coordinates by name.
+type state struct {
+	Crank, Rod                      rigid.Motion
+	Contact                         rigid.Point
+	Turn, Swing, Slide, Arc, Travel rigid.Coordinate
+	Knee                            rigid.Side
+	Transmission, Margin            float64
+	Path                            rigid.Path
+	Circle                          rigid.Circle
+	Velocity                        rigid.VelocityTerms
+	Acceleration                    rigid.AccelerationTerms
+	Mount                           rigid.Placement
+	Misfit                          rigid.Misfit
+	Range                           rigid.Interval
+	Ratio                           rigid.Coefficients
+	Seen                            []rigid.Point
+	Train                           map[string]rigid.Coordinate
+	Behind                          *rigid.Motion
+	Pole                            r2.Vec
+	Drive                           struct{ Turn, Slide, Time float64 }
+	Whatever                        any
+}
+
+func point(x float64) rigid.Point {
+	return rigid.Point{Pos: r2.Vec{X: x, Y: 2 * x}, Vel: r2.Vec{X: 3 * x, Y: 4 * x}, Acc: r2.Vec{X: 5 * x, Y: 6 * x}}
+}
+
+func motion(x float64) rigid.Motion {
+	return rigid.Motion{
+		Pose: rigid.NewPose(x, 2*x, 3*x), Vel: r2.Vec{X: 4 * x, Y: 5 * x}, Acc: r2.Vec{X: 6 * x, Y: 7 * x},
+		Omega: 8 * x, Alpha: 9 * x,
+	}
+}
+
+func coordinate(x float64) rigid.Coordinate { return rigid.Coordinate{Pos: x, Vel: 2 * x, Acc: 3 * x} }
+
+// newState returns a state without a zero in it, the same each time.
+func newState() *state {
+	path, err := point(0.3).Path()
+	if err != nil {
+		panic(err)
+	}
+	path.Curvature, path.SpeedRate = 2, 3
+	behind, m := motion(0.8), motion(0.35)
+	local := point(0.9)
+	return &state{
+		Crank: motion(0.5), Rod: motion(-0.7), Contact: point(0.2),
+		Turn: coordinate(1.1), Swing: coordinate(0.4), Slide: coordinate(0.6), Arc: coordinate(2), Travel: coordinate(-3),
+		Knee: rigid.Right, Transmission: 1.2, Margin: 0.8, Path: path,
+		Circle:   rigid.Circle{Centre: r2.Vec{X: 1, Y: 2}, Radius: 3},
+		Velocity: m.VelocityTerms(local), Acceleration: m.AccelerationTerms(local),
+		Mount: rigid.Placement{X: 1, Y: 2, Angle: 3}, Misfit: rigid.Misfit{Pos: 1, Vel: 2, Acc: 3},
+		Range: rigid.Interval{Lo: -1, Hi: 1}, Ratio: rigid.Coefficients{In: 1, Out: 2, First: 3, Second: 4},
+		Seen:   []rigid.Point{point(1), point(2)},
+		Train:  map[string]rigid.Coordinate{"sun": coordinate(1), "arm": coordinate(2), "Turn": coordinate(3)},
+		Behind: &behind, Pole: r2.Vec{X: 1, Y: 2}, Drive: struct{ Turn, Slide, Time float64 }{1, 2, 3}, Whatever: motion(0.9),
+	}
+}
+
+// A row names a number of a state, the tolerance that holds for it and whether
+// Angles is the option that applies it. Slack is the difference allowed.
+type row struct {
+	name   string
+	number func(s *state) *float64
+	angles bool
+	slack  float64
+}
+
+var tolerance = rigidtest.Tolerance{Pos: 1e-3, Vel: 1e-2, Acc: 1e-1, Relative: 1e-5}
+
+const slackPos, slackVel, slackAcc, slackRelative = 1e-3, 1e-2, 1e-1, 1e-5
+
+func rows() []row {
+	l, a := false, true
+	r := []row{
+		{"Omega", func(s *state) *float64 { return &s.Crank.Omega }, a, slackVel},
+		{"Alpha", func(s *state) *float64 { return &s.Rod.Alpha }, a, slackAcc},
+		{"Transmission", func(s *state) *float64 { return &s.Transmission }, a, slackPos},
+		{"Margin", func(s *state) *float64 { return &s.Margin }, l, slackRelative},
+		{"Speed", func(s *state) *float64 { return &s.Path.Speed }, l, slackVel},
+		{"SpeedRate", func(s *state) *float64 { return &s.Path.SpeedRate }, l, slackAcc},
+		{"Curvature", func(s *state) *float64 { return &s.Path.Curvature }, l, 2 * slackRelative},
+		{"Radius", func(s *state) *float64 { return &s.Circle.Radius }, l, slackPos},
+		{"Mount.X", func(s *state) *float64 { return &s.Mount.X }, l, slackPos},
+		{"Mount.Y", func(s *state) *float64 { return &s.Mount.Y }, l, slackPos},
+		{"Mount.Angle", func(s *state) *float64 { return &s.Mount.Angle }, a, slackPos},
+		{"Misfit.Pos", func(s *state) *float64 { return &s.Misfit.Pos }, l, slackPos},
+		{"Misfit.Vel", func(s *state) *float64 { return &s.Misfit.Vel }, l, slackVel},
+		{"Misfit.Acc", func(s *state) *float64 { return &s.Misfit.Acc }, l, slackAcc},
+		{"Range.Lo", func(s *state) *float64 { return &s.Range.Lo }, l, slackPos},
+		{"Range.Hi", func(s *state) *float64 { return &s.Range.Hi }, l, slackPos},
+		{"Ratio.In", func(s *state) *float64 { return &s.Ratio.In }, l, slackPos},
+		{"Ratio.Out", func(s *state) *float64 { return &s.Ratio.Out }, l, slackPos},
+		{"Ratio.First", func(s *state) *float64 { return &s.Ratio.First }, l, slackVel},
+		{"Ratio.Second", func(s *state) *float64 { return &s.Ratio.Second }, l, slackAcc},
+		{"Drive.Turn", func(s *state) *float64 { return &s.Drive.Turn }, a, slackPos},
+		{"Drive.Slide", func(s *state) *float64 { return &s.Drive.Slide }, l, slackPos},
+	}
+	vector := func(name string, v func(s *state) *r2.Vec, slack float64) {
+		r = append(r, row{name + ".X", func(s *state) *float64 { return &v(s).X }, l, slack},
+			row{name + ".Y", func(s *state) *float64 { return &v(s).Y }, l, slack})
+	}
+	vector("Origin", func(s *state) *r2.Vec { return &s.Rod.Pose.Origin }, slackPos)
+	vector("Motion.Vel", func(s *state) *r2.Vec { return &s.Rod.Vel }, slackVel)
+	vector("Motion.Acc", func(s *state) *r2.Vec { return &s.Rod.Acc }, slackAcc)
+	vector("Behind.Acc", func(s *state) *r2.Vec { return &s.Behind.Acc }, slackAcc)
+	vector("Contact.Pos", func(s *state) *r2.Vec { return &s.Contact.Pos }, slackPos)
+	vector("Contact.Vel", func(s *state) *r2.Vec { return &s.Contact.Vel }, slackVel)
+	vector("Seen[1].Acc", func(s *state) *r2.Vec { return &s.Seen[1].Acc }, slackAcc)
+	vector("Centre", func(s *state) *r2.Vec { return &s.Circle.Centre }, slackPos)
+	vector("Pole", func(s *state) *r2.Vec { return &s.Pole }, slackPos)
+	vector("Velocity.Base", func(s *state) *r2.Vec { return &s.Velocity.Base }, slackVel)
+	vector("Velocity.Turning", func(s *state) *r2.Vec { return &s.Velocity.Turning }, slackVel)
+	vector("Velocity.Relative", func(s *state) *r2.Vec { return &s.Velocity.Relative }, slackVel)
+	vector("Acceleration.Base", func(s *state) *r2.Vec { return &s.Acceleration.Base }, slackAcc)
+	vector("Acceleration.Tangential", func(s *state) *r2.Vec { return &s.Acceleration.Tangential }, slackAcc)
+	vector("Acceleration.Normal", func(s *state) *r2.Vec { return &s.Acceleration.Normal }, slackAcc)
+	vector("Acceleration.Relative", func(s *state) *r2.Vec { return &s.Acceleration.Relative }, slackAcc)
+	vector("Acceleration.Coriolis", func(s *state) *r2.Vec { return &s.Acceleration.Coriolis }, slackAcc)
+	scalar := func(name string, c func(s *state) *rigid.Coordinate, angles bool) {
+		r = append(r, row{name + ".Pos", func(s *state) *float64 { return &c(s).Pos }, angles, slackPos},
+			row{name + ".Vel", func(s *state) *float64 { return &c(s).Vel }, angles, slackVel},
+			row{name + ".Acc", func(s *state) *float64 { return &c(s).Acc }, angles, slackAcc})
+	}
+	scalar("Turn", func(s *state) *rigid.Coordinate { return &s.Turn }, a)
+	scalar("Swing", func(s *state) *rigid.Coordinate { return &s.Swing }, a)
+	scalar("Slide", func(s *state) *rigid.Coordinate { return &s.Slide }, l)
+	scalar("Arc", func(s *state) *rigid.Coordinate { return &s.Arc }, l)
+	scalar("Travel", func(s *state) *rigid.Coordinate { return &s.Travel }, l)
+	return r
+}
+
+var both = cmp.Options{rigidtest.Lengths(tolerance), rigidtest.Angles(tolerance)}
+
+// differ collects the paths that a comparison finds different, and those of all
+// numbers that no comparer looked at.
+type differ struct {
+	path         cmp.Path
+	off, exact   []string
+	seen, inSame int
+}
+
+func (d *differ) PushStep(s cmp.PathStep) { d.path = append(d.path, s) }
+func (d *differ) PopStep()                { d.path = d.path[:len(d.path)-1] }
+func (d *differ) Report(r cmp.Result) {
+	if !r.Equal() {
+		d.off = append(d.off, d.path.GoString())
+	}
+	if d.path.Last().Type().String() == "float64" && !r.ByFunc() {
+		d.exact = append(d.exact, d.path.GoString())
+	}
+	if r.ByFunc() {
+		d.seen++
+	}
+}
+
+func compare(x, y any, opts ...cmp.Option) *differ {
+	var d differ
+	cmp.Equal(x, y, append(opts, cmp.Reporter(&d))...)
+	return &d
+}
+
+func TestEachNumberIsComparedAlone(t *testing.T) {
+	for _, r := range rows() {
+		within, beyond, none := newState(), newState(), newState()
+		*r.number(within) += 0.9 * r.slack
+		*r.number(beyond) += 1.1 * r.slack
+		*r.number(none) = math.NaN()
+		if diff := cmp.Diff(newState(), within, both); diff != "" {
+			t.Errorf("%s within the tolerance: %s", r.name, diff)
+		}
+		if d := compare(newState(), beyond, both); len(d.off) != 1 {
+			t.Errorf("%s beyond the tolerance: %d numbers off: %v", r.name, len(d.off), d.off)
+		}
+		if d := compare(none, none, both); len(d.off) != 1 {
+			t.Errorf("%s NaN: %d numbers off: %v", r.name, len(d.off), d.off)
+		}
+		// the option that does not cover the number leaves it exact
+		mine, others := rigidtest.Lengths(tolerance), rigidtest.Angles(tolerance)
+		if r.angles {
+			mine, others = others, mine
+		}
+		if d := compare(newState(), within, mine); len(d.off) != 0 {
+			t.Errorf("%s is not covered by its option: %v", r.name, d.off)
+		}
+		if d := compare(newState(), within, others); len(d.off) != 1 {
+			t.Errorf("%s is covered by the other option too", r.name)
+		}
+	}
+}
+
+// Every number of the state is covered, but the one of a struct of the caller's
+// own that no name tells about; each option covers part of them, both the sum.
+func TestEveryNumberIsCoveredOnce(t *testing.T) {
+	all := compare(newState(), newState(), both)
+	if len(all.exact) != 1 || !strings.Contains(all.exact[0], "Drive.Time") {
+		t.Errorf("compared exactly: %v; want Drive.Time alone", all.exact)
+	}
+	l := compare(newState(), newState(), rigidtest.Lengths(tolerance)).seen
+	a := compare(newState(), newState(), rigidtest.Angles(tolerance)).seen
+	if l+a != all.seen || l < 90 || a < 30 {
+		t.Errorf("%d lengths + %d angles, %d together", l, a, all.seen)
+	}
+}
+
+func TestList(t *testing.T) {
+	near := newState()
+	near.Arc.Vel += 0.005
+	near.Train["arm"] = rigid.Coordinate{Pos: 2, Vel: 4.005, Acc: 6}
+	near.Ratio.First += 0.005
+	loose, strict := tolerance, rigidtest.Tolerance{}
+	names := []string{"Arc", "arm", "Ratio"}
+	if d := compare(newState(), near, rigidtest.Lengths(strict, names...), rigidtest.Angles(loose, names...)); len(d.off) != 0 {
+		t.Errorf("fields in the list are not angles: %v", d.off)
+	}
+	near = newState()
+	near.Turn.Vel += 0.005
+	if d := compare(newState(), near, rigidtest.Lengths(loose, names...), rigidtest.Angles(strict, names...)); len(d.off) != 0 {
+		t.Errorf("a list does not replace the default: %v", d.off)
+	}
+	near = newState()
+	near.Train["Turn"] = rigid.Coordinate{Pos: 3, Vel: 6.005, Acc: 9}
+	if d := compare(newState(), near, rigidtest.Lengths(strict), rigidtest.Angles(loose)); len(d.off) != 0 {
+		t.Errorf("a key of a map does not name an angle: %v", d.off)
+	}
+}
+
+func TestExact(t *testing.T) {
+	other := newState()
+	other.Knee = rigid.Left
+	if d := compare(newState(), other, both); len(d.off) != 1 {
+		t.Errorf("knee: %v", d.off)
+	}
+}
+
+func TestDirections(t *testing.T) {
+	at := func(angle, length float64) rigid.Motion {
+		var m rigid.Motion
+		m.Pose.Axis = r2.Vec{X: length * math.Cos(angle), Y: length * math.Sin(angle)}
+		return m
+	}
+	only := rigidtest.Tolerance{Relative: 1e-9}
+	for _, c := range []struct {
+		why  string
+		x, y any
+		tol  rigidtest.Tolerance
+		same bool
+	}{
+		{"across the cut at half a turn", at(math.Pi-4e-4, 1), at(-math.Pi+4e-4, 1), tolerance, true},
+		{"too far across the cut", at(math.Pi-6e-4, 1), at(-math.Pi+6e-4, 1), tolerance, false},
+		{"opposite", at(1, 1), at(1+math.Pi, 1), tolerance, false},
+		{"a zero axis is (1, 0)", rigid.Motion{}, at(0, 1), rigidtest.Tolerance{}, true},
+		{"a zero axis is not (0, 1)", rigid.Motion{}, at(math.Pi/2, 1), tolerance, false},
+		{"not a unit vector", at(1, 1), at(1, 1.1), tolerance, false},
+		{"Relative counts in rad", at(0, 1), at(5e-10, 1), only, true},
+		{"Relative exceeded", at(0, 1), at(2e-9, 1), only, false},
+		{"NaN", at(math.NaN(), 1), at(math.NaN(), 1), tolerance, false},
+		{"infinite", at(1, math.Inf(1)), at(1, math.Inf(1)), tolerance, false},
+		{"a path without a direction", rigid.Path{}, rigid.Path{}, tolerance, true},
+		{"a tangent missing", rigid.Path{Tangent: r2.Vec{X: 1}}, rigid.Path{}, tolerance, false},
+		{"a placement turned once more", rigid.Placement{Angle: 1}, rigid.Placement{Angle: 1 + rigid.Revolution}, tolerance, true},
+		{"a turn lost is an error", struct{ Turn rigid.Coordinate }{coordinate(1)},
+			struct{ Turn rigid.Coordinate }{rigid.Coordinate{Pos: 1 + rigid.Revolution, Vel: 2, Acc: 3}}, tolerance, false},
+	} {
+		d := compare(c.x, c.y, rigidtest.Lengths(c.tol), rigidtest.Angles(c.tol))
+		if c.same != (len(d.off) == 0) {
+			t.Errorf("%s: off %v, want equal %v", c.why, d.off, c.same)
+		}
+		if back := compare(c.y, c.x, rigidtest.Lengths(c.tol), rigidtest.Angles(c.tol)); len(back.off) != len(d.off) {
+			t.Errorf("%s: not symmetric: %v, %v", c.why, d.off, back.off)
+		}
+	}
+}
+
+func TestNumbers(t *testing.T) {
+	inf := math.Inf(1)
+	for _, c := range []struct {
+		why  string
+		x, y float64
+		tol  rigidtest.Tolerance
+		same bool
+	}{
+		{"zero tolerance, equal", 1, 1, rigidtest.Tolerance{}, true},
+		{"zero tolerance, one unit apart", 1, math.Nextafter(1, 2), rigidtest.Tolerance{}, false},
+		{"signs of zero", 0, math.Copysign(0, -1), rigidtest.Tolerance{}, true},
+		{"relative to the greater", 1000, 1000.009, rigidtest.Tolerance{Relative: 1e-5}, true},
+		{"beyond the relative", 1000, 1000.02, rigidtest.Tolerance{Relative: 1e-5}, false},
+		{"the greater of both tolerances", 1000, 1000.02, rigidtest.Tolerance{Pos: 0.1, Relative: 1e-5}, true},
+		{"the absolute end is included", 0, 0.5, rigidtest.Tolerance{Pos: 0.5}, true},
+		{"infinite on both sides", inf, inf, tolerance, true},
+		{"infinities of two signs", inf, -inf, rigidtest.Tolerance{Pos: inf, Relative: inf}, false},
+		{"infinite and not", inf, 1, rigidtest.Tolerance{Relative: 1}, false},
+		{"NaN tolerance", 1, 2, rigidtest.Tolerance{Pos: math.NaN(), Relative: math.NaN()}, false},
+	} {
+		x, y := rigid.Coordinate{Pos: c.x}, rigid.Coordinate{Pos: c.y}
+		if got := cmp.Equal(x, y, rigidtest.Lengths(c.tol)); got != c.same {
+			t.Errorf("%s: %v and %v: %v, want %v", c.why, c.x, c.y, got, c.same)
+		}
+	}
+}
+
+// What is not of the library may have an option of the caller's own beside ours.
+func TestCallersOwn(t *testing.T) {
+	type sample struct {
+		Time float64
+		Ram  rigid.Coordinate
+	}
+	own := cmp.FilterPath(func(p cmp.Path) bool { return p.Last().String() == ".Time" },
+		cmp.Comparer(func(x, y float64) bool { return math.Abs(x-y) < 1 }))
+	x, y := sample{1, coordinate(1)}, sample{1.5, coordinate(1)}
+	if cmp.Equal(x, y, both) {
+		t.Error("a time is not ours to compare")
+	}
+	if diff := cmp.Diff(x, y, both, own); diff != "" {
+		t.Error(diff)
+	}
+}
