@@ -12,10 +12,12 @@ import (
 // has made it. Structure (what is solved when) ends here; the program compiled
 // from it says how.
 type system struct {
-	links  int     // links of the Design, without the hidden ones
-	seats  []seat  // of every link, then of every hidden one
-	angles []angle // of every body; angles[0] is the frame's: zero
-	free   []int   // ψk is the angle of body free[k]
+	links  int      // links of the Design, without the hidden ones
+	seats  []seat   // of every link, then of every hidden one
+	hidden []hidden // what hidden link links+i is
+	angles []angle  // of every body; angles[0] is the frame's: zero
+	class  []int    // of every body: bodies of one class have the same ψ-part; the frame's is 0
+	free   []int    // ψk is the angle of body free[k]
 	rows   []row   // all scalar equations that are solved
 	blocks []block // in the order of solution
 	checks []check // redundant equations set aside: verified after each Move
@@ -23,6 +25,22 @@ type system struct {
 	drives int     // inputs, in the order of Design.Drives
 	length float64 // the largest length, m
 }
+
+// A hidden link is not in the Design: the block of a SlidingPin, whose origin is
+// the pin and whose x axis runs along the slot; or barrel and rod of a Reach, whose
+// origins are its points A and B and whose x axes run from A to B.
+type hidden struct {
+	part  hiddenPart
+	joint int // of the SlidingPin, or len(Joints) + index of the drive
+}
+
+type hiddenPart uint8
+
+const (
+	slotBlock hiddenPart = iota
+	barrel
+	rod
+)
 
 // A seat is where a link lies: on which body (0 is the frame's), in which pose.
 type seat struct {
@@ -61,7 +79,10 @@ const (
 	rowRack                 // u·(pb − pa) + rate·(θb − θa) = value (+ phase), a the rack's body, b the pinion's
 )
 
-// A row is a scalar equation between two bodies.
+// A row is a scalar equation between two bodies. A row between two bodies counts
+// the ψ of both as unknowns of it, even where a point is its body's origin, but for
+// bodies that turn on a point known before (seated): their origin is that point,
+// and rows with it hold their x and y alone.
 type row struct {
 	kind   rowKind
 	a, b   int     // bodies
@@ -72,6 +93,7 @@ type row struct {
 	rate   float64 // rowRack: signed radius, m/rad
 	joint  int     // index into Design.Joints, or len(Joints) + index of the drive
 	phased bool    // value is read at Assemble (AsAssembled)
+	at, bt int     // indices of the points pa and pb: one point of one body has one index
 }
 
 // A block is a square set of unknowns and rows that must be solved together, all
