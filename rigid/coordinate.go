@@ -31,16 +31,28 @@ func (i Interval) Contains(x float64) bool { return i.Lo <= x && x <= i.Hi }
 
 // Angle returns x plus the whole revolutions that bring it into the interval,
 // and whether there are any. An angle that lies inside comes back as it is; of
-// several that would do it is the least. Where there is none it returns x.
+// several that would do it is the least (the greatest, where Lo is −Inf). One that
+// misses an end by no more than the rounding of x, 2.2e-16·|x|, counts as that
+// end, since the sum of an end and some revolutions is rounded so. Where there is
+// none, and for an x that is not finite, it returns x and false.
 func (i Interval) Angle(x float64) (float64, bool) {
-	if i.Contains(x) {
+	if i.Contains(x) && !math.IsInf(x, 0) {
 		return x, true
 	}
-	k := math.Ceil((i.Lo - x) / Revolution)
-	for _, k := range [...]float64{k - 1, k, k + 1} { // the quotient is rounded
-		if y := x + k*Revolution; i.Contains(y) {
-			return y, true
+	const epsilon = 0x1p-52
+	slack := Interval{i.Lo - epsilon*math.Abs(x), i.Hi + epsilon*math.Abs(x)}
+	w := Wrap(x)
+	k, step := math.Ceil((i.Lo-w)/Revolution)-1, 1.0
+	if math.IsInf(i.Lo, -1) {
+		k, step = math.Floor((i.Hi-w)/Revolution)+1, -1
+	}
+	for range 3 { // the quotient is rounded
+		// w is exact and the sum rounded once: over a whole turn there are no gaps
+		y := math.FMA(k, Revolution, w)
+		if i.Lo <= i.Hi && slack.Contains(y) {
+			return min(max(y, i.Lo), i.Hi), true
 		}
+		k += step
 	}
 	return x, false
 }

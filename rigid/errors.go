@@ -22,13 +22,13 @@ var (
 	ErrInput = errors.New("twopoint: wrong input")
 )
 
-// Further causes, found in a DimensionError.
+// Further causes, found in a DimensionError alone.
 var (
 	// ErrNotPositive: the dimension must be greater than zero.
-	ErrNotPositive = errors.New("must be positive")
+	ErrNotPositive = errors.New("twopoint: must be positive")
 	// ErrChangePoint: the dimensions let all links fall into one line where the
 	// motion could go on in two ways, and the mechanism asked for does not.
-	ErrChangePoint = errors.New("the links have a change point")
+	ErrChangePoint = errors.New("twopoint: the links have a change point")
 )
 
 // A DimensionError tells which dimension a constructor refuses, and why.

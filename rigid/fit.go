@@ -114,7 +114,9 @@ func (t *tracked) pose() error {
 	if !finite(t.size, size, sum.X, sum.Y) {
 		return ErrNotFinite
 	}
-	if h := math.Hypot(sum.X, sum.Y); h == 0 || h < LeastMargin*math.Sqrt(t.size)*math.Sqrt(size) {
+	const least = 1e-300 // below it a square loses digits
+	h := math.Hypot(sum.X, sum.Y)
+	if min(t.size, size) < least || h < LeastMargin*math.Sqrt(t.size)*math.Sqrt(size) {
 		return ErrSingular
 	}
 	t.axis = direction(sum)
@@ -132,8 +134,8 @@ func (t *tracked) rates() {
 	}
 }
 
-// motion returns the motion of the body's origin, whose arm from the centroid is
-// −u·local.
+// motion returns the motion of the body's origin, seen from the centroid: that
+// one moves as the mean does, since the arms q sum to nothing.
 func (t *tracked) motion() Motion {
 	c := Motion{
 		Pose: Pose{Origin: t.centroid.Pos, Axis: t.axis},
@@ -142,7 +144,6 @@ func (t *tracked) motion() Motion {
 	}
 	o := c.At(r2.Scale(-1, t.local))
 	c.Pose.Origin, c.Vel, c.Acc = o.Pos, o.Vel, o.Acc
-	// the means fit the centroid; with the pose's −ω²q its arms sum to nothing
 	return c
 }
 

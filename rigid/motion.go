@@ -7,8 +7,8 @@ import "gonum.org/v1/gonum/spatial/r2"
 // velocity in rad/s and angular acceleration in rad/s², both positive
 // counter-clockwise. The zero Motion is the frame itself, at rest.
 //
-// The methods take a pointer because a Motion has 80 bytes; none of them but the
-// assignment of a result changes it.
+// The methods take a pointer, since a copy of 80 bytes shows in a control loop; they
+// don't change it.
 type Motion struct {
 	Pose         Pose
 	Vel, Acc     r2.Vec // of Pose.Origin
@@ -37,8 +37,14 @@ func (m *Motion) At(local r2.Vec) Point {
 //	v = Vel + ω×r + u
 //	a = Acc + α×r − ω²r + b + 2ω×u
 func (m *Motion) Carry(local Point) Point {
-	v, a := m.VelocityTerms(local), m.AccelerationTerms(local)
-	return Point{Pos: m.Pose.Point(local.Pos), Vel: v.Sum(), Acc: a.Sum()}
+	u := m.Pose.axis()
+	p, v, a := m.At(local.Pos), turn(u, local.Vel), turn(u, local.Acc)
+	c := 2 * m.Omega
+	return Point{
+		Pos: p.Pos,
+		Vel: r2.Vec{X: p.Vel.X + v.X, Y: p.Vel.Y + v.Y},
+		Acc: r2.Vec{X: p.Acc.X + a.X - c*v.Y, Y: p.Acc.Y + a.Y + c*v.X},
+	}
 }
 
 // VelocityTerms are the terms of the velocity of a point that moves in a body,

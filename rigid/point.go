@@ -62,11 +62,14 @@ func (p Path) Centre() (r2.Vec, error) {
 }
 
 // direction returns the unit vector along v, which is not zero and finite, of
-// any magnitude: v is brought near 1 by a power of two first, so that neither the
-// largest nor a subnormal number loses digits.
+// any magnitude: a v whose length overflows or is subnormal is brought near 1 by a
+// power of two first.
 func direction(v r2.Vec) r2.Vec {
-	_, e := math.Frexp(max(math.Abs(v.X), math.Abs(v.Y)))
-	v = r2.Vec{X: math.Ldexp(v.X, -e), Y: math.Ldexp(v.Y, -e)}
 	h := math.Hypot(v.X, v.Y)
+	if !(0x1p-1000 < h && h < 0x1p1000) {
+		_, e := math.Frexp(max(math.Abs(v.X), math.Abs(v.Y)))
+		v = r2.Vec{X: math.Ldexp(v.X, -e), Y: math.Ldexp(v.Y, -e)}
+		h = math.Hypot(v.X, v.Y)
+	}
 	return unit(r2.Vec{X: v.X / h, Y: v.Y / h})
 }

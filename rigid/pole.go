@@ -18,7 +18,8 @@ type Circle struct {
 //	Vel + ω×r = 0
 //
 // A body that does not turn has none: ErrNoPole, also where it lies too far away
-// for a float64. ErrNotFinite where the motion is not finite.
+// for a float64. ErrNotFinite where the motion is not finite or a difference of
+// two velocities overflows.
 func (m *Motion) Pole() (r2.Vec, error) {
 	var frame Motion
 	return RelativePole(m, &frame)
@@ -35,6 +36,9 @@ func RelativePole(a, b *Motion) (r2.Vec, error) {
 	w := a.Omega - b.Omega
 	// velocity of a's origin less that of b's point there
 	v := r2.Sub(r2.Sub(a.Vel, b.Vel), cross(b.Omega, r2.Sub(a.Pose.Origin, b.Pose.Origin)))
+	if !finite(w, v.X, v.Y) {
+		return r2.Vec{}, ErrNotFinite
+	}
 	p := r2.Vec{X: a.Pose.Origin.X - v.Y/w, Y: a.Pose.Origin.Y + v.X/w}
 	if !finite(p.X, p.Y) {
 		return r2.Vec{}, ErrNoPole
@@ -49,13 +53,13 @@ func RelativePole(a, b *Motion) (r2.Vec, error) {
 //
 // A body without angular velocity and acceleration has none: ErrNoPole, also
 // where it lies too far away for a float64. ErrNotFinite where the motion is not
-// finite or ω² overflows.
+// finite, or ω² or √(ω⁴ + α²) overflows.
 func (m *Motion) AccelerationPole() (r2.Vec, error) {
 	w2 := m.Omega * m.Omega
-	if !m.finite() || !finite(w2) {
+	h := math.Hypot(w2, m.Alpha)
+	if !m.finite() || !finite(h) {
 		return r2.Vec{}, ErrNotFinite
 	}
-	h := math.Hypot(w2, m.Alpha)
 	c, s := w2/h, m.Alpha/h
 	r := turn(r2.Vec{X: c, Y: s}, r2.Vec{X: m.Acc.X / h, Y: m.Acc.Y / h})
 	p := r2.Add(m.Pose.Origin, r)
@@ -72,13 +76,17 @@ func (m *Motion) AccelerationPole() (r2.Vec, error) {
 //	v×a(r) = 0  with  v = ω×r,  a(r) = a + α×r − ω²r   ⇒   r·r = r·a/ω²
 //
 // so its diameter is a/ω². Of a body that turns about a fixed point the radius
-// is 0. Errors as Pole.
+// is 0. Errors as Pole, and ErrNotFinite where ω² overflows. Source: the inflection
+// circle of the Euler–Savary theory, in any textbook of plane kinematics.
 func (m *Motion) InflectionCircle() (Circle, error) {
 	p, err := m.Pole()
 	if err != nil {
 		return Circle{}, err
 	}
 	w2 := m.Omega * m.Omega
+	if !finite(w2) {
+		return Circle{}, ErrNotFinite
+	}
 	r := r2.Sub(p, m.Pose.Origin)
 	a := r2.Sub(r2.Add(m.Acc, cross(m.Alpha, r)), r2.Scale(w2, r))
 	d := r2.Vec{X: a.X / w2 / 2, Y: a.Y / w2 / 2}

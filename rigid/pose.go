@@ -20,7 +20,8 @@ func (p Placement) Pose() Pose { return NewPose(p.X, p.Y, p.Angle) }
 
 // A Pose is the place of a body in a frame: its origin in m, and the unit vector
 // along its x axis, which stands for the angle. A zero Axis reads as (1, 0), so
-// the zero Pose is the frame itself.
+// the zero Pose is the frame itself. A pose made by hand needs an Axis of length 1;
+// those that the library returns have one.
 type Pose struct{ Origin, Axis r2.Vec }
 
 // NewPose returns the pose with its origin at (x, y), in m, turned by angle, in
@@ -41,10 +42,10 @@ func (p *Pose) axis() r2.Vec {
 // Angle returns the angle of the body's x axis, in (−π, π].
 func (p Pose) Angle() float64 {
 	u := p.axis()
-	if u.Y == 0 {
-		u.Y = 0 // −0 would give −π
+	if a := math.Atan2(u.Y, u.X); a != -math.Pi { // of a Y of −0 or next to it
+		return a
 	}
-	return math.Atan2(u.Y, u.X)
+	return math.Pi
 }
 
 // Point returns the place in the frame of a point given in the body, in m:

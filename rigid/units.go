@@ -34,9 +34,10 @@ func Wrap(angle float64) float64 {
 
 // Nearest returns angle plus the whole revolutions that bring it within half a
 // revolution of to: how a wrapped encoder follows a motion over many turns. An
-// angle that is that near already comes back as it is.
+// angle that is that near already comes back as it is. The sum is rounded once, to
+// the unit of the result. Where a number is not finite the result isn't either.
 func Nearest(angle, to float64) float64 {
-	return angle + Revolution*math.Round((to-angle)/Revolution)
+	return math.FMA(Revolution, math.RoundToEven((to-angle)/Revolution), angle)
 }
 
 // finite reports whether every number is neither NaN nor infinite: x·0 is 0 for
