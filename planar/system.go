@@ -18,12 +18,12 @@ type system struct {
 	angles []angle  // of every body; angles[0] is the frame's: zero
 	class  []int    // of every body: bodies of one class have the same ψ-part; the frame's is 0
 	free   []int    // ψk is the angle of body free[k]
-	rows   []row   // all scalar equations that are solved
-	blocks []block // in the order of solution
-	checks []check // redundant equations set aside: verified after each Move
-	groups []Group // Assur groups, for Groups
-	drives int     // inputs, in the order of Design.Drives
-	length float64 // the largest length, m
+	rows   []row    // all scalar equations that are solved
+	blocks []block  // in the order of solution
+	checks []check  // redundant equations set aside: verified after each Move
+	groups []Group  // Assur groups, for Groups
+	drives int      // inputs, in the order of Design.Drives
+	length float64  // the largest length, m
 }
 
 // A hidden link is not in the Design: the block of a SlidingPin, whose origin is

@@ -1,0 +1,58 @@
+package planar
+
+import "slices"
+
+// A Linkage is a design whose structure is known. It is immutable: any number of
+// goroutines may share it. The zero Linkage comes from no New and has no links.
+type Linkage struct {
+	design  Design
+	system  *system
+	program *program
+}
+
+// New checks a design and finds its groups. Its error is a *DesignError: of a wrong
+// reference or number, of joints and drives that hold each other doubly or leave
+// links free.
+func New(d Design) (*Linkage, error) {
+	d = d.clone()
+	if err := d.validate(); err != nil {
+		return nil, err
+	}
+	s, err := build(&d, nil)
+	if err != nil {
+		return nil, err
+	}
+	p, err := compile(s)
+	if err != nil {
+		return nil, err
+	}
+	return &Linkage{design: d, system: s, program: p}, nil
+}
+
+// Design returns a copy of the design that New was given.
+func (l *Linkage) Design() Design { return l.design.clone() }
+
+func (d *Design) clone() Design {
+	return Design{
+		Links:  slices.Clone(d.Links),
+		Joints: slices.Clone(d.Joints),
+		Drives: slices.Clone(d.Drives),
+		Guess:  slices.Clone(d.Guess),
+	}
+}
+
+// Mobility returns the number of motions that the joints leave, which is that of the
+// drives: New refuses a design with more or fewer.
+func (l *Linkage) Mobility() int { return len(l.design.Drives) }
+
+// Groups returns the driving links and Assur groups in the order of solution.
+func (l *Linkage) Groups() []Group {
+	if l.system == nil {
+		return nil
+	}
+	groups := slices.Clone(l.system.groups)
+	for i := range groups {
+		groups[i].Links = slices.Clone(groups[i].Links)
+	}
+	return groups
+}

@@ -1,0 +1,344 @@
+package planar
+
+import (
+	"fmt"
+	"math"
+
+	"example.com/twopoint/rigid"
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+// joints writes the equations of all joints and drives.
+func (b *builder) joints() error {
+	pins := newPins()
+	joints := map[Joint]int{}
+	for i, j := range b.d.Joints {
+		j = tidied(j)
+		if first, ok := joints[j]; ok {
+			return b.refuse(fmt.Errorf("%w: two joints say the same", ErrOverconstrained), first, i)
+		}
+		joints[j] = i
+		if err := b.joint(pins, i, j); err != nil {
+			return err
+		}
+	}
+	if err := b.drive(pins); err != nil {
+		return err
+	}
+	return b.centres()
+}
+
+// tidied returns a joint that is the same from both sides with the lower link first.
+func tidied(j Joint) Joint {
+	switch j := j.(type) {
+	case Revolute:
+		if j.B.Link < j.A.Link {
+			return Revolute{A: j.B, B: j.A}
+		}
+	case Prismatic:
+		if j.B.Link < j.A.Link {
+			return Prismatic{A: j.B, B: j.A}
+		}
+	case Fixed:
+		if j.B.Link < j.A.Link {
+			return Fixed{A: j.B, B: j.A}
+		}
+	}
+	return j
+}
+
+func (b *builder) joint(pins *pins, i int, j Joint) error {
+	switch j := j.(type) {
+	case Revolute:
+		if b.aside[i] == kept {
+			return b.hinge(pins, j.A, j.B, i)
+		}
+	case Prismatic:
+		return b.guide(pins, j, i)
+	case SlidingPin:
+		return b.slot(pins, j, i)
+	case GearPair:
+		if b.aside[i] == kept {
+			b.gears(j, i)
+		}
+	case RackPair:
+		return b.rack(j, i)
+	}
+	return nil
+}
+
+// Pins are where points of several bodies coincide.
+type pins struct {
+	members map[int][]int  // of a pin, by its first point: all its points
+	joints  map[int][]int  // and the joints that make it
+	guides  map[[2]int]int // first Prismatic between two bodies: its index
+}
+
+func newPins() *pins {
+	return &pins{map[int][]int{}, map[int][]int{}, map[[2]int]int{}}
+}
+
+func (p *pins) of(first int) []int {
+	if m := p.members[first]; m != nil {
+		return m
+	}
+	return []int{first}
+}
+
+// hinge makes two points coincide. Between bodies that share the pin already it
+// says nothing new.
+func (b *builder) hinge(pins *pins, from, to Attachment, joint int) error {
+	i, j := b.point(from), b.point(to)
+	p, q := b.pin(i), b.pin(j)
+	if p == q {
+		return nil
+	}
+	members := append(pins.of(p), pins.of(q)...)
+	joints := append(append(pins.joints[p], pins.joints[q]...), joint)
+	for _, m := range pins.of(p) {
+		for _, n := range pins.of(q) {
+			if b.points[m].body != b.points[n].body {
+				continue
+			}
+			gap := r2.Norm(r2.Sub(b.points[m].at, b.points[n].at))
+			return b.refuse(fmt.Errorf("%w: one pin in two points of a link, %.3g m apart", ErrInconsistent, gap), joints...)
+		}
+	}
+	b.pinOf[q] = p
+	pins.members[p], pins.joints[p] = members, joints
+	x := row{kind: rowX, a: b.points[i].body, b: b.points[j].body, pa: b.points[i].at, pb: b.points[j].at, joint: joint, drive: -1, at: i, bt: j}
+	y := x
+	y.kind = rowY
+	b.rows = append(b.rows, x, y)
+	return nil
+}
+
+// along returns a row of the given kind: of the point of one line beside another.
+func (b *builder) along(kind rowKind, from, of Line, joint int) row {
+	i, j := b.point(from.Link.At(from.X, from.Y)), b.point(of.Link.At(of.X, of.Y))
+	return row{
+		kind: kind, a: b.points[i].body, b: b.points[j].body, pa: b.points[i].at, pb: b.points[j].at,
+		u: b.seats[from.Link].local.Compose(rigid.NewPose(0, 0, from.Angle)).Axis, joint: joint, drive: -1, at: i, bt: j,
+	}
+}
+
+// angle returns the angle of a line in its body's axes.
+func (b *builder) angle(l Line) float64 { return b.seats[l.Link].local.Angle() + l.Angle }
+
+// guide keeps a line on another: an equation between angles and one of place.
+func (b *builder) guide(pins *pins, j Prismatic, joint int) error {
+	r := b.along(rowGuide, j.A, j.B, joint)
+	turn := b.angle(j.A) - b.angle(j.B) // of b as seen from a
+	if r.a == r.b {
+		miss := math.Max(math.Abs(cross(r.u, r2.Sub(r.pb, r.pa))), b.length*math.Abs(rigid.Wrap(turn)))
+		return b.within(miss, joint)
+	}
+	b.turn(turnRow{of: newForm(formTerm{r.b, one}, formTerm{r.a, one.negative()}), value: turn, joint: joint, drive: -1})
+	if b.aside[joint] != kept {
+		return nil
+	}
+	pair := [2]int{min(r.a, r.b), max(r.a, r.b)}
+	if first, ok := pins.guides[pair]; ok {
+		if miss, parallel := b.beside(first, r, turn); parallel {
+			return b.within(miss, first, joint)
+		}
+	} else {
+		pins.guides[pair] = joint
+	}
+	b.rows = append(b.rows, r)
+	return nil
+}
+
+// beside compares a guide between two bodies with an earlier one: whether it is
+// parallel, and how far off then the line that it keeps is.
+//
+//	n·(pb − pa) = 0 for both, so  n·((pb − pb') − (pa − pa')) = 0
+func (b *builder) beside(first int, r row, turn float64) (miss float64, parallel bool) {
+	j := b.d.Joints[first].(Prismatic)
+	f := b.along(rowGuide, j.A, j.B, first)
+	if f.a != r.a {
+		f = b.along(rowGuide, j.B, j.A, first)
+	}
+	if math.Abs(cross(f.u, r.u)) > lined {
+		return 0, false
+	}
+	apart := r2.Sub(rotate(r2.Sub(r.pb, f.pb), turn), r2.Sub(r.pa, f.pa))
+	return math.Abs(cross(r.u, apart)), true
+}
+
+// lined is the sine of the angle up to which lines are parallel.
+const lined = 1e-9
+
+func cross(a, b r2.Vec) float64 { return a.X*b.Y - a.Y*b.X }
+
+func rotate(v r2.Vec, by float64) r2.Vec { return rigid.NewPose(0, 0, by).Point(v) }
+
+// within refuses joints that ask more of one body, or of one pair, than holds.
+func (b *builder) within(miss float64, joints ...int) error {
+	if miss <= same*b.length {
+		return nil
+	}
+	return b.refuse(fmt.Errorf("%w: they miss each other by %.3g m", ErrInconsistent, miss), joints...)
+}
+
+// slot pins the hidden block of a SlidingPin and guides it.
+func (b *builder) slot(pins *pins, j SlidingPin, joint int) error {
+	if b.aside[joint] != kept {
+		return nil
+	}
+	if b.seats[j.Pin.Link].body == b.seats[j.Slot.Link].body {
+		r := b.along(rowGuide, j.Slot, j.Pin.Link.Line(j.Pin.X, j.Pin.Y, 0), joint)
+		return b.within(math.Abs(cross(r.u, r2.Sub(r.pb, r.pa))), joint)
+	}
+	block := b.hiddenOf(joint)
+	if err := b.hinge(pins, j.Pin, block.At(0, 0), joint); err != nil {
+		return err
+	}
+	return b.guide(pins, Prismatic{A: j.Slot, B: block.Line(0, 0, 0)}, joint)
+}
+
+// ratio returns by how much B turns for one turn of A on the arm.
+func (g GearPair) ratio() coefficient {
+	k := rational(1)
+	if g.TeethA != 0 {
+		k = quotient(g.TeethA, g.TeethB)
+	} else {
+		k = rational(g.RadiusA / g.RadiusB)
+	}
+	if g.Internal {
+		return k
+	}
+	return k.negative()
+}
+
+// gears writes  θB − ρ·θA + (ρ − 1)·θarm = Phase  for the links' own axes.
+func (b *builder) gears(g GearPair, joint int) {
+	k := g.ratio()
+	arm := k.plus(one.negative())
+	a, c, m := b.seats[g.A], b.seats[g.B], b.seats[g.Arm]
+	own := c.local.Angle() - k.value*a.local.Angle() + arm.value*m.local.Angle()
+	b.turn(turnRow{
+		of:     newForm(formTerm{c.body, one}, formTerm{a.body, k.negative()}, formTerm{m.body, arm}),
+		value:  g.Phase - own,
+		phased: g.AsAssembled, joint: joint, drive: -1,
+	})
+}
+
+// rack writes  u·(c − p) + R·(θpinion − θrack) = Phase, −R on the right.
+func (b *builder) rack(j RackPair, joint int) error {
+	if b.aside[joint] != kept {
+		return nil
+	}
+	r := b.along(rowRack, j.Rack, j.Pinion.Link.Line(j.Pinion.X, j.Pinion.Y, 0), joint)
+	if r.a == r.b {
+		return b.refuse(fmt.Errorf("%w: a pinion fixed to its rack", ErrReference), joint)
+	}
+	r.rate = j.Radius
+	if j.Right {
+		r.rate = -j.Radius
+	}
+	own := b.seats[j.Pinion.Link].local.Angle() - b.seats[j.Rack.Link].local.Angle()
+	r.value, r.phased = j.Phase-r.rate*own, j.AsAssembled
+	b.rows = append(b.rows, r)
+	return nil
+}
+
+// drive writes the equations of the drives.
+func (b *builder) drive(pins *pins) error {
+	drives := map[Drive]int{}
+	for i, m := range b.d.Drives {
+		joint := len(b.d.Joints) + i
+		switch m := m.(type) {
+		case Turn:
+			of, from := b.seats[m.Of], b.seats[m.From]
+			b.turn(turnRow{
+				of:    newForm(formTerm{of.body, one}, formTerm{from.body, one.negative()}),
+				value: from.local.Angle() - of.local.Angle(), joint: joint, drive: i,
+			})
+		case Slide:
+			r := b.along(rowSlide, m.From, m.Of, joint)
+			r.drive = i
+			b.rows = append(b.rows, r)
+		case Reach:
+			if err := b.reach(pins, m, i); err != nil {
+				return err
+			}
+		}
+		m = oneWay(m)
+		if first, ok := drives[m]; ok {
+			return b.refuse(fmt.Errorf("%w: two drives of one motion", ErrOverconstrained), len(b.d.Joints)+first, joint)
+		}
+		drives[m] = i
+	}
+	return nil
+}
+
+// oneWay returns a drive that is the same from both sides with the lower link first.
+func oneWay(m Drive) Drive {
+	switch m := m.(type) {
+	case Turn:
+		return Turn{Of: max(m.Of, m.From), From: min(m.Of, m.From)}
+	case Reach:
+		if m.B.Link < m.A.Link {
+			return Reach{A: m.B, B: m.A}
+		}
+	}
+	return m
+}
+
+// reach pins the hidden barrel and rod and drives one along the other.
+func (b *builder) reach(pins *pins, m Reach, drive int) error {
+	joint := len(b.d.Joints) + drive
+	if b.seats[m.A.Link].body == b.seats[m.B.Link].body {
+		return b.refuse(fmt.Errorf("%w: a drive of links fixed to each other", ErrOverconstrained), joint)
+	}
+	first := b.hiddenOf(joint)
+	barrel, rod := first.Line(0, 0, 0), (first+1).Line(0, 0, 0)
+	if err := b.hinge(pins, m.A, first.At(0, 0), joint); err != nil {
+		return err
+	}
+	if err := b.hinge(pins, m.B, (first+1).At(0, 0), joint); err != nil {
+		return err
+	}
+	if err := b.guide(pins, Prismatic{A: barrel, B: rod}, joint); err != nil {
+		return err
+	}
+	r := b.along(rowSlide, barrel, rod, joint)
+	r.drive = drive
+	b.rows = append(b.rows, r)
+	return nil
+}
+
+// centres checks the distance of the centres of gears whose radii are given, where
+// both are pinned to their arm.
+func (b *builder) centres() error {
+	for i, j := range b.d.Joints {
+		g, ok := j.(GearPair)
+		if !ok || g.RadiusA == 0 {
+			continue
+		}
+		a, okA := b.centre(g.A, g.Arm)
+		c, okB := b.centre(g.B, g.Arm)
+		want := g.RadiusA + g.RadiusB
+		if g.Internal {
+			want = math.Abs(g.RadiusA - g.RadiusB)
+		}
+		if gap := math.Abs(r2.Norm(r2.Sub(a, c)) - want); okA && okB && gap > 1e-9*(g.RadiusA+g.RadiusB) {
+			return b.refuse(fmt.Errorf("%w: the radii put the gears' centres %.9g m apart, their pins %.9g m",
+				ErrInconsistent, want, r2.Norm(r2.Sub(a, c))), i)
+		}
+	}
+	return nil
+}
+
+// centre returns the pin of a link on its arm, in the axes of the arm's body.
+func (b *builder) centre(l, arm Link) (r2.Vec, bool) {
+	for _, i := range b.inBody[b.seats[arm].body] {
+		for _, j := range b.inBody[b.seats[l].body] {
+			if i != j && b.pin(i) == b.pin(j) {
+				return b.points[i].at, true
+			}
+		}
+	}
+	return r2.Vec{}, false
+}
