@@ -3,6 +3,7 @@ package rigid
 import (
 	"errors"
 	"strconv"
+	"strings"
 )
 
 // The causes for which the library refuses. Solvers, laws and poles return these
@@ -44,7 +45,7 @@ type DimensionError struct {
 func (e *DimensionError) Error() string {
 	cause := "unknown cause"
 	if e.Err != nil {
-		cause = trim(e.Err.Error())
+		cause = strings.TrimPrefix(e.Err.Error(), "twopoint: ") // Error says it already
 	}
 	if e.Name == "" {
 		return "twopoint: dimensions: " + cause
@@ -54,12 +55,3 @@ func (e *DimensionError) Error() string {
 
 // Unwrap returns the cause.
 func (e *DimensionError) Unwrap() error { return e.Err }
-
-// trim takes the prefix off a sentinel's message, which follows one already.
-func trim(s string) string {
-	const prefix = "twopoint: "
-	if len(s) > len(prefix) && s[:len(prefix)] == prefix {
-		return s[len(prefix):]
-	}
-	return s
-}
