@@ -3,6 +3,7 @@ package planar
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"example.com/twopoint/rigid"
 )
@@ -27,7 +28,6 @@ func (b *builder) solveAngles() error {
 	n, drives := b.bodies(), len(b.d.Drives)
 	e := newElimination(n + drives + len(b.d.Joints))
 	e.put(0, form{}) // the frame
-	var used []turnRow
 	for _, r := range b.ordered() {
 		f := form{constant: -r.value}.plus(one, r.of)
 		if r.drive >= 0 {
@@ -39,8 +39,8 @@ func (b *builder) solveAngles() error {
 		reduced := e.reduce(f)
 		if pivot := reduced.largest(n); pivot >= 0 {
 			e.solve(reduced, pivot)
-			used = append(used, r)
-		} else if err := b.repeated(r, reduced, used); err != nil {
+			b.used = append(b.used, r)
+		} else if err := b.repeated(r, reduced); err != nil {
 			return err
 		}
 	}
@@ -66,12 +66,12 @@ func (b *builder) ordered() []turnRow {
 }
 
 // repeated judges an equation that follows from those used before.
-func (b *builder) repeated(r turnRow, reduced form, used []turnRow) error {
+func (b *builder) repeated(r turnRow, reduced form) error {
 	const enough = 1e-9 // rad
 	if r.phased {
 		return nil // whatever its phase is when it is read, it holds
 	}
-	joints, whole := b.combination(append(used[:len(used):len(used)], r))
+	joints, whole := b.combination(append(slices.Clone(b.used), r))
 	if r.drive >= 0 {
 		return b.refuse(fmt.Errorf("%w: one turn is driven or held twice", ErrOverconstrained), joints...)
 	}

@@ -21,6 +21,7 @@ type builder struct {
 	inBody [][]int    // of every body: its points
 	pinOf  []int      // of every point: the pin it is part of, by way of other points
 	turns  []turnRow  // equations between angles
+	used   []turnRow  // those that are independent
 	psi    []form     // of every body: its angle in free angles, exactly
 	lines  []lineForm // directions that rows have used
 	seated []int      // of a body whose origin is a pin known before: that point, else −1

@@ -1,6 +1,10 @@
 package planar
 
-import "slices"
+import (
+	"slices"
+
+	"gonum.org/v1/gonum/spatial/r2"
+)
 
 // order sorts the equations and unknowns into blocks in the order of solution, or
 // says what is over- or under-determined.
@@ -12,7 +16,7 @@ func (b *builder) order() error {
 	if err := b.sort(); err != nil {
 		return err
 	}
-	if b.seat() {
+	if b.settle() {
 		if err := b.sort(); err != nil {
 			return err
 		}
@@ -21,18 +25,147 @@ func (b *builder) order() error {
 	return nil
 }
 
-// sort finds the blocks.
-func (b *builder) sort() error {
-	b.lines = nil
-	s := b.scatter()
-	forms := make([]form, len(b.rows))
-	for i, r := range b.rows {
-		forms[i] = b.slopes(s, r)
+// settle moves the origin of every body that turns on a pin known before to that
+// pin, and reports whether there are any: place and angle then come one after the
+// other. They are blocks of a body's three unknowns, two rows a revolute's.
+func (b *builder) settle() bool {
+	moved := false
+	for _, bl := range b.blocks {
+		if len(bl.unknowns) != 3 || bl.unknowns[2] < b.system.psi(0) || bl.unknowns[0]%2 != 0 || bl.unknowns[1] != bl.unknowns[0]+1 {
+			continue
+		}
+		body := bl.unknowns[0]/2 + 1
+		for _, i := range bl.rows {
+			if r := b.rows[i]; r.kind == rowX && slices.Contains(bl.rows, i+1) {
+				at := r.at
+				if r.b == body {
+					at = r.bt
+				}
+				b.center(body, at)
+				moved = true
+				break
+			}
+		}
 	}
-	unknowns := b.unknowns()
-	of, by := match(forms, unknowns)
-	blocks := components(forms, of, by)
-	return b.check(forms, blocks, of)
+	return moved
+}
+
+// center makes a point its body's origin.
+func (b *builder) center(body, at int) {
+	b.seated[body] = at
+	to := b.points[at].at
+	for i := range b.seats {
+		if s := &b.seats[i]; s.body == body {
+			s.local.Origin = r2.Sub(s.local.Origin, to)
+		}
+	}
+	for _, p := range b.inBody[body] {
+		b.points[p].at = r2.Sub(b.points[p].at, to)
+	}
+	for i := range b.rows {
+		r := &b.rows[i]
+		if r.a == body {
+			r.pa = b.points[r.at].at
+		}
+		if r.b == body {
+			r.pb = b.points[r.bt].at
+		}
+	}
+}
+
+// Equations are rows of slopes at a random place, with what they stand for.
+type equations struct {
+	rows     []form
+	joints   []int   // of every row: its joint, counting on through the drives
+	unknowns int     // the first of them are x and y of the bodies
+	bodies   [][]int // of every unknown: the bodies that it moves
+}
+
+// reduced returns the equations of place in the unknowns that are left.
+func (b *builder) reduced() *equations {
+	q := b.places(b.psi, len(b.free))
+	for body, f := range b.psi {
+		for _, t := range f.terms {
+			u := b.system.psi(t.index)
+			q.bodies[u] = append(q.bodies[u], body)
+		}
+	}
+	return q
+}
+
+// full returns the equations of place and of angles in the place and angle of every
+// body: what is solved before angles are eliminated, as the textbooks see it.
+func (b *builder) full() *equations {
+	angles := make([]form, b.bodies())
+	for i := range angles[1:] {
+		angles[i+1] = newForm(formTerm{i, one})
+	}
+	q := b.places(angles, b.bodies()-1)
+	for i := range angles[1:] {
+		q.bodies[b.system.psi(i)] = []int{i + 1}
+	}
+	for _, r := range b.used {
+		var f form
+		for _, t := range r.of.terms {
+			if t.index > 0 {
+				f = f.plus(one, newForm(formTerm{b.system.psi(t.index - 1), t.by}))
+			}
+		}
+		q.rows, q.joints = append(q.rows, f), append(q.joints, r.joint)
+	}
+	return q
+}
+
+// places returns the rows of the system, with so many unknown angles.
+func (b *builder) places(angles []form, unknown int) *equations {
+	b.lines = nil
+	s := b.scatter(angles)
+	q := &equations{unknowns: b.system.psi(unknown)}
+	for _, r := range b.rows {
+		q.rows, q.joints = append(q.rows, b.slopes(s, r)), append(q.joints, r.joint)
+	}
+	q.bodies = make([][]int, q.unknowns)
+	for body := 1; body < b.bodies(); body++ {
+		q.bodies[b.xy(body)], q.bodies[b.xy(body)+1] = []int{body}, []int{body}
+	}
+	return q
+}
+
+// sort finds the blocks, if the equations determine every unknown once in general
+// position.
+func (b *builder) sort() error {
+	q := b.reduced()
+	of, by := match(q.rows, q.unknowns)
+	blocks := components(q.rows, of, by)
+	if !q.inOrder(blocks).regular() {
+		return b.unbalanced()
+	}
+	b.blocks = b.blocks[:0]
+	for _, rows := range blocks {
+		var unknowns []int
+		for _, row := range rows {
+			unknowns = append(unknowns, of[row])
+		}
+		slices.Sort(unknowns)
+		b.blocks = append(b.blocks, block{unknowns: unknowns, rows: rows, group: -1})
+	}
+	return nil
+}
+
+// inOrder returns the equations in the order of solution, which keeps elimination
+// within the blocks.
+func (q *equations) inOrder(blocks [][]int) *equations {
+	sorted := &equations{unknowns: q.unknowns, bodies: q.bodies}
+	for _, row := range slices.Concat(blocks...) {
+		sorted.rows, sorted.joints = append(sorted.rows, q.rows[row]), append(sorted.joints, q.joints[row])
+	}
+	return sorted
+}
+
+// regular reports whether there are as many rows as unknowns, all independent.
+func (q *equations) regular() bool {
+	vanished := newElimination(q.unknowns).eliminate(q.rows)
+	return len(q.rows) == q.unknowns && len(vanished) == 0
 }
 
 // unknowns returns the number of scalar unknowns.
@@ -130,35 +263,3 @@ func strong(nodes int, next func(node int, visit func(int))) [][]int {
 	}
 	return out
 }
-
-// check keeps the blocks if the equations determine every unknown once, in general
-// position, and says otherwise what is too much and what is missing.
-func (b *builder) check(forms []form, blocks [][]int, of []int) error {
-	order := slices.Concat(blocks...)
-	sorted := make([]form, len(order))
-	for i, row := range order {
-		sorted[i] = forms[row]
-	}
-	n := b.unknowns()
-	e := newElimination(n)
-	vanished := e.eliminate(sorted)
-	if len(vanished) > 0 || len(sorted) < n {
-		return b.unbalanced(order, sorted)
-	}
-	b.blocks = b.blocks[:0]
-	for _, rows := range blocks {
-		var unknowns []int
-		for _, row := range rows {
-			unknowns = append(unknowns, of[row])
-		}
-		slices.Sort(unknowns)
-		b.blocks = append(b.blocks, block{unknowns: unknowns, rows: rows, group: -1})
-	}
-	return nil
-}
-
-// seat moves the origin of bodies that turn on a pin known before to that pin.
-func (b *builder) seat() bool { return false }
-
-// group finds the Assur groups.
-func (b *builder) group() {}

@@ -10,6 +10,7 @@ import (
 type scatter struct {
 	pins    map[int][2]residue // by the pin's first point
 	origins [][2]residue       // of bodies
+	angles  []form             // of bodies, in the unknown angles
 	rates   map[float64]residue
 	random  *rand.Rand
 }
@@ -21,8 +22,8 @@ type lineForm struct {
 	u     [2]residue
 }
 
-func (b *builder) scatter() *scatter {
-	s := &scatter{pins: map[int][2]residue{}, rates: map[float64]residue{}, random: rand.New(rand.NewPCG(1, 61))}
+func (b *builder) scatter(angles []form) *scatter {
+	s := &scatter{angles: angles, pins: map[int][2]residue{}, rates: map[float64]residue{}, random: rand.New(rand.NewPCG(1, 61))}
 	for range b.bodies() {
 		s.origins = append(s.origins, s.place())
 	}
@@ -89,25 +90,25 @@ func (b *builder) slopes(s *scatter, r row) form {
 	v, w := minus(pb, ob), minus(pb, oa)
 	switch r.kind {
 	case rowX:
-		return b.slope(r, [2]residue{1, 0}, v[1].negative(), oa[1].minus(pa[1]))
+		return b.slope(s, r, [2]residue{1, 0}, v[1].negative(), oa[1].minus(pa[1]))
 	case rowY:
-		return b.slope(r, [2]residue{0, 1}, v[0], pa[0].minus(oa[0]))
+		return b.slope(s, r, [2]residue{0, 1}, v[0], pa[0].minus(oa[0]))
 	}
 	u := b.direction(s, r)
 	n := [2]residue{u[1].negative(), u[0]}
 	switch r.kind {
 	case rowGuide:
-		return b.slope(r, n, dot(u, v), dot(u, w))
+		return b.slope(s, r, n, dot(u, v), dot(u, w))
 	case rowSlide:
-		return b.slope(r, u, dot(n, v).negative(), dot(n, w).negative())
+		return b.slope(s, r, u, dot(n, v).negative(), dot(n, w).negative())
 	default: // rowRack
 		k := s.rate(r.rate)
-		return b.slope(r, u, dot(n, v).negative().plus(k), dot(n, w).negative().plus(k))
+		return b.slope(s, r, u, dot(n, v).negative().plus(k), dot(n, w).negative().plus(k))
 	}
 }
 
 // slope returns  along·(dOb − dOa) + byB·dθb − byA·dθa.
-func (b *builder) slope(r row, along [2]residue, byB, byA residue) form {
+func (b *builder) slope(s *scatter, r row, along [2]residue, byB, byA residue) form {
 	var f form
 	side := func(body int, sign, by residue) {
 		if body > 0 {
@@ -115,7 +116,7 @@ func (b *builder) slope(r row, along [2]residue, byB, byA residue) form {
 				f = f.plus(coefficient{exact: k.times(sign)}, form{terms: []formTerm{{b.xy(body) + axis, one}}})
 			}
 		}
-		for _, t := range b.psi[body].terms {
+		for _, t := range s.angles[body].terms {
 			k := t.by.exact.times(by).times(sign)
 			f = f.plus(coefficient{exact: k}, form{terms: []formTerm{{b.system.psi(t.index), one}}})
 		}

@@ -14,61 +14,48 @@ type imbalance struct {
 	bodies []int // that have them
 }
 
-// unbalanced tells the imbalance of the rows, given in the order of solution, by
-// the null spaces of their matrix: the left one combines rows to nothing, the right
-// one moves bodies and changes no row.
-func (b *builder) unbalanced(order []int, rows []form) error {
+// unbalanced tells the imbalance of the equations by the null spaces of their
+// matrix: the left one combines rows to nothing, the right one moves bodies and
+// changes no row.
+func (b *builder) unbalanced() error {
+	q := b.full()
+	of, by := match(q.rows, q.unknowns)
+	q = q.inOrder(components(q.rows, of, by))
 	var m imbalance
-	columns := transpose(rows, b.unknowns())
+	columns := transpose(q.rows, q.unknowns)
 	slices.Reverse(columns)
-	left := kernel(columns, len(rows))
+	left := kernel(columns, len(q.rows))
 	m.over = len(left)
 	for _, v := range left {
 		for _, t := range v.terms {
-			m.joints = append(m.joints, b.rows[order[t.index]].joint)
+			m.joints = append(m.joints, q.joints[t.index])
 		}
 	}
-	right := kernel(rows, b.unknowns())
+	right := kernel(q.rows, q.unknowns)
 	m.under = len(right)
 	for _, v := range right {
 		for _, t := range v.terms {
-			m.bodies = append(m.bodies, b.moved(t.index)...)
+			m.bodies = append(m.bodies, q.bodies[t.index]...)
 		}
 	}
 	return b.explain(&m)
 }
 
-// moved returns the bodies that an unknown moves.
-func (b *builder) moved(unknown int) []int {
-	if unknown < b.system.psi(0) {
-		return []int{unknown/2 + 1}
-	}
-	var bodies []int
-	for i, f := range b.psi {
-		if _, ok := f.of(unknown - b.system.psi(0)); ok {
-			bodies = append(bodies, i)
-		}
-	}
-	return bodies
-}
-
+// explain makes the imbalance an error.
 func (b *builder) explain(m *imbalance) error {
-	hint := "; if the dimensions make them agree, the design needs a Guess"
-	if b.d.Guess != nil {
-		hint = ""
+	free := b.d.names(b.linksIn(m.bodies))
+	missing := fmt.Errorf("%w: %s missing", ErrUnderconstrained, count(m.under, "drive or joint"))
+	if m.over == 0 {
+		return &DesignError{Err: fmt.Errorf("%w, these links stay free", missing), Links: free}
 	}
-	over := fmt.Errorf("%w: %s too many%s", ErrOverconstrained, count(m.over, "constraint"), hint)
-	under := fmt.Errorf("%w: %s missing: %s free", ErrUnderconstrained, count(m.under, "drive or joint"), list(b.d.names(b.linksIn(m.bodies))))
-	switch {
-	case m.over == 0:
-		bad := b.refuse(under).(*DesignError)
-		bad.Links = b.d.names(b.linksIn(m.bodies))
-		bad.Err = fmt.Errorf("%w: %s missing, for links that stay free", ErrUnderconstrained, count(m.under, "drive or joint"))
-		return bad
-	case m.under == 0:
-		return b.refuse(over, m.joints...)
+	err := fmt.Errorf("%w: %s too many", ErrOverconstrained, count(m.over, "constraint"))
+	if b.d.Guess == nil {
+		err = fmt.Errorf("%w, unless the dimensions make them agree, which takes a Guess to see", err)
 	}
-	return b.refuse(fmt.Errorf("%w; %w", over, under), m.joints...)
+	if m.under > 0 {
+		err = fmt.Errorf("%w; %w, %s stay free", err, missing, list(free))
+	}
+	return b.refuse(err, m.joints...)
 }
 
 // linksIn returns the links of bodies, the hidden ones left out.
