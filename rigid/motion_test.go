@@ -99,7 +99,7 @@ func TestTermsSum(t *testing.T) {
 		check(t, "velocity", got.Vel, v.Sum(), 1e-13)
 		check(t, "acceleration", got.Acc, a.Sum(), 1e-13)
 		fixed := rigid.Point{Pos: local.Pos}
-		check(t, "fixed point", m.At(local.Pos), m.Carry(fixed), 0)
+		check(t, "fixed point", m.At(local.Pos), m.Carry(fixed), 1e-14)
 		zero := r2.Vec{}
 		if a := m.AccelerationTerms(fixed); a.Relative != zero || a.Coriolis != zero {
 			t.Errorf("a fixed point has relative terms: %+v", a)
@@ -167,9 +167,9 @@ func TestZeroMotion(t *testing.T) {
 		t.Errorf("Observe: %v", got)
 	}
 	other := newRandom(16).motion()
-	check(t, "Compose", other, m.Compose(&other), 0)
+	check(t, "Compose", other, m.Compose(&other), 1e-15)
 	check(t, "Compose on the right", other, other.Compose(&m), 1e-15)
-	check(t, "Relative", other, other.Relative(&m), 0)
+	check(t, "Relative", other, other.Relative(&m), 1e-15)
 	check(t, "itself", m, other.Relative(&other), 1e-15)
 }
 
