@@ -20,7 +20,7 @@ func (b *builder) group() {
 			visit(w)
 		}
 	})
-	groupOf := make([]int, b.bodies())
+	groupOf := minusOnes(b.bodies())
 	for _, bodies := range sets {
 		if bodies[0] == 0 {
 			continue
@@ -28,9 +28,8 @@ func (b *builder) group() {
 		for _, body := range bodies {
 			groupOf[body] = len(b.groups)
 		}
-		b.groups = append(b.groups, b.classify(bodies))
+		b.groups = append(b.groups, b.classify(bodies, groupOf))
 	}
-	groupOf[0] = -1
 	for i := range b.blocks {
 		for _, row := range b.blocks[i].rows {
 			r := b.rows[row]
@@ -53,9 +52,9 @@ type contourJoint struct {
 }
 
 // classify tells class and kind of a group.
-func (b *builder) classify(bodies []int) Group {
+func (b *builder) classify(bodies, groupOf []int) Group {
 	g := Group{Links: b.linksIn(bodies)}
-	c := b.contour(bodies)
+	c := b.contour(bodies, groupOf)
 	switch {
 	case c.clusters == 1:
 		g.Class = 1
@@ -69,7 +68,7 @@ func (b *builder) classify(bodies []int) Group {
 
 // contour fuses and contracts a group: bodies with known relative pose are one, and
 // one of known angle between two revolutes is a known distance of them.
-func (b *builder) contour(bodies []int) *contour {
+func (b *builder) contour(bodies, groupOf []int) *contour {
 	cluster := b.fused(bodies)
 	name := map[int]int{0: 0}
 	c := &contour{}
@@ -79,14 +78,10 @@ func (b *builder) contour(bodies []int) *contour {
 			name[root] = c.clusters
 		}
 	}
-	in := func(body int) (int, bool) {
-		root, ok := cluster[body]
-		return name[root], ok
-	}
+	solved := func(body int) bool { return body == 0 || groupOf[body] >= 0 }
 	for _, r := range b.rows {
-		i, okA := in(r.a)
-		j, okB := in(r.b)
-		if !okA && !okB || i == j || r.kind == rowY {
+		i, j := name[cluster[r.a]], name[cluster[r.b]]
+		if i == j || r.kind == rowY || !solved(r.a) || !solved(r.b) {
 			continue
 		}
 		c.joints = append(c.joints, contourJoint{kind: jointKind(r.kind), a: i, b: j, pa: b.pin(r.at), pb: b.pin(r.bt)})

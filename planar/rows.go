@@ -150,16 +150,18 @@ func (b *builder) guide(pins *pins, j Prismatic, joint int) error {
 }
 
 // beside compares a guide between two bodies with an earlier one: whether it is
-// parallel, and how far off then the line that it keeps is.
+// parallel, and how far off then the line that it keeps is. Angles that contradict
+// each other are left to the elimination of angles.
 //
 //	n·(pb − pa) = 0 for both, so  n·((pb − pb') − (pa − pa')) = 0
 func (b *builder) beside(first int, r row, turn float64) (miss float64, parallel bool) {
 	j := b.d.Joints[first].(Prismatic)
 	f := b.along(rowGuide, j.A, j.B, first)
+	known := b.angle(j.A) - b.angle(j.B)
 	if f.a != r.a {
-		f = b.along(rowGuide, j.B, j.A, first)
+		f, known = b.along(rowGuide, j.B, j.A, first), -known
 	}
-	if math.Abs(cross(f.u, r.u)) > lined {
+	if math.Abs(cross(f.u, r.u)) > lined || math.Abs(rigid.Wrap(turn-known)) > lined {
 		return 0, false
 	}
 	apart := r2.Sub(rotate(r2.Sub(r.pb, f.pb), turn), r2.Sub(r.pa, f.pa))

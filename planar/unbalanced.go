@@ -3,6 +3,7 @@ package planar
 import (
 	"fmt"
 	"slices"
+	"strconv"
 )
 
 // An imbalance is what keeps a design from moving as its drives say: joints that
@@ -44,11 +45,11 @@ func (b *builder) unbalanced() error {
 // explain makes the imbalance an error.
 func (b *builder) explain(m *imbalance) error {
 	free := b.d.names(b.linksIn(m.bodies))
-	missing := fmt.Errorf("%w: %s missing", ErrUnderconstrained, count(m.under, "drive or joint"))
+	missing := fmt.Errorf("%w: %s missing", ErrUnderconstrained, count(m.under, "drive or joint", "drives or joints"))
 	if m.over == 0 {
 		return &DesignError{Err: fmt.Errorf("%w, these links stay free", missing), Links: free}
 	}
-	err := fmt.Errorf("%w: %s too many", ErrOverconstrained, count(m.over, "constraint"))
+	err := fmt.Errorf("%w: %s too many", ErrOverconstrained, count(m.over, "constraint", "constraints"))
 	if b.d.Guess == nil {
 		err = fmt.Errorf("%w, unless the dimensions make them agree, which takes a Guess to see", err)
 	}
@@ -69,9 +70,9 @@ func (b *builder) linksIn(bodies []int) []Link {
 	return links
 }
 
-func count(n int, what string) string {
+func count(n int, one, many string) string {
 	if n == 1 {
-		return "1 " + what
+		return "1 " + one
 	}
-	return fmt.Sprintf("%d %ss", n, what)
+	return strconv.Itoa(n) + " " + many
 }

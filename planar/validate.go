@@ -27,6 +27,11 @@ func (d *Design) validate() error {
 	}
 	c.guess()
 	if len(c.errs) == 0 {
+		if size := d.size(); size < shortest {
+			c.dimension("largest length", size, rigid.ErrInput)
+		}
+	}
+	if len(c.errs) == 0 {
 		return nil
 	}
 	return &DesignError{Err: sum(c.errs), Links: c.names(), Joints: c.joints, Drives: c.drives}
