@@ -12,9 +12,17 @@ import (
 type Linkage struct {
 	dim                             Dimensions // as given
 	frame, crank, coupler, follower float64    // as solved: Parallel and Contrary take the means
+	longest                         float64
 
 	origin r2.Vec // of Mount
 	axis   r2.Vec // of Mount: the unit vector along the mechanism's x axis
+	pivot  r2.Vec // of the follower
+
+	side    float64 // +1 for Open, −1 for Crossed
+	turns   bool    // whether the crank turns fully
+	winding winding
+
+	byCrank, byFollower, byCoupler drive
 }
 
 // A State is the motion of all links at one instant. More fields may come: write
@@ -58,6 +66,18 @@ func New(d Dimensions) (*Linkage, error) {
 		l.crank = d.Crank/2 + d.Follower/2
 		l.coupler, l.follower = l.frame, l.crank
 	}
+	a, b, c := l.crank, l.coupler, l.follower
+	l.longest = max(l.frame, a, b, c)
+	l.side = 1
+	if d.Branch == Crossed {
+		l.side = -1
+	}
+	l.turns = l.crankTurns()
+	l.winding = l.newWinding()
+	l.pivot = r2.Add(l.origin, r2.Scale(l.frame, l.axis))
+	l.byCrank = newDrive(l.frame, a, b, c)
+	l.byFollower = newDrive(l.frame, -c, a, b)
+	l.byCoupler = newDrive(l.frame, b, a, c)
 	return l, nil
 }
 

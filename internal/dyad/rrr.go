@@ -9,58 +9,92 @@ import (
 // RRR holds the constants of two links of lengths B = |AB| and C = |CB| between
 // revolute joints.
 type RRR struct {
-	B, C float64
-	g    float64 // 2bc
-	n    float64 // b² + c²
-	m    float64 // (b − c)(b + c)
-	s    float64 // (b + c)²
-	e    float64 // (b − c)²
+	B, C   float64
+	ib, ic float64 // 1/b, 1/c
+	g      float64 // 2bc
+	h      float64 // bc
+	ig     float64 // 1/2bc
+	n      float64 // b² + c²
+	m      float64 // (b − c)(b + c)
+	s      float64 // (b + c)²
+	e      float64 // (b − c)²
+	point  float64 // |AC|² below which A and C are one point: then the direction AC is rounding
 }
 
 // NewRRR returns the constants of links of lengths b and c, both positive.
 func NewRRR(b, c float64) RRR {
-	return RRR{B: b, C: c, g: 2 * b * c, n: b*b + c*c, m: (b - c) * (b + c), s: (b + c) * (b + c), e: (b - c) * (b - c)}
+	point := 0x1p-50 * (b + c)
+	return RRR{
+		B: b, C: c, ib: 1 / b, ic: 1 / c,
+		g: 2 * b * c, h: b * c, ig: 1 / (2 * b * c), n: b*b + c*c,
+		m: (b - c) * (b + c), s: (b + c) * (b + c), e: (b - c) * (b - c),
+		point: point * point,
+	}
 }
 
-// Triangle is the place of an RRR dyad: the vectors R = AB and Q = CB, and F =
-// 2 R×Q, four times the area, positive where B lies left of the line A→C.
+// Triangle is the place of an RRR dyad: the vectors R = AB and Q = CB, X = |AC|² −
+// |AB|² − |CB|², which is −2 R·Q, and F = 2 R×Q, four times the area, positive
+// where B lies left of the line A→C.
 type Triangle struct {
 	R, Q r2.Vec
-	F    float64
-}
-
-// Area16 returns 16 times the square of the triangle's area for |AC|² = d2, in the
-// form that has the least rounding error there: the law of cosines where the angle
-// at B is between 60° and 120°, Heron's formula elsewhere. It is negative out of reach.
-func (k *RRR) Area16(d2 float64) float64 {
-	x := d2 - k.n
-	if math.Abs(x) <= k.g/2 {
-		return (k.g - x) * (k.g + x)
-	}
-	return (k.s - d2) * (d2 - k.e)
+	X, F float64
 }
 
 // Place solves the place of the dyad for d = C − A on the given side, +1 for B
-// left of the line A→C and −1 for right. It reports false out of reach and leaves
-// t as it was; at a limit F is 0 and there are no rates.
+// left of the line A→C and −1 for right. It reports false out of reach, where d
+// is 0 within rounding or not a number, and leaves t as it was. At a limit F is
+// 0, and there are no rates.
+//
+// F² is 16 times the square of the area in the form that has the least rounding
+// error: the law of cosines where the angle at B is between 60° and 120°, Heron's
+// formula elsewhere.
 func (k *RRR) Place(t *Triangle, d r2.Vec, side float64) bool {
 	d2 := d.X*d.X + d.Y*d.Y
-	p := k.Area16(d2)
-	if !(p >= 0) || d2 == 0 {
+	x := d2 - k.n
+	p := (k.g - x) * (k.g + x)
+	if math.Abs(x) > k.h {
+		p = (k.s - d2) * (d2 - k.e)
+	}
+	if !(p >= 0 && d2 > k.point) {
 		return false
 	}
-	f := side * math.Sqrt(p)
+	k.set(t, d, d2, x, side*math.Sqrt(p))
+	return true
+}
+
+// Flatten places the dyad with both links along d = C − A, which is not 0: its
+// place at a limit, where rounding has put C a little too far or too near.
+func (k *RRR) Flatten(t *Triangle, d r2.Vec) {
+	d2 := d.X*d.X + d.Y*d.Y
+	x := k.g
+	if d2 < k.n {
+		x = -k.g
+	}
+	k.set(t, d, d2, x, 0)
+}
+
+// set gives t its vectors: with u along d and h the height of B over it,
+//
+//	R = (d² + b² − c²)/(2d) u + h u⊥,  Q = R − d
+//
+// where Q is formed as R is, since R − d cancels.
+func (k *RRR) set(t *Triangle, d r2.Vec, d2, x, f float64) {
 	i := 0.5 / d2
 	u, v, h := (d2+k.m)*i, (k.m-d2)*i, f*i
 	t.R = r2.Vec{X: u*d.X - h*d.Y, Y: u*d.Y + h*d.X}
-	t.Q = r2.Vec{X: v*d.X - h*d.Y, Y: v*d.Y + h*d.X} // not R − d, which cancels
-	t.F = f
-	return true
+	t.Q = r2.Vec{X: v*d.X - h*d.Y, Y: v*d.Y + h*d.X}
+	t.X, t.F = x, f
+}
+
+// Gap returns how far B would be from closing the dyad for |AC| = d: 0 within
+// reach, else the distance between the nearest points of the circles about A and C.
+func (k *RRR) Gap(d float64) float64 {
+	return max(d-(k.B+k.C), math.Abs(k.B-k.C)-d, 0)
 }
 
 // Axes returns the unit vectors along AB and CB.
 func (k *RRR) Axes(t *Triangle) (ab, cb r2.Vec) {
-	return unit(r2.Scale(1/k.B, t.R)), unit(r2.Scale(1/k.C, t.Q))
+	return unit(r2.Scale(k.ib, t.R)), unit(r2.Scale(k.ic, t.Q))
 }
 
 // Rates returns the two links' first or second derivatives of the angle from the
@@ -68,24 +102,64 @@ func (k *RRR) Axes(t *Triangle) (ab, cb r2.Vec) {
 //
 //	ω1 = −w·Q/(R×Q),  ω2 = −w·R/(R×Q),  R×Q = F/2
 //
-// and for the accelerations the same with w = aA − aC − ω1²R + ω2²Q.
+// and for the accelerations the same with the w of Bias.
 func (t *Triangle) Rates(w r2.Vec) (ab, cb float64) {
 	k := -2 / t.F
 	return k * (w.X*t.Q.X + w.Y*t.Q.Y), k * (w.X*t.R.X + w.Y*t.R.Y)
 }
 
-// Bias returns the w of Rates for the second derivatives, a = aA − aC.
+// Bias returns the w of Rates for the second derivatives, a = aA − aC:
+//
+//	a − ω1² R + ω2² Q
 func (t *Triangle) Bias(a r2.Vec, w1, w2 float64) r2.Vec {
 	w1, w2 = w1*w1, w2*w2
 	return r2.Vec{X: a.X - w1*t.R.X + w2*t.Q.X, Y: a.Y - w1*t.R.Y + w2*t.Q.Y}
 }
 
-// Margin returns |sin| of the angle between the links.
-func (k *RRR) Margin(t *Triangle) float64 { return math.Abs(t.F) / k.g }
+// Growth is how the lengths of the two links change, each derivative divided by
+// the length: ḃ/b and b̈/b, ċ/c and c̈/c. Its zero value is two rigid links.
+type Growth struct{ BVel, BAcc, CVel, CAcc float64 }
 
-// unit brings a vector within rounding of length 1 nearer to it: 3/2 − n/2 is
-// 1/√n to first order about n = 1.
+// Vel returns what changing lengths add to the w of Rates for the velocities:
+//
+//	ḃ/b R − ċ/c Q
+func (g *Growth) Vel(t *Triangle) r2.Vec {
+	return r2.Vec{X: g.BVel*t.R.X - g.CVel*t.Q.X, Y: g.BVel*t.R.Y - g.CVel*t.Q.Y}
+}
+
+// Acc returns what changing lengths add to that for the accelerations:
+//
+//	b̈/b R − c̈/c Q + 2(ḃ/b) ω1 R⊥ − 2(ċ/c) ω2 Q⊥
+func (g *Growth) Acc(t *Triangle, w1, w2 float64) r2.Vec {
+	w1, w2 = 2*g.BVel*w1, 2*g.CVel*w2
+	return r2.Vec{
+		X: g.BAcc*t.R.X - g.CAcc*t.Q.X - w1*t.R.Y + w2*t.Q.Y,
+		Y: g.BAcc*t.R.Y - g.CAcc*t.Q.Y + w1*t.R.X - w2*t.Q.X,
+	}
+}
+
+// Margin returns |sin| of the angle between the links.
+func (k *RRR) Margin(t *Triangle) float64 { return math.Abs(t.F) * k.ig }
+
+// Cos returns the cosine of the angle between the links at B.
+func (k *RRR) Cos(t *Triangle) float64 { return -t.X * k.ig }
+
+// unit brings a vector near length 1 to it: 3/2 − n/2 is 1/√n to first order about
+// n = 1. Only a link shorter than the rounding of the other lengths is farther off.
 func unit(u r2.Vec) r2.Vec {
-	n := 1.5 - 0.5*(u.X*u.X+u.Y*u.Y)
+	n := u.X*u.X + u.Y*u.Y
+	if math.Abs(n-1) > 1e-8 {
+		return normal(u)
+	}
+	n = 1.5 - 0.5*n
 	return r2.Vec{X: n * u.X, Y: n * u.Y}
+}
+
+// normal returns the unit vector along u, (1, 0) where u is 0.
+func normal(u r2.Vec) r2.Vec {
+	h := math.Hypot(u.X, u.Y)
+	if h == 0 {
+		return r2.Vec{X: 1}
+	}
+	return r2.Vec{X: u.X / h, Y: u.Y / h}
 }

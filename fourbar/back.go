@@ -1,0 +1,146 @@
+package fourbar
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r2"
+
+	"example.com/twopoint/internal/dyad"
+	"example.com/twopoint/internal/trig"
+	"example.com/twopoint/rigid"
+)
+
+// SolveFollower writes into dst the motion of all links for a motion of the
+// follower, in rad, rad/s and rad/s², with the crank pin on the side knee of the
+// line from the crank pivot to the follower pin. Swing is the input as given,
+// Turn.Pos lies in (−π, π], and Margin is the sine between crank and coupler.
+//
+// Where the crank turns fully a pose on the other Branch is another assembly:
+// ErrUnreachable. Elsewhere the linkage gets there through a limit of the crank,
+// and dst.Branch tells which it is. Parallel and Contrary have one pose for a
+// follower angle and do not look at knee. The other errors are those of Solve,
+// and ErrInput for a knee that is neither Left nor Right.
+func (l *Linkage) SolveFollower(dst *State, swing rigid.Coordinate, knee rigid.Side) error {
+	if knee != rigid.Left && knee != rigid.Right {
+		return rigid.ErrInput
+	}
+	if l.dim.Branch > Crossed {
+		return l.solveCellBack(dst, swing)
+	}
+	p := pose{follower: link{direction(swing.Pos), swing.Vel, swing.Acc}}
+	margin, err := l.solveDyad(&p, &l.byFollower, &p.follower, sign(knee), &p.coupler)
+	if err != nil {
+		return err
+	}
+	p.coupler.axis = r2.Scale(-1, p.coupler.axis)
+	if err := l.writeBack(dst, &p); err != nil {
+		return err
+	}
+	dst.Swing, dst.Knee, dst.Margin = swing, knee, margin
+	return nil
+}
+
+// SolveCoupler writes into dst the motion of all links for a motion of the
+// coupler, its angle in the mechanism's axes in rad and the rates in rad/s and
+// rad/s², with the follower's direction on the side lean of the crank's. Turn.Pos
+// lies in (−π, π], Swing.Pos is the one that Solve gives there, and Margin is the
+// sine between crank and follower.
+//
+// Errors are those of SolveFollower, for lean as there for knee. The coupler of
+// Parallel never turns, so it drives nothing: ErrSingular at its angle 0,
+// ErrUnreachable at any other. At angle 0 Contrary has its links in one line,
+// with the crank at 0 for Left and at π for Right, and Lean changes there.
+func (l *Linkage) SolveCoupler(dst *State, coupler rigid.Coordinate, lean rigid.Side) error {
+	switch {
+	case lean != rigid.Left && lean != rigid.Right:
+		return rigid.ErrInput
+	case l.dim.Branch == Parallel:
+		return parallelCoupler(coupler)
+	}
+	p := pose{coupler: link{direction(coupler.Pos), coupler.Vel, coupler.Acc}}
+	var margin float64
+	var err error
+	if l.dim.Branch == Contrary {
+		margin, err = l.contraryCoupler(&p, coupler, sign(lean))
+	} else {
+		margin, err = l.solveDyad(&p, &l.byCoupler, &p.coupler, sign(lean), &p.follower)
+	}
+	if err != nil {
+		return err
+	}
+	if err := l.writeBack(dst, &p); err != nil {
+		return err
+	}
+	dst.Swing.Pos = l.swing(dst.Turn.Pos, p.follower.axis)
+	dst.Lean, dst.Margin = lean, margin
+	return nil
+}
+
+// solveDyad solves the dyad of crank and other for a driven link, all in p. The
+// pin is r as it comes: the errors of a short crank's direction and of its rate
+// are one error, which cancels in the pin's velocity.
+func (l *Linkage) solveDyad(p *pose, k *drive, driven *link, side float64, other *link) (margin float64, err error) {
+	d := k.span(driven.axis)
+	var t dyad.Triangle
+	if !k.dyad.Place(&t, d, side) {
+		if err := l.atLimit(k, &t, d); err != nil {
+			return 0, err
+		}
+	}
+	margin = k.dyad.Margin(&t)
+	r := &p.crank
+	if driven.omega != 0 || driven.alpha != 0 {
+		if margin < rigid.LeastMargin {
+			return 0, rigid.ErrSingular
+		}
+		r.omega, other.omega, r.alpha, other.alpha = k.rates(&t, driven.axis, driven.omega, driven.alpha)
+	}
+	r.axis, other.axis = k.dyad.Axes(&t)
+	p.pin = t.R
+	if k.long {
+		p.pin = r2.Scale(l.crank, r.axis)
+	}
+	return margin, nil
+}
+
+// writeBack writes a pose found from the follower or the coupler, but for what
+// depends on the drive.
+func (l *Linkage) writeBack(dst *State, p *pose) error {
+	sin := l.kink(p)
+	branch := l.dim.Branch
+	if branch <= Crossed && sin*l.side < 0 {
+		switch {
+		case !l.turns:
+			branch = Crossed - branch
+		case math.Abs(sin) > flat:
+			return rigid.ErrUnreachable
+		}
+	}
+	if !l.write(dst, p) {
+		return rigid.ErrNotFinite
+	}
+	dst.Turn = rigid.Coordinate{Pos: trig.Angle(p.crank.axis.X, p.crank.axis.Y), Vel: p.crank.omega, Acc: p.crank.alpha}
+	if dst.Turn.Pos == -math.Pi {
+		dst.Turn.Pos = math.Pi
+	}
+	dst.Branch = branch
+	dst.Transmission = trig.Angle(r2.Dot(p.coupler.axis, p.follower.axis), math.Abs(sin))
+	return nil
+}
+
+// kink returns the sine of the angle from the coupler's direction to the
+// follower's: its product with the coupler's length is d×u4, d from the crank pin
+// to the follower pivot, which keeps its digits where d is short.
+func (l *Linkage) kink(p *pose) float64 {
+	d := r2.Vec{X: l.frame - p.pin.X, Y: -p.pin.Y}
+	if d.X*d.X+d.Y*d.Y < l.coupler*l.coupler {
+		return r2.Cross(d, p.follower.axis) / l.coupler
+	}
+	return r2.Cross(p.coupler.axis, p.follower.axis)
+}
+
+// flat is a sine that rounding alone makes out of 0 where three links fall into
+// one line: the square root of a few units of the last place. Of a linkage whose
+// crank turns fully only one with a change point has such a pose, where it belongs
+// to both branches.
+const flat = 1e-7

@@ -1,0 +1,76 @@
+package fourbar
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r2"
+
+	"example.com/twopoint/internal/dyad"
+	"example.com/twopoint/rigid"
+)
+
+// A drive is the linkage as one driven link sees it: the two others are the RRR
+// dyad whose outer pins are d = base − arm·u apart, u the unit vector along the
+// driven link and base = (Frame, 0), all in the mechanism's own axes. With r and q
+// along the links of the dyad, r − q = d, and u2, u3, u4 along crank, coupler and
+// follower:
+//
+//	driven    arm   r          q
+//	crank      a     b·u3       c·u4
+//	follower  −c     a·u2      −b·u3
+//	coupler    b     a·u2       c·u4
+type drive struct {
+	dyad      dyad.RRR
+	base, arm float64 // length of the frame, signed length of the driven link
+	long      bool    // whether the driven link is longer than the frame
+}
+
+func newDrive(base, arm, r, q float64) drive {
+	return drive{dyad: dyad.NewRRR(r, q), base: base, arm: arm, long: math.Abs(arm) > base}
+}
+
+// span returns d for the driven link along u.
+func (k *drive) span(u r2.Vec) r2.Vec {
+	return r2.Vec{X: k.base - k.arm*u.X, Y: -k.arm * u.Y}
+}
+
+// rates returns the angular velocities and accelerations of r and q for a driven
+// link along u that turns with w and al.
+//
+// It looks from the longer of the frame and the driven link. With a driven link
+// much longer than the frame all links turn almost as one, and seen from the
+// frame the accelerations would be small differences of large terms. With m the
+// shorter of the two, the velocity of the dyad's first outer pin less that of the
+// second is ω×m, their acceleration α×m − ω²m seen from the frame and α×m + ω²m
+// seen from the driven link, whose own ω and α are added in the end.
+func (k *drive) rates(t *dyad.Triangle, u r2.Vec, w, al float64) (wr, wq, ar, aq float64) {
+	if k.long {
+		wr, wq = t.Rates(r2.Vec{Y: w * k.base})
+		ar, aq = t.Rates(t.Bias(r2.Vec{X: w * w * k.base, Y: al * k.base}, wr, wq))
+		return wr + w, wq + w, ar + al, aq + al
+	}
+	m, w2 := r2.Vec{X: k.arm * u.X, Y: k.arm * u.Y}, w*w
+	wr, wq = t.Rates(r2.Vec{X: -w * m.Y, Y: w * m.X})
+	ar, aq = t.Rates(t.Bias(r2.Vec{X: -w2*m.X - al*m.Y, Y: -w2*m.Y + al*m.X}, wr, wq))
+	return wr, wq, ar, aq
+}
+
+// atLimit places the dyad that d does not let close: flat where d is within
+// rounding of a limit, else with the reason why not.
+func (l *Linkage) atLimit(k *drive, t *dyad.Triangle, d r2.Vec) error {
+	switch gap, near := k.dyad.Gap(math.Hypot(d.X, d.Y)), closed*l.longest; {
+	case l.longest == 0:
+		return rigid.ErrInput
+	case math.IsNaN(gap):
+		return rigid.ErrNotFinite
+	case gap > near:
+		return rigid.ErrUnreachable
+	case math.Abs(k.dyad.B-k.dyad.C) <= near && math.Hypot(d.X, d.Y) <= near:
+		return rigid.ErrSingular // both links may turn about the one point
+	}
+	k.dyad.Flatten(t, d)
+	return nil
+}
+
+// closed is the gap, of the longest link, that counts as closed.
+const closed = 1e-14
