@@ -23,7 +23,7 @@ const (
 )
 
 // Sincos returns the sine and cosine of an angle in rad, each in error by at most
-// 2⁻⁵² of itself and 1e-24 of the angle, NaN for an angle that is not finite.
+// 2⁻⁵² of itself and 2e-24 of the angle, NaN for an angle that is not finite.
 func Sincos(angle float64) (sin, cos float64) {
 	if !(angle < greatest && angle > -greatest) {
 		return math.Sincos(angle)

@@ -42,7 +42,7 @@ func TestSincos(t *testing.T) {
 			t.Fatal(err)
 		}
 		sin, cos := trig.Sincos(x)
-		rounding := 1e-24 * math.Abs(x) / eps // of the angle's reduction
+		rounding := 2e-24 * math.Abs(x) / eps // of the angle's reduction
 		if diff, size := off(t, sin, row[1]); diff > eps*(size+rounding) {
 			t.Errorf("sin(%v) = %v, off by %.2g", x, sin, diff)
 		}
