@@ -1,0 +1,134 @@
+package slidercrank
+
+import (
+	"gonum.org/v1/gonum/spatial/r2"
+
+	"example.com/twopoint/internal/trig"
+	"example.com/twopoint/rigid"
+)
+
+// LeverDimensions are those of a SlottedLever, in m, and where it is mounted. The
+// crank pivot is the origin of the mechanism's own axes, the lever pivot is at
+// (−Centre, 0). More fields may come: write keyed literals.
+type LeverDimensions struct {
+	Crank  float64         `json:"crank"`  // crank pivot to crank pin
+	Centre float64         `json:"centre"` // crank pivot to lever pivot
+	Slot   float64         `json:"slot"`   // from the lever pivot to the slot, positive where the slot lies left of the pivot; usually 0
+	Mount  rigid.Placement `json:"mount"`  // of the mechanism's own axes in the machine
+}
+
+// LeverState is the motion of a SlottedLever at one instant. Lever has its origin
+// at its pivot and its x axis along the slot, Block its origin at the crank pin
+// and the lever's axes, Crank its origin at its pivot and its x axis to the pin.
+// Turn, Swing and Slide are in the mechanism's own axes, without Mount. More
+// fields may come.
+type LeverState struct {
+	Crank, Block, Lever rigid.Motion
+	Turn                rigid.Coordinate // of the crank
+	Swing               rigid.Coordinate // of the lever: 0 where the slot points from the lever pivot to the crank pivot
+	Slide               rigid.Coordinate // of the block: the pin is at (Slide.Pos, Slot) in the lever, Slide.Pos > 0
+	Slot                float64          // LeverDimensions.Slot
+	Knee                rigid.Side       // of the perpendicular from the crank pivot on the slot: see SolveSwing
+	Margin              float64
+}
+
+// Pin returns the terms of the crank pin's acceleration as seen from the lever, in
+// m/s² in the frame's axes: Base is zero, since the lever turns about a fixed
+// pivot, Relative is the block's acceleration along the slot and Coriolis
+// 2ω×Slide.Vel.
+func (s *LeverState) Pin() rigid.AccelerationTerms {
+	return s.Lever.AccelerationTerms(rigid.Point{
+		Pos: r2.Vec{X: s.Slide.Pos, Y: s.Slot},
+		Vel: r2.Vec{X: s.Slide.Vel},
+		Acc: r2.Vec{X: s.Slide.Acc},
+	})
+}
+
+// A SlottedLever is a crank whose pin carries a block that slides in the slot of a
+// lever about a second fixed pivot: the slider-crank chain with the crank's
+// neighbour fixed. With Crank < Centre − |Slot| the lever swings, as in a shaping
+// machine; with Crank > Centre + |Slot| it turns with the crank (Whitworth's
+// drive); between the two the crank itself can only rock, between the positions
+// where the pin is nearest to the lever pivot. The zero SlottedLever gives
+// ErrInput. Any number of goroutines may share one.
+type SlottedLever struct {
+	given LeverDimensions
+	form  slotForm
+}
+
+// NewSlottedLever checks the dimensions and returns the lever. Errors are
+// *rigid.DimensionError, joined if several: of Crank and Centre, which must be
+// positive lengths; rigid.ErrUnreachable where the pin never comes as far from the
+// lever pivot as |Slot|; rigid.ErrChangePoint where |Crank − Centre| = |Slot|
+// within 4 ε of the longer, ε = 2⁻⁵²: there the pin meets the lever pivot, or the
+// slot's nearest point to it, and the motion could go on in two ways.
+func NewSlottedLever(d LeverDimensions) (*SlottedLever, error) {
+	if err := checkSlot(d.Crank, d.Centre, d.Slot, "Slot", d.Mount); err != nil {
+		return nil, err
+	}
+	return &SlottedLever{given: d, form: newSlotForm(d.Crank, d.Centre, d.Slot, d.Mount)}, nil
+}
+
+// Dimensions returns what NewSlottedLever was given.
+func (l *SlottedLever) Dimensions() LeverDimensions { return l.given }
+
+// Solve writes into dst the motion of all links for a motion of the crank, turn in
+// rad counter-clockwise from the direction away from the lever pivot. Swing.Pos is
+// continuous over any number of turns: where the lever turns it grows by 2π with
+// each. The rates are those of the constraint
+//
+//	r·exp(iφ) + c = (σ + ie)·exp(iψ)
+//
+// Margin is Slide.Pos over the crank, at most 1. Errors: ErrUnreachable outside
+// Range; ErrSingular for rates where Margin is below rigid.LeastMargin;
+// ErrNotFinite; ErrInput for a zero SlottedLever. An error leaves dst as it was.
+func (l *SlottedLever) Solve(dst *LeverState, turn rigid.Coordinate) error {
+	var m slotMotion
+	sh, ch := trig.Sincos(turn.Pos / 2)
+	d2, s2 := l.form.squares(ch)
+	if err := l.form.place(&m, turn, sh, ch, d2, s2); err != nil {
+		return err
+	}
+	l.form.write(&dst.Crank, &dst.Block, &dst.Lever, &m)
+	dst.Turn, dst.Swing, dst.Slide = turn, m.swing, m.slide
+	dst.Slot, dst.Knee, dst.Margin = l.given.Slot, m.knee(), m.margin
+	return nil
+}
+
+// Coefficients returns the lever's swing and its derivatives by the crank's angle,
+// turn in rad: a rigid.Law. Errors as Solve asked for rates.
+func (l *SlottedLever) Coefficients(turn float64) (rigid.Coefficients, error) {
+	var m slotMotion
+	sh, ch := trig.Sincos(turn / 2)
+	d2, s2 := l.form.squares(ch)
+	if err := l.form.place(&m, rigid.Coordinate{Pos: turn, Vel: 1}, sh, ch, d2, s2); err != nil {
+		return rigid.Coefficients{}, err
+	}
+	return rigid.Coefficients{In: turn, Out: m.swing.Pos, First: m.swing.Vel, Second: m.swing.Acc}, nil
+}
+
+// Range returns the crank's angles that have a position: all of them, or the
+// interval about 0 at whose ends the pin is nearest to the lever pivot.
+func (l *SlottedLever) Range() []rigid.Interval { return l.form.turns() }
+
+// DeadCentres returns the crank's angles, in (−π, π] and rising, where the lever's
+// swing comes to rest, with the swing as Out and First = 0: the crank is at right
+// angles to the slot there. A swinging lever has two, a turning one none, and one
+// whose crank can only rock has one, besides the ends of Range.
+func (l *SlottedLever) DeadCentres() []rigid.Coefficients { return l.form.deadCentres() }
+
+// TimeRatio returns the crank's angle, turning positive, from the least to the
+// greatest swing over that back: (π + 2β)/(π − 2β) with sin β = Crank/Centre where
+// the slot passes through the lever pivot. ErrUnreachable where the lever does not
+// swing between two extremes.
+func (l *SlottedLever) TimeRatio() (float64, error) {
+	c := l.form.deadCentres()
+	if len(c) != 2 {
+		return 0, rigid.ErrUnreachable
+	}
+	there := c[1].In - c[0].In
+	if c[1].Out < c[0].Out {
+		there = rigid.Revolution - there
+	}
+	return there / (rigid.Revolution - there), nil
+}

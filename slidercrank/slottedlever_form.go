@@ -1,0 +1,167 @@
+package slidercrank
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r2"
+
+	"example.com/twopoint/internal/trig"
+	"example.com/twopoint/rigid"
+)
+
+// A slotForm is a crank of length r about the origin whose pin runs in a line that
+// turns about (−c, 0) and passes it at the distance |e|: the chain of the slotted
+// lever and of the oscillating cylinder. With d from the pivot of the line to the
+// pin, u along the line, σ along it, φ the crank's angle and ψ the line's,
+//
+//	d = c + r·exp(iφ) = u·(σ + ie),  u = exp(iψ)
+//	D² = |d|² = (r − c)² + 4rc·cos²(φ/2),  σ² = D² − e²
+//
+// Every square is a sum of products of given lengths and of the half angle's
+// cosine, so that nothing cancels where the pin comes near to the pivot.
+type slotForm struct {
+	r, c, e    float64
+	across     float64 // the shorter, negative where it is c: d is reckoned along the longer
+	twice      float64 // 2 × the shorter
+	gap, gap2  float64 // |r − c| and its square
+	least      float64 // gap² − e², of σ²
+	rc         float64
+	perCrank   float64 // 1/r
+	r2         float64 // r²
+	rc4        float64 // 4rc
+	difference float64 // (r − c)(r + c)
+	slack      float64 // of σ², for positions that are a rounding beyond the limit
+	size       float64 // the largest length
+	mount      rigid.Pose
+	pivot      r2.Vec // of the line, in the frame
+}
+
+// newSlotForm returns the form of a crank r at the distance c from the pivot of a
+// line offset by e, all checked.
+func newSlotForm(r, c, e float64, mount rigid.Placement) slotForm {
+	long, short, across := c, r, r
+	if r > c {
+		long, short, across = r, c, -c
+	}
+	gap, size := long-short, max(long, math.Abs(e))
+	m := mount.Pose()
+	return slotForm{
+		r: r, c: c, e: e,
+		across: across, twice: 2 * short, size: size,
+		gap: gap, gap2: gap * gap, least: (gap - math.Abs(e)) * (gap + math.Abs(e)),
+		rc: r * c, perCrank: 1 / r, r2: r * r, rc4: 4 * r * c, difference: (r - c) * (r + c),
+		slack: 2 * beyond * size * math.Abs(e),
+		mount: m,
+		pivot: m.Point(r2.Vec{X: -c}),
+	}
+}
+
+// A slotMotion is the motion of the crank and of the line in which its pin runs,
+// before it is written out.
+type slotMotion struct {
+	crank, line  r2.Vec // unit vectors, in the frame
+	turn         rigid.Coordinate
+	swing, slide rigid.Coordinate
+	margin       float64
+}
+
+// squares returns D² and σ² for the cosine of half the crank's angle.
+func (k *slotForm) squares(ch float64) (d2, s2 float64) {
+	span := k.rc4 * (ch * ch)
+	return k.gap2 + span, k.least + span
+}
+
+// place solves the position for the crank's angle φ, the sine and cosine of its
+// half, D² and σ². From (d log d)/dφ = ir·exp(iφ)/d, the
+// imaginary part of whose derivative is rc(r² − c²)sin φ/D⁴, and
+// ψ = arg d − asin(e/D),
+//
+//	ψ'  = [r(r + c cos φ) − (e/σ)·rc sin φ]/D²
+//	ψ'' = rc{(r² − c²)sin φ/D⁴ − (e/σ)[((r − c)²cos φ + 4rc cos²(φ/2))/D⁴ + rc sin²φ/(D²σ²)]}
+//	σ'  = −rc sin φ/σ
+//	σ'' = −rc[((r − c)² − e²)cos φ + 4rc cos⁴(φ/2)]/σ³
+//
+// At the limit of a crank that cannot turn fully σ is 0 and there are no
+// derivatives. The swing is continuous in φ: less the turn of the longer of crank
+// and centre line it stays within ±π.
+func (k *slotForm) place(m *slotMotion, turn rigid.Coordinate, sh, ch, d2, s2 float64) error {
+	if turn.Pos*0+turn.Vel*0+turn.Acc*0 != 0 {
+		return rigid.ErrNotFinite
+	}
+	by := s2
+	if !(s2 > 0) {
+		if !(s2 >= -k.slack) || d2 == 0 {
+			return k.nowhere()
+		}
+		s2, by = 0, d2
+	}
+	t, s := 1/(d2*by), math.Sqrt(s2) // one division, beside the root
+	i, j := by*t, d2*t               // 1/D², 1/σ²
+	half := ch * ch
+	span := k.rc4 * half
+	sin, cos := 2*sh*ch, (ch-sh)*(ch+sh)
+	dx, dy := k.gap+k.twice*half, k.across*sin
+	u := r2.Vec{X: (s*dx + k.e*dy) * i, Y: (s*dy - k.e*dx) * i}
+	js := s * j // 1/σ
+	q := k.rc * sin
+	ej := k.e * js
+	slide1, slide2 := -q*js, -k.rc*js*j*(k.least*cos+span*half)
+	swing1 := (k.r2 + k.rc*cos - ej*q) * i
+	swing2 := k.rc * i * ((k.difference*sin-ej*(k.gap2*cos+span))*i - ej*q*sin*j)
+	m.margin = s * k.perCrank
+	if m.margin > 1 {
+		m.margin = 1
+	}
+	m.slide.Pos, m.turn = s, turn
+	if w, al := turn.Vel, turn.Acc; w != 0 || al != 0 {
+		if m.margin < rigid.LeastMargin {
+			return rigid.ErrSingular
+		}
+		w2 := w * w
+		a, b := swing1*al+swing2*w2, slide1*al+slide2*w2
+		if (a+b+k.r*(math.Abs(al)+w2))*0 != 0 {
+			return rigid.ErrNotFinite
+		}
+		m.swing.Vel, m.swing.Acc = swing1*w, a
+		m.slide.Vel, m.slide.Acc = slide1*w, b
+	}
+	m.crank = turned(k.mount.Axis, r2.Vec{X: cos, Y: sin})
+	if k.across < 0 {
+		m.line = turned(m.crank, u)
+		m.swing.Pos = turn.Pos + trig.Angle(u.X, u.Y)
+	} else {
+		m.line = turned(k.mount.Axis, u)
+		m.swing.Pos = trig.Angle(u.X, u.Y)
+	}
+	return nil
+}
+
+// nowhere is the error of a position that does not exist, or of a mechanism that
+// no constructor made.
+func (k *slotForm) nowhere() error {
+	if k.r == 0 {
+		return rigid.ErrInput
+	}
+	return rigid.ErrUnreachable
+}
+
+// checkSlot returns every *rigid.DimensionError of a slotForm's dimensions, joined;
+// offset is the field's name for e.
+func checkSlot(r, c, e float64, offset string, mount rigid.Placement) error {
+	var f faults
+	f.length("Crank", r)
+	f.length("Centre", c)
+	f.distance(offset, e)
+	f.mount(mount)
+	if len(f) > 0 {
+		return f.join()
+	}
+	size, least := equal*max(r, c), math.Abs(math.Abs(r-c)-math.Abs(e))
+	switch {
+	case r+c-math.Abs(e) <= size:
+		f.add("", 0, rigid.ErrUnreachable)
+	case least <= size:
+		f.add("", 0, rigid.ErrChangePoint)
+	}
+	return f.join()
+}
