@@ -1,0 +1,4 @@
+package rolling
+
+// TwoSincos is twoSincos for the tests.
+var TwoSincos = twoSincos
