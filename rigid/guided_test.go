@@ -106,6 +106,7 @@ func TestGuidedErrors(t *testing.T) {
 		{"length overflows", still, r2.Vec{X: 1.7e308, Y: 1.7e308}, x, nil},
 		{"length overflows", moving, r2.Vec{X: 1.7e308, Y: 1.7e308}, x, rigid.ErrNotFinite},
 		{"rate overflows", rigid.Point{Vel: r2.Vec{Y: 1e200}}, r2.Vec{X: 1e-200}, x, rigid.ErrNotFinite},
+		{"slide's acceleration alone overflows", rigid.Point{Acc: r2.Vec{Y: 1e303}}, r2.Vec{X: 1e-4, Y: 1e3}, x, rigid.ErrNotFinite},
 		{"subnormal sizes", rigid.Point{Vel: r2.Vec{X: 5e-324}}, r2.Vec{X: 5e-324}, r2.Vec{X: 5e-324}, nil},
 	} {
 		body, slide, err := rigid.Guided(c.a, c.b, c.along)

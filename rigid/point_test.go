@@ -48,6 +48,10 @@ func TestPathScales(t *testing.T) {
 		}
 		near(t, "tangent x", path.Tangent.X, 0.6, 2e-16)
 		near(t, "tangent y", path.Tangent.Y, 0.8, 2e-16)
+		upright, err := rigid.Point{Vel: r2.Vec{Y: -size}}.Path()
+		if want := (r2.Vec{Y: -1}); err != nil || upright.Tangent != want {
+			t.Errorf("straight down at %g m/s: %v, %v", size, upright.Tangent, err)
+		}
 	}
 	for _, r := range []float64{1e-100, 1e-6, 1, 1e3, 1e100} {
 		p := rigid.Point{Vel: r2.Vec{X: 2 * r}, Acc: r2.Vec{X: 5 * r, Y: -4 * r}}

@@ -117,6 +117,7 @@ func TestPoleErrors(t *testing.T) {
 		{"starting to turn", rigid.Motion{Acc: x, Alpha: 2}, rigid.ErrNoPole, nil, rigid.ErrNoPole},
 		{"turning about its origin", rigid.Motion{Omega: 2}, nil, nil, nil},
 		{"pole beyond the numbers", rigid.Motion{Vel: r2.Vec{X: 1e300}, Acc: r2.Vec{X: huge}, Omega: 1e-200}, rigid.ErrNoPole, rigid.ErrNoPole, rigid.ErrNoPole},
+		{"circle beyond the numbers", rigid.Motion{Acc: r2.Vec{X: 1e300}, Omega: 1e-100}, nil, rigid.ErrNoPole, rigid.ErrNoPole},
 		{"NaN place", rigid.Motion{Pose: rigid.NewPose(math.NaN(), 0, 0), Omega: 1}, rigid.ErrNotFinite, rigid.ErrNotFinite, rigid.ErrNotFinite},
 		{"NaN angle", rigid.Motion{Pose: rigid.NewPose(0, 0, math.NaN()), Omega: 1}, rigid.ErrNotFinite, rigid.ErrNotFinite, rigid.ErrNotFinite},
 		{"infinite speed", rigid.Motion{Omega: math.Inf(1)}, rigid.ErrNotFinite, rigid.ErrNotFinite, rigid.ErrNotFinite},

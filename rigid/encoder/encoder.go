@@ -54,8 +54,8 @@ var belowTurn = math.Nextafter(rigid.Revolution, 0)
 // Count returns the count nearest to turns·2π + angle, halves away from zero before
 // Zero is added: the inverse of Angle, exact for a PerTurn below 2⁴⁹. The angle, in
 // rad, may be any, negative or beyond a turn. ErrInput for a PerTurn below 1 and
-// where the count, or it less Zero, is beyond an int64; ErrNotFinite where the
-// angle is NaN or infinite.
+// where the count, it less Zero, or the part of the angle alone is beyond an int64;
+// ErrNotFinite where the angle is NaN or infinite.
 func (e Encoder) Count(turns int64, angle float64) (int64, error) {
 	if e.PerTurn < 1 {
 		return 0, rigid.ErrInput

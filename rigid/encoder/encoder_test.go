@@ -96,6 +96,8 @@ func TestCount(t *testing.T) {
 		{"from Zero beyond, count within", encoder.Encoder{PerTurn: 1, Zero: least}, greatest, turn, 0, rigid.ErrInput},
 		{"far beyond", e, greatest, 0, 0, rigid.ErrInput},
 		{"far below", e, least, 0, 0, rigid.ErrInput},
+		{"angle just beyond", encoder.Encoder{PerTurn: 1 << 62}, 0, 2 * turn, 0, rigid.ErrInput},
+		{"angle just within", encoder.Encoder{PerTurn: 1 << 62}, 0, -turn, -1 << 62, nil},
 		{"angle beyond", e, 0, 1e300, 0, rigid.ErrInput},
 		{"quotient overflows", e, 0, -math.MaxFloat64, 0, rigid.ErrInput},
 		{"NaN", e, 0, math.NaN(), 0, rigid.ErrNotFinite},

@@ -160,6 +160,14 @@ func TestRatesRefuse(t *testing.T) {
 	}
 }
 
+func TestRatesOverflow(t *testing.T) {
+	r := newRates(t, 2, 1)
+	r.Add(0, 0)
+	if c, at, ok := r.Add(1e-200, 1e200); ok || at != 0 || c != (rigid.Coordinate{}) {
+		t.Errorf("a velocity beyond the numbers: %v, %v, %v", c, at, ok)
+	}
+}
+
 func TestRatesWithoutAnswer(t *testing.T) {
 	var zero encoder.Rates
 	if c, at, ok := zero.Add(1, 1); ok || at != 0 || c != (rigid.Coordinate{}) {

@@ -105,12 +105,9 @@ func vectorLeaf(p cmp.Path, at int) (kind, measure) {
 // field returns the nearest name at or before step i of a path: of a struct's
 // field, with the struct's type, or a string key of a map, with none; and its step.
 func field(p cmp.Path, i int) (owner reflect.Type, name string, at int) {
-	for ; i >= 0; i-- {
+	for ; i > 0; i-- { // step 0 is the root, which has no name
 		switch s := p[i].(type) {
 		case cmp.StructField:
-			if i == 0 {
-				return nil, s.Name(), i
-			}
 			return p[i-1].Type(), s.Name(), i
 		case cmp.MapIndex:
 			if s.Key().Kind() == reflect.String {

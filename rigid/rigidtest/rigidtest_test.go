@@ -266,6 +266,10 @@ func TestDirections(t *testing.T) {
 		{"a zero axis is (1, 0)", rigid.Motion{}, at(0, 1), rigidtest.Tolerance{}, true},
 		{"a zero axis is not (0, 1)", rigid.Motion{}, at(math.Pi/2, 1), tolerance, false},
 		{"not a unit vector", at(1, 1), at(1, 1.1), tolerance, false},
+		{"not a unit vector, upright", at(math.Pi/2, 1), at(math.Pi/2, 1.1), tolerance, false},
+		{"near a unit vector", at(1, 1), at(1, 1.0005), tolerance, true},
+		{"a normal a little turned", rigid.Path{Normal: r2.Vec{Y: 1}}, rigid.Path{Normal: r2.Vec{X: 5e-4, Y: 1}}, rigidtest.Tolerance{Pos: 1e-3}, true},
+		{"a normal turned by more", rigid.Path{Normal: r2.Vec{Y: 1}}, rigid.Path{Normal: r2.Vec{X: 2e-3, Y: 1}}, rigidtest.Tolerance{Pos: 1e-3}, false},
 		{"Relative counts in rad", at(0, 1), at(5e-10, 1), only, true},
 		{"Relative exceeded", at(0, 1), at(2e-9, 1), only, false},
 		{"NaN", at(math.NaN(), 1), at(math.NaN(), 1), tolerance, false},
@@ -310,6 +314,17 @@ func TestNumbers(t *testing.T) {
 		if got := cmp.Equal(x, y, rigidtest.Lengths(c.tol)); got != c.same {
 			t.Errorf("%s: %v and %v: %v, want %v", c.why, c.x, c.y, got, c.same)
 		}
+	}
+}
+
+// A normal is a direction: Angles alone must find it so.
+func TestNormalIsAnAngle(t *testing.T) {
+	x, y := rigid.Path{Normal: r2.Vec{Y: 1}}, rigid.Path{Normal: r2.Vec{X: 5e-4, Y: 1}}
+	if diff := cmp.Diff(x, y, rigidtest.Angles(tolerance)); diff != "" {
+		t.Error(diff)
+	}
+	if cmp.Equal(x, y, rigidtest.Lengths(tolerance)) {
+		t.Error("Lengths covers a direction")
 	}
 }
 
