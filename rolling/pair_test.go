@@ -1,0 +1,395 @@
+package rolling_test
+
+import (
+	"errors"
+	"math"
+	"math/rand/v2"
+	"testing"
+
+	"gonum.org/v1/gonum/spatial/r2"
+
+	"example.com/twopoint/rigid"
+	"example.com/twopoint/rolling"
+)
+
+func pair(t testing.TB, d rolling.PairDimensions) *rolling.Pair {
+	t.Helper()
+	p, err := rolling.NewPair(d)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return p
+}
+
+// randomPair returns friction wheels or gears, external or internal.
+func randomPair(rng *rand.Rand) rolling.PairDimensions {
+	d := rolling.PairDimensions{
+		Internal: rng.IntN(2) == 0,
+		Mount:    rigid.Placement{X: rng.Float64(), Y: rng.Float64(), Angle: 8*rng.Float64() - 4},
+	}
+	if rng.IntN(2) == 0 {
+		d.RadiusA, d.RadiusB = 0.05+rng.Float64(), 0.05+rng.Float64()
+		return d
+	}
+	d.TeethA, d.TeethB = 10+rng.IntN(90), 100+rng.IntN(90)
+	if rng.IntN(2) == 0 {
+		d.TeethA, d.TeethB = d.TeethB, d.TeethA
+	}
+	d.Centres = 0.1 + rng.Float64()
+	return d
+}
+
+// TestPairRolls checks on random pairs what makes two wheels a pair: at the pitch point
+// both move alike, it is their relative centre, and with the centres it lies on one line
+// (Aronhold–Kennedy); one way and back agree; an arm carries all of it.
+func TestPairRolls(t *testing.T) {
+	rng := rand.New(rand.NewPCG(6, 4))
+	for range 2000 {
+		d := randomPair(rng)
+		p := pair(t, d)
+		turn := coordinate(rng, 9)
+		var st, back rolling.PairState
+		if err := errors.Join(p.Solve(&st, turn), p.SolveB(&back, st.TurnB)); err != nil {
+			t.Fatal(err)
+		}
+		const tol = 1e-11
+		arm := rigid.Motion{Pose: rigid.NewPose(1, 2, 3), Vel: r2.Vec{X: 1}, Acc: r2.Vec{Y: -2}, Omega: 0.7, Alpha: -0.4}
+		for _, on := range []bool{false, true} {
+			if on {
+				if err := errors.Join(st.On(&arm), back.On(&arm)); err != nil {
+					t.Fatal(err)
+				}
+			}
+			a := st.A.At(st.A.Pose.Local(st.PitchA.Pos))
+			b := st.B.At(st.B.Pose.Local(st.PitchB.Pos))
+			if !nearPoint(a, st.PitchA, tol) || !nearPoint(b, st.PitchB, tol) || !nearVec(a.Vel, b.Vel, tol) || st.PitchA.Pos != st.PitchB.Pos {
+				t.Fatalf("%+v: pitch %+v and %+v, particles %+v and %+v", d, st.PitchA, st.PitchB, a, b)
+			}
+			if pole, err := rigid.RelativePole(&st.A, &st.B); err != nil || !nearVec(pole, st.PitchA.Pos, 1e-9) {
+				t.Fatalf("%+v: relative centre %v %v, want %v", d, pole, err, st.PitchA.Pos)
+			}
+			ab := r2.Sub(st.B.Pose.Origin, st.A.Pose.Origin)
+			if ap := r2.Sub(st.PitchA.Pos, st.A.Pose.Origin); !near(r2.Cross(ab, ap), 0, tol) {
+				t.Fatalf("%+v: pitch point off the line of centres", d)
+			}
+			if !nearMotion(st.A, back.A, tol) || !nearMotion(st.B, back.B, tol) || !nearPoint(st.PitchA, back.PitchA, tol) {
+				t.Fatalf("%+v: back from B: %+v, want %+v", d, back, st)
+			}
+		}
+		if turn != st.TurnA || back.TurnB != st.TurnB {
+			t.Fatalf("a given turn changed: %+v %+v", st, back)
+		}
+		c, err := p.Coefficients(turn.Pos)
+		if got := c.Output(turn.Vel, turn.Acc); err != nil || got != st.TurnB {
+			t.Fatalf("coefficients give %+v %v, want %+v", got, err, st.TurnB)
+		}
+	}
+}
+
+// TestPairRatios: sense and size of the ratio by kind, and the place of the centres.
+func TestPairRatios(t *testing.T) {
+	for _, row := range []struct {
+		name          string
+		d             rolling.PairDimensions
+		ratio, centre float64
+		pitch         float64
+	}{
+		{"external by radii", rolling.PairDimensions{RadiusA: 0.1, RadiusB: 0.25}, -0.4, 0.35, 0.1},
+		{"internal by radii, B the ring", rolling.PairDimensions{RadiusA: 0.1, RadiusB: 0.25, Internal: true}, 0.4, -0.15, 0.1},
+		{"internal by radii, A the ring", rolling.PairDimensions{RadiusA: 0.25, RadiusB: 0.1, Internal: true}, 2.5, 0.15, 0.25},
+		{"external by teeth", rolling.PairDimensions{TeethA: 20, TeethB: 50, Centres: 0.35}, -0.4, 0.35, 0.1},
+		{"internal by teeth", rolling.PairDimensions{TeethA: 20, TeethB: 50, Centres: 0.15, Internal: true}, 0.4, -0.15, 0.1},
+		{"all given", rolling.PairDimensions{TeethA: 20, TeethB: 50, RadiusA: 0.1, RadiusB: 0.25, Centres: 0.35}, -0.4, 0.35, 0.1},
+	} {
+		p := pair(t, row.d)
+		var st rolling.PairState
+		if err := p.Solve(&st, rigid.Coordinate{Pos: 1, Vel: 1}); err != nil {
+			t.Fatal(err)
+		}
+		if !near(st.TurnB.Vel, row.ratio, 1e-15) || !near(st.B.Pose.Origin.X, row.centre, 1e-15) || !near(st.PitchA.Pos.X, row.pitch, 1e-15) {
+			t.Errorf("%s: %+v", row.name, st)
+		}
+		if p.Dimensions() != row.d || len(p.Range()) != 1 {
+			t.Errorf("%s: %+v %v", row.name, p.Dimensions(), p.Range())
+		}
+	}
+}
+
+// TestPairMillionTurns: teeth are whole fractions, so a turn that is a whole number
+// gives the float64 nearest to the exact turn.
+func TestPairMillionTurns(t *testing.T) {
+	p := pair(t, rolling.PairDimensions{TeethA: 17, TeethB: 53, Centres: 0.35})
+	var st rolling.PairState
+	if err := p.Solve(&st, rigid.Coordinate{Pos: 53 * 123457}); err != nil || st.TurnB.Pos != -17*123457 {
+		t.Errorf("%v %v, want %v exactly", st.TurnB.Pos, err, -17*123457)
+	}
+	if err := p.SolveB(&st, rigid.Coordinate{Pos: 17 * 123457}); err != nil || st.TurnA.Pos != -53*123457 {
+		t.Errorf("%v %v, want %v exactly", st.TurnA.Pos, err, -53*123457)
+	}
+}
+
+func TestNewPairErrors(t *testing.T) {
+	nan := math.NaN()
+	for _, row := range []struct {
+		d     rolling.PairDimensions
+		name  string
+		cause error
+	}{
+		{rolling.PairDimensions{}, "RadiusA", rigid.ErrNotPositive},
+		{rolling.PairDimensions{RadiusA: 1}, "RadiusB", rigid.ErrNotPositive},
+		{rolling.PairDimensions{RadiusA: -1, RadiusB: 1}, "RadiusA", rigid.ErrNotPositive},
+		{rolling.PairDimensions{RadiusA: nan, RadiusB: 1}, "RadiusA", rigid.ErrNotFinite},
+		{rolling.PairDimensions{RadiusA: 1, RadiusB: 1e61}, "RadiusB", rigid.ErrInput},
+		{rolling.PairDimensions{TeethA: 20, TeethB: 30}, "Centres", rigid.ErrNotPositive},
+		{rolling.PairDimensions{TeethA: 20, TeethB: 30, Centres: math.Inf(1)}, "Centres", rigid.ErrNotFinite},
+		{rolling.PairDimensions{TeethA: 20, Centres: 1}, "TeethB", rigid.ErrNotPositive},
+		{rolling.PairDimensions{TeethA: -20, TeethB: 30, Centres: 1}, "TeethA", rigid.ErrNotPositive},
+		{rolling.PairDimensions{TeethA: 20, TeethB: 20, Centres: 1, Internal: true}, "TeethB", rigid.ErrSingular},
+		{rolling.PairDimensions{RadiusA: 0.3, RadiusB: 0.1 + 0.2, Internal: true}, "RadiusB", rigid.ErrSingular},
+		{rolling.PairDimensions{TeethA: 20, TeethB: 30, RadiusA: 0.2, RadiusB: 0.3001}, "RadiusB", rigid.ErrInput},
+		{rolling.PairDimensions{RadiusA: 0.2, RadiusB: 0.3, Centres: 0.5001}, "Centres", rigid.ErrInput},
+		{rolling.PairDimensions{RadiusA: 1, RadiusB: 1, Mount: rigid.Placement{Y: nan}}, "Mount.Y", rigid.ErrNotFinite},
+	} {
+		p, err := rolling.NewPair(row.d)
+		checkRefused(t, p == nil, err, row.name, row.cause)
+	}
+}
+
+// TestRack: the pinion rolls on the rack, driven from either side, and carried.
+func TestRack(t *testing.T) {
+	rng := rand.New(rand.NewPCG(6, 5))
+	for i := range 500 {
+		d := rolling.RackDimensions{Radius: 0.02 + rng.Float64(), Mount: rigid.Placement{X: 1, Angle: 8*rng.Float64() - 4}}
+		if i%2 == 0 {
+			d = rolling.RackDimensions{Teeth: 10 + rng.IntN(50), Pitch: 0.01 * (1 + rng.Float64()), Mount: d.Mount}
+		}
+		p, err := rolling.NewRack(d)
+		if err != nil {
+			t.Fatal(err)
+		}
+		radius := d.Radius + float64(d.Teeth)*d.Pitch/(2*math.Pi)
+		turn := coordinate(rng, 9)
+		var st, back rolling.RackState
+		if err := errors.Join(p.Solve(&st, turn), p.SolveSlide(&back, st.Slide)); err != nil {
+			t.Fatal(err)
+		}
+		const tol = 1e-12
+		if st.Turn != turn || !near(st.Slide.Pos, radius*turn.Pos, tol) || !near(st.Slide.Acc, radius*turn.Acc, tol) || !near(back.Turn.Pos, turn.Pos, tol) {
+			t.Fatalf("%+v: %+v, back %+v", d, st, back)
+		}
+		carriage := rigid.Motion{Pose: rigid.NewPose(1, 2, 3), Vel: r2.Vec{X: 1}, Omega: 0.7, Alpha: -0.4}
+		for _, on := range []bool{false, true} {
+			if on {
+				if err := errors.Join(st.On(&carriage), back.On(&carriage)); err != nil {
+					t.Fatal(err)
+				}
+			}
+			a := st.Pinion.At(st.Pinion.Pose.Local(st.PitchPinion.Pos))
+			b := st.Rack.At(st.Rack.Pose.Local(st.PitchRack.Pos))
+			if !nearPoint(a, st.PitchPinion, 1e-10) || !nearPoint(b, st.PitchRack, 1e-10) || !nearVec(a.Vel, b.Vel, 1e-10) {
+				t.Fatalf("%+v: %+v: particles %+v, %+v", d, st, a, b)
+			}
+			if gap := r2.Norm(r2.Sub(st.PitchRack.Pos, st.Pinion.Pose.Origin)); !near(gap, radius, tol) {
+				t.Fatalf("%+v: pitch point at %v from the centre", d, gap)
+			}
+			if !nearMotion(st.Pinion, back.Pinion, 1e-10) || !nearMotion(st.Rack, back.Rack, 1e-10) {
+				t.Fatalf("%+v: back %+v, want %+v", d, back, st)
+			}
+		}
+		c, err := p.Coefficients(turn.Pos)
+		if got := c.Output(turn.Vel, turn.Acc); err != nil || got != st.Slide || p.Dimensions() != d || len(p.Range()) != 1 {
+			t.Fatalf("coefficients give %+v %v, want %+v", got, err, st.Slide)
+		}
+	}
+}
+
+// TestRackTeeth: a million turns move the rack by a million times its teeth, but for
+// the rounding of the turn given.
+func TestRackTeeth(t *testing.T) {
+	p, err := rolling.NewRack(rolling.RackDimensions{Teeth: 19, Pitch: 0.0125})
+	if err != nil {
+		t.Fatal(err)
+	}
+	const turn = 1e6 * rigid.Revolution // rounds 2π·10⁶ by 4.06e-10 rad (mpmath)
+	var st rolling.RackState
+	if err := p.Solve(&st, rigid.Coordinate{Pos: turn}); err != nil {
+		t.Fatal(err)
+	}
+	if want := 19 * 0.0125 * 1e6; !near(st.Slide.Pos, want, 5e-10*19*0.0125/(2*math.Pi)+want*eps) {
+		t.Errorf("%v, want %v", st.Slide.Pos, want)
+	}
+}
+
+func TestNewRackErrors(t *testing.T) {
+	for _, row := range []struct {
+		d     rolling.RackDimensions
+		name  string
+		cause error
+	}{
+		{rolling.RackDimensions{}, "Radius", rigid.ErrNotPositive},
+		{rolling.RackDimensions{Radius: math.NaN()}, "Radius", rigid.ErrNotFinite},
+		{rolling.RackDimensions{Teeth: -1, Pitch: 0.01}, "Teeth", rigid.ErrNotPositive},
+		{rolling.RackDimensions{Teeth: 20}, "Pitch", rigid.ErrNotPositive},
+		{rolling.RackDimensions{Teeth: 20, Pitch: 0.01, Radius: 0.03}, "Radius", rigid.ErrInput},
+		{rolling.RackDimensions{Radius: 1, Mount: rigid.Placement{X: math.Inf(1)}}, "Mount.X", rigid.ErrNotFinite},
+	} {
+		p, err := rolling.NewRack(row.d)
+		checkRefused(t, p == nil, err, row.name, row.cause)
+	}
+}
+
+// TestBelt: both rims move with the belt; sense of rotation by kind; way and back.
+func TestBelt(t *testing.T) {
+	rng := rand.New(rand.NewPCG(6, 6))
+	for i := range 500 {
+		d := rolling.BeltDimensions{
+			RadiusA: 0.05 + rng.Float64(), RadiusB: 0.05 + rng.Float64(), Centres: 2.2 + rng.Float64(),
+			Crossed: i%2 == 0, Mount: rigid.Placement{X: 1, Y: -1, Angle: 8*rng.Float64() - 4},
+		}
+		if i%3 == 0 {
+			d.RadiusA, d.RadiusB, d.TeethA, d.TeethB, d.Pitch = 0, 0, 20+rng.IntN(50), 20+rng.IntN(50), 0.05
+		}
+		p, err := rolling.NewBelt(d)
+		if err != nil {
+			t.Fatal(err)
+		}
+		turn := coordinate(rng, 9)
+		var st, fromB, fromBelt rolling.BeltState
+		if err := errors.Join(p.Solve(&st, turn), p.SolveB(&fromB, st.TurnB), p.SolveSlide(&fromBelt, st.Slide)); err != nil {
+			t.Fatal(err)
+		}
+		radiusA, radiusB := d.RadiusA, d.RadiusB
+		if d.TeethA != 0 {
+			radiusA, radiusB = float64(d.TeethA)*d.Pitch/(2*math.Pi), float64(d.TeethB)*d.Pitch/(2*math.Pi)
+		}
+		way := 1.0
+		if d.Crossed {
+			way = -1
+		}
+		const tol = 1e-10
+		if !near(st.Slide.Vel, radiusA*st.A.Omega, tol) || !near(st.Slide.Vel, way*radiusB*st.B.Omega, tol) || !near(st.Slide.Pos, radiusA*turn.Pos, tol) || st.TurnA != turn {
+			t.Fatalf("%+v: %+v", d, st)
+		}
+		if gap := r2.Norm(r2.Sub(st.B.Pose.Origin, st.A.Pose.Origin)); !near(gap, d.Centres, tol) {
+			t.Fatalf("%+v: centres %v", d, gap)
+		}
+		arm := rigid.Motion{Pose: rigid.NewPose(1, 2, 3), Vel: r2.Vec{X: 1}, Omega: 0.7, Alpha: -0.4}
+		wantA, wantB := arm.Compose(&st.A), arm.Compose(&st.B)
+		for _, s := range []*rolling.BeltState{&st, &fromB, &fromBelt} {
+			if err := s.On(&arm); err != nil {
+				t.Fatal(err)
+			}
+			if !nearMotion(s.A, wantA, tol) || !nearMotion(s.B, wantB, tol) {
+				t.Fatalf("%+v: %+v, want %+v", d, s, st)
+			}
+		}
+		c, err := p.Coefficients(turn.Pos)
+		if got := c.Output(turn.Vel, turn.Acc); err != nil || got != st.TurnB || p.Dimensions() != d || len(p.Range()) != 1 {
+			t.Fatalf("coefficients give %+v %v, want %+v", got, err, st.TurnB)
+		}
+	}
+}
+
+// TestBeltLength: R. S. Khurmi & J. K. Gupta, Theory of Machines, crossed belt on
+// pulleys of 450 and 200 mm, 1.95 m apart: 4.975 m and 199.2°, from memory; for an open
+// belt Cauchy's formula: a convex line is as long as the integral of its support
+// function over all directions.
+func TestBeltLength(t *testing.T) {
+	crossed, err := rolling.NewBelt(rolling.BeltDimensions{RadiusA: 0.225, RadiusB: 0.1, Centres: 1.95, Crossed: true})
+	if err != nil {
+		t.Fatal(err)
+	}
+	a, b := crossed.Wrap()
+	if l := crossed.Length(); !near(l, 4.975, 5e-4) || a != b || !near(a, 199.2*rigid.Degree, 0.05*rigid.Degree) {
+		t.Errorf("length %v, wrap %v and %v", l, a, b)
+	}
+	for _, radii := range [][2]float64{{0.225, 0.1}, {0.1, 0.225}, {0.15, 0.15}, {1.8, 0.05}} {
+		open, err := rolling.NewBelt(rolling.BeltDimensions{RadiusA: radii[0], RadiusB: radii[1], Centres: 1.95})
+		if err != nil {
+			t.Fatal(err)
+		}
+		const n = 1 << 18
+		sum := 0.0
+		for i := range n {
+			phi := (float64(i) + 0.5) * rigid.Revolution / n
+			sum += max(radii[0], 1.95*math.Cos(phi)+radii[1]) * rigid.Revolution / n
+		}
+		a, b := open.Wrap()
+		if l := open.Length(); !near(l, sum, 1e-9) || !near(a+b, rigid.Revolution, 1e-15) || (a > b) != (radii[0] > radii[1]) {
+			t.Errorf("radii %v: length %v, want %v; wrap %v and %v", radii, l, sum, a, b)
+		}
+	}
+}
+
+func TestNewBeltErrors(t *testing.T) {
+	for _, row := range []struct {
+		d     rolling.BeltDimensions
+		name  string
+		cause error
+	}{
+		{rolling.BeltDimensions{Centres: 1}, "RadiusA", rigid.ErrNotPositive},
+		{rolling.BeltDimensions{RadiusA: 1, RadiusB: 1}, "Centres", rigid.ErrNotPositive},
+		{rolling.BeltDimensions{RadiusA: 1, RadiusB: 1, Centres: 2}, "Centres", rigid.ErrUnreachable},
+		{rolling.BeltDimensions{RadiusA: math.Inf(1), RadiusB: 1, Centres: 2}, "RadiusA", rigid.ErrNotFinite},
+		{rolling.BeltDimensions{TeethA: 20, TeethB: 20, Centres: 2}, "Pitch", rigid.ErrNotPositive},
+		{rolling.BeltDimensions{TeethA: 20, Pitch: 0.01, RadiusB: 0.1, Centres: 2}, "TeethB", rigid.ErrNotPositive},
+		{rolling.BeltDimensions{TeethA: 20, TeethB: -3, Pitch: 0.01, Centres: 2}, "TeethB", rigid.ErrNotPositive},
+		{rolling.BeltDimensions{TeethA: 20, TeethB: 20, Pitch: 0.01, RadiusB: 0.5, Centres: 2}, "RadiusB", rigid.ErrInput},
+		{rolling.BeltDimensions{RadiusA: 1, RadiusB: 1, Centres: 3, Mount: rigid.Placement{Angle: math.NaN()}}, "Mount.Angle", rigid.ErrNotFinite},
+	} {
+		p, err := rolling.NewBelt(row.d)
+		checkRefused(t, p == nil, err, row.name, row.cause)
+	}
+}
+
+// TestPairsRefuse: every solver of pair, rack and belt refuses numbers that are not
+// finite, results that overflow and a zero value, and leaves the state as it was.
+func TestPairsRefuse(t *testing.T) {
+	p := pair(t, rolling.PairDimensions{TeethA: 20, TeethB: 50, Centres: 0.35})
+	r, err := rolling.NewRack(rolling.RackDimensions{Radius: 0.1})
+	q, err2 := rolling.NewBelt(rolling.BeltDimensions{RadiusA: 0.1, RadiusB: 0.2, Centres: 1})
+	if err := errors.Join(err, err2); err != nil {
+		t.Fatal(err)
+	}
+	nan, inf := math.NaN(), math.Inf(1)
+	arm := rigid.Motion{Omega: 1e200}
+	for _, c := range []rigid.Coordinate{{Pos: nan}, {Pos: inf}, {Vel: nan}, {Vel: -inf}, {Acc: nan}, {Acc: inf}, {}} {
+		// the empty one goes to zero values
+		want := rigid.ErrNotFinite
+		if c == (rigid.Coordinate{}) {
+			want, p, r, q = rigid.ErrInput, &rolling.Pair{}, &rolling.Rack{}, &rolling.Belt{}
+		}
+		ps := rolling.PairState{TurnA: rigid.Coordinate{Pos: 42}}
+		rs := rolling.RackState{Turn: rigid.Coordinate{Pos: 42}}
+		bs := rolling.BeltState{TurnA: rigid.Coordinate{Pos: 42}}
+		ps0, rs0, bs0 := ps, rs, bs
+		for name, err := range map[string]error{
+			"Pair.Solve": p.Solve(&ps, c), "Pair.SolveB": p.SolveB(&ps, c),
+			"Rack.Solve": r.Solve(&rs, c), "Rack.SolveSlide": r.SolveSlide(&rs, c),
+			"Belt.Solve": q.Solve(&bs, c), "Belt.SolveB": q.SolveB(&bs, c), "Belt.SolveSlide": q.SolveSlide(&bs, c),
+		} {
+			if err != want {
+				t.Errorf("%s of %+v: %v, want %v", name, c, err, want)
+			}
+		}
+		ps.A.Pose.Origin, rs.Rack.Pose.Origin, bs.B.Pose.Origin = r2.Vec{X: 1}, r2.Vec{X: 1}, r2.Vec{X: 1}
+		ps0.A.Pose.Origin, rs0.Rack.Pose.Origin, bs0.B.Pose.Origin = r2.Vec{X: 1}, r2.Vec{X: 1}, r2.Vec{X: 1}
+		for name, err := range map[string]error{"PairState.On": ps.On(&arm), "RackState.On": rs.On(&arm), "BeltState.On": bs.On(&arm)} {
+			if err != rigid.ErrNotFinite {
+				t.Errorf("%s: %v", name, err)
+			}
+		}
+		if ps != ps0 || rs != rs0 || bs != bs0 {
+			t.Errorf("%+v: a state changed", c)
+		}
+	}
+	_, err1 := p.Coefficients(1)
+	_, err2 = r.Coefficients(1)
+	_, err3 := q.Coefficients(1)
+	if err1 != rigid.ErrInput || err2 != rigid.ErrInput || err3 != rigid.ErrInput || p.Range() != nil || r.Range() != nil || q.Range() != nil {
+		t.Error("zero values give answers")
+	}
+	if a, b := q.Wrap(); a == a || b == b || q.Length() == q.Length() {
+		t.Error("a zero Belt has a length")
+	}
+}
