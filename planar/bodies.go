@@ -15,16 +15,17 @@ const same = 1e-12
 // A builder turns a valid Design into a system.
 type builder struct {
 	*system
-	d      *Design
-	aside  aside
-	points []point
-	inBody [][]int    // of every body: its points
-	pinOf  []int      // of every point: the pin it is part of, by way of other points
-	turns  []turnRow  // equations between angles
-	used   []turnRow  // those that are independent
-	psi    []form     // of every body: its angle in free angles, exactly
-	lines  []lineForm // directions that rows have used
-	seated []int      // of a body whose origin is a pin known before: that point, else −1
+	d         *Design
+	aside     aside
+	points    []point
+	imbalance *imbalance // what order found wrong, if it did
+	inBody    [][]int    // of every body: its points
+	pinOf     []int      // of every point: the pin it is part of, by way of other points
+	turns     []turnRow  // equations between angles
+	used      []turnRow  // those that are independent
+	psi       []form     // of every body: its angle in free angles, exactly
+	lines     []lineForm // directions that rows have used
+	seated    []int      // of a body whose origin is a pin known before: that point, else −1
 }
 
 // A point of a body, in the body's axes.
@@ -33,19 +34,20 @@ type point struct {
 	at   r2.Vec
 }
 
-// build returns the system of a valid design, without what is set aside.
-func build(d *Design, a aside) (*system, error) {
+// build sorts a valid design, without what is set aside. The builder is of use even
+// after an error of balance.
+func build(d *Design, a aside) (*builder, error) {
 	b := &builder{system: &system{links: len(d.Links), drives: len(d.Drives)}, d: d, aside: a}
 	if err := b.fuse(); err != nil {
-		return nil, err
+		return b, err
 	}
 	b.hide()
 	for _, step := range []func() error{b.joints, b.solveAngles, b.order} {
 		if err := step(); err != nil {
-			return nil, err
+			return b, err
 		}
 	}
-	return b.system, nil
+	return b, nil
 }
 
 // fuse seats every link on a body. Links fixed to one another are one body, whose
@@ -192,8 +194,16 @@ func (b *builder) hide() {
 		}
 	}
 	for i, j := range b.d.Joints {
-		if _, ok := j.(SlidingPin); ok && b.aside[i] == kept {
-			add(i, slotBlock)
+		unit := b.aside[i].unit
+		switch j := j.(type) {
+		case SlidingPin:
+			if unit == kept && b.seats[j.Pin.Link].body != b.seats[j.Slot.Link].body {
+				add(i, slotBlock)
+			}
+		case Revolute:
+			if unit == lengthUnit || unit == armUnit {
+				add(i, slotBlock)
+			}
 		}
 	}
 	for i, m := range b.d.Drives {

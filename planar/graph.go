@@ -63,12 +63,12 @@ func (b *builder) center(body, at int) {
 		b.points[p].at = r2.Sub(b.points[p].at, to)
 	}
 	for i := range b.rows {
-		r := &b.rows[i]
-		if r.a == body {
-			r.pa = b.points[r.at].at
-		}
-		if r.b == body {
-			r.pb = b.points[r.bt].at
+		b.rows[i].pa, b.rows[i].pb = b.points[b.rows[i].at].at, b.points[b.rows[i].bt].at
+	}
+	for i := range b.checks {
+		r := &b.checks[i].row
+		if b.checks[i].angle == nil {
+			r.pa, r.pb = b.points[r.at].at, b.points[r.bt].at
 		}
 	}
 }

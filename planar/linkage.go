@@ -18,7 +18,7 @@ func New(d Design) (*Linkage, error) {
 	if err := d.validate(); err != nil {
 		return nil, err
 	}
-	s, err := build(&d, nil)
+	s, err := solvable(&d)
 	if err != nil {
 		return nil, err
 	}

@@ -50,17 +50,23 @@ func tidied(j Joint) Joint {
 func (b *builder) joint(pins *pins, i int, j Joint) error {
 	switch j := j.(type) {
 	case Revolute:
-		if b.aside[i] == kept {
+		switch b.aside[i].unit {
+		case kept:
 			return b.hinge(pins, j.A, j.B, i)
+		case lengthUnit, armUnit:
+			return b.stretch(pins, j, i)
+		case pinUnit:
+			r := b.along(rowX, j.A.Link.Line(j.A.X, j.A.Y, 0), j.B.Link.Line(j.B.X, j.B.Y, 0), i)
+			b.checkLater(r, "pin")
+			r.kind = rowY
+			b.checkLater(r, "pin")
 		}
 	case Prismatic:
 		return b.guide(pins, j, i)
 	case SlidingPin:
 		return b.slot(pins, j, i)
 	case GearPair:
-		if b.aside[i] == kept {
-			b.gears(j, i)
-		}
+		b.gears(j, i)
 	case RackPair:
 		return b.rack(j, i)
 	}
@@ -134,7 +140,8 @@ func (b *builder) guide(pins *pins, j Prismatic, joint int) error {
 		return b.within(miss, joint)
 	}
 	b.turn(turnRow{of: newForm(formTerm{r.b, one}, formTerm{r.a, one.negative()}), value: turn, joint: joint, drive: -1})
-	if b.aside[joint] != kept {
+	if b.aside[joint].unit == guideUnit {
+		b.checkLater(r, "guide")
 		return nil
 	}
 	pair := [2]int{min(r.a, r.b), max(r.a, r.b)}
@@ -183,15 +190,21 @@ func (b *builder) within(miss float64, joints ...int) error {
 	return b.refuse(fmt.Errorf("%w: they miss each other by %.3g m", ErrInconsistent, miss), joints...)
 }
 
-// slot pins the hidden block of a SlidingPin and guides it.
+// slot keeps a pin in a slot.
 func (b *builder) slot(pins *pins, j SlidingPin, joint int) error {
-	if b.aside[joint] != kept {
-		return nil
-	}
-	if b.seats[j.Pin.Link].body == b.seats[j.Slot.Link].body {
+	if b.aside[joint].unit != kept || b.seats[j.Pin.Link].body == b.seats[j.Slot.Link].body {
 		r := b.along(rowGuide, j.Slot, j.Pin.Link.Line(j.Pin.X, j.Pin.Y, 0), joint)
+		if r.a != r.b {
+			b.checkLater(r, "slot")
+			return nil
+		}
 		return b.within(math.Abs(cross(r.u, r2.Sub(r.pb, r.pa))), joint)
 	}
+	return b.slide(pins, j, joint)
+}
+
+// slide ties a pin to a slot by a hidden block.
+func (b *builder) slide(pins *pins, j SlidingPin, joint int) error {
 	block := b.hiddenOf(joint)
 	if err := b.hinge(pins, j.Pin, block.At(0, 0), joint); err != nil {
 		return err
@@ -219,18 +232,20 @@ func (b *builder) gears(g GearPair, joint int) {
 	arm := k.plus(one.negative())
 	a, c, m := b.seats[g.A], b.seats[g.B], b.seats[g.Arm]
 	own := c.local.Angle() - k.value*a.local.Angle() + arm.value*m.local.Angle()
-	b.turn(turnRow{
+	r := turnRow{
 		of:     newForm(formTerm{c.body, one}, formTerm{a.body, k.negative()}, formTerm{m.body, arm}),
 		value:  g.Phase - own,
 		phased: g.AsAssembled, joint: joint, drive: -1,
-	})
+	}
+	if b.aside[joint].unit != kept {
+		b.checkAngles(r)
+		return
+	}
+	b.turn(r)
 }
 
 // rack writes  u·(c − p) + R·(θpinion − θrack) = Phase, −R on the right.
 func (b *builder) rack(j RackPair, joint int) error {
-	if b.aside[joint] != kept {
-		return nil
-	}
 	r := b.along(rowRack, j.Rack, j.Pinion.Link.Line(j.Pinion.X, j.Pinion.Y, 0), joint)
 	if r.a == r.b {
 		return b.refuse(fmt.Errorf("%w: a pinion fixed to its rack", ErrReference), joint)
@@ -241,6 +256,10 @@ func (b *builder) rack(j RackPair, joint int) error {
 	}
 	own := b.seats[j.Pinion.Link].local.Angle() - b.seats[j.Rack.Link].local.Angle()
 	r.value, r.phased = j.Phase-r.rate*own, j.AsAssembled
+	if b.aside[joint].unit != kept {
+		b.checkLater(r, "rack")
+		return nil
+	}
 	b.rows = append(b.rows, r)
 	return nil
 }

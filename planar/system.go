@@ -27,7 +27,8 @@ type system struct {
 }
 
 // A hidden link is not in the Design: the block of a SlidingPin, whose origin is
-// the pin and whose x axis runs along the slot; or barrel and rod of a Reach, whose
+// the pin and whose x axis runs along the slot (also of a Revolute of which the
+// length of a link is set aside); or barrel and rod of a Reach, whose
 // origins are its points A and B and whose x axes run from A to B.
 type hidden struct {
 	part  hiddenPart
@@ -117,4 +118,6 @@ type angleCheck struct {
 	Const float64
 	mod   bool
 	joint int
+	// Const is what it is at Assemble (AsAssembled)
+	phased bool
 }

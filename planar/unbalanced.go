@@ -39,6 +39,7 @@ func (b *builder) unbalanced() error {
 			m.bodies = append(m.bodies, q.bodies[t.index]...)
 		}
 	}
+	b.imbalance = &m
 	return b.explain(&m)
 }
 
