@@ -77,8 +77,9 @@ func (l *Linkage) SolveCoupler(dst *State, coupler rigid.Coordinate, lean rigid.
 }
 
 // solveDyad solves the dyad of crank and other for a driven link, all in p. The
-// pin is r as it comes: the errors of a short crank's direction and of its rate
-// are one error, which cancels in the pin's velocity.
+// arm is r as it comes: the errors of a short crank's direction and of its rate
+// are one error, which cancels in its pin's velocity. Seen from a long driven link
+// that is so of a part of the rate only, the smaller one.
 func (l *Linkage) solveDyad(p *pose, k *drive, driven *link, side float64, other *link) (margin float64, err error) {
 	d := k.span(driven.axis)
 	var t dyad.Triangle
@@ -96,9 +97,9 @@ func (l *Linkage) solveDyad(p *pose, k *drive, driven *link, side float64, other
 		r.omega, other.omega, r.alpha, other.alpha = k.rates(&t, driven.axis, driven.omega, driven.alpha)
 	}
 	r.axis, other.axis = k.dyad.Axes(&t)
-	p.pin = t.R
+	p.arm = t.R
 	if k.long {
-		p.pin = r2.Scale(l.crank, r.axis)
+		p.arm = r2.Scale(l.crank, r.axis)
 	}
 	return margin, nil
 }
@@ -132,7 +133,7 @@ func (l *Linkage) writeBack(dst *State, p *pose) error {
 // follower's: its product with the coupler's length is d×u4, d from the crank pin
 // to the follower pivot, which keeps its digits where d is short.
 func (l *Linkage) kink(p *pose) float64 {
-	d := r2.Vec{X: l.frame - p.pin.X, Y: -p.pin.Y}
+	d := r2.Vec{X: l.frame - p.arm.X, Y: -p.arm.Y}
 	if d.X*d.X+d.Y*d.Y < l.coupler*l.coupler {
 		return r2.Cross(d, p.follower.axis) / l.coupler
 	}

@@ -44,7 +44,7 @@ func (l *Linkage) writeCell(dst *State, p *pose, in float64) error {
 	if in*0 != 0 {
 		return rigid.ErrNotFinite
 	}
-	p.pin = r2.Scale(l.crank, p.crank.axis)
+	p.arm = r2.Scale(l.crank, p.crank.axis)
 	return l.writeBack(dst, p)
 }
 
@@ -119,7 +119,7 @@ func (l *Linkage) contraryCoupler(p *pose, in rigid.Coordinate, side float64) (m
 	}
 	p.crank.axis = less(half, r2.Vec{X: cos, Y: sin})
 	p.follower.axis = less(half, r2.Vec{X: cos, Y: -sin})
-	p.pin = r2.Scale(l.crank, p.crank.axis)
+	p.arm = r2.Scale(l.crank, p.crank.axis)
 	if in.Vel != 0 || in.Acc != 0 {
 		if math.Abs(cos) < rigid.LeastMargin {
 			return 0, rigid.ErrSingular

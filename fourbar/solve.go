@@ -35,7 +35,7 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 		}
 	}
 	margin := k.dyad.Margin(&t)
-	p := pose{crank: link{u, turn.Vel, turn.Acc}, pin: r2.Scale(l.crank, u)}
+	p := pose{crank: link{u, turn.Vel, turn.Acc}, arm: r2.Scale(l.crank, u)}
 	if turn.Vel != 0 || turn.Acc != 0 {
 		if margin < rigid.LeastMargin {
 			return rigid.ErrSingular
@@ -63,7 +63,7 @@ type link struct {
 // A pose is the motion of the three moving links in the mechanism's own axes.
 type pose struct {
 	crank, coupler, follower link
-	pin                      r2.Vec // along the crank
+	arm                      r2.Vec // along the crank, for the motion of its pin
 }
 
 // direction returns the unit vector at an angle.
@@ -77,8 +77,8 @@ func direction(angle float64) r2.Vec {
 // reports false, and writes nothing, where a rate is not finite.
 func (l *Linkage) write(dst *State, p *pose) bool {
 	w, al, w2 := p.crank.omega, p.crank.alpha, p.crank.omega*p.crank.omega
-	pin := l.mounted(p.pin)
-	acc := r2.Vec{X: -al*pin.Y - w2*pin.X, Y: al*pin.X - w2*pin.Y}
+	arm := l.mounted(p.arm)
+	acc := r2.Vec{X: -al*arm.Y - w2*arm.X, Y: al*arm.X - w2*arm.Y}
 	if acc.X*0+acc.Y*0+al*0+p.coupler.alpha*0+p.follower.alpha*0 != 0 { // NaN unless all are finite
 		return false
 	}
@@ -88,9 +88,10 @@ func (l *Linkage) write(dst *State, p *pose) bool {
 	m.Omega, m.Alpha = w, al
 
 	m = &dst.Coupler
-	m.Pose.Origin.X, m.Pose.Origin.Y = l.origin.X+pin.X, l.origin.Y+pin.Y
+	m.Pose.Origin.X = l.origin.X + l.crank*dst.Crank.Pose.Axis.X
+	m.Pose.Origin.Y = l.origin.Y + l.crank*dst.Crank.Pose.Axis.Y
 	m.Pose.Axis = l.mounted(p.coupler.axis)
-	m.Vel.X, m.Vel.Y = -w*pin.Y, w*pin.X
+	m.Vel.X, m.Vel.Y = -w*arm.Y, w*arm.X
 	m.Acc = acc
 	m.Omega, m.Alpha = p.coupler.omega, p.coupler.alpha
 

@@ -66,11 +66,10 @@ func (k *RRR) Place(t *Triangle, d r2.Vec, side float64) bool {
 // place at a limit, where rounding has put C a little too far or too near.
 func (k *RRR) Flatten(t *Triangle, d r2.Vec) {
 	d2 := d.X*d.X + d.Y*d.Y
-	x := k.g
-	if d2 < k.n {
-		x = -k.g
-	}
-	k.set(t, d, d2, x, 0)
+	u := normal(d)
+	t.R = r2.Scale(math.Copysign(k.B, d2+k.m), u)
+	t.Q = r2.Scale(math.Copysign(k.C, k.m-d2), u)
+	t.X, t.F = math.Copysign(k.g, d2-k.n), 0
 }
 
 // set gives t its vectors: with u along d and h the height of B over it,
@@ -138,8 +137,14 @@ func (g *Growth) Acc(t *Triangle, w1, w2 float64) r2.Vec {
 	}
 }
 
-// Margin returns |sin| of the angle between the links.
-func (k *RRR) Margin(t *Triangle) float64 { return math.Abs(t.F) * k.ig }
+// Margin returns |sin| of the angle between the links, at most 1.
+func (k *RRR) Margin(t *Triangle) float64 {
+	m := math.Abs(t.F) * k.ig
+	if m > 1 {
+		return 1
+	}
+	return m
+}
 
 // Cos returns the cosine of the angle between the links at B.
 func (k *RRR) Cos(t *Triangle) float64 { return -t.X * k.ig }
