@@ -36,7 +36,13 @@ func (r row) side() rigid.Side {
 // table reads testdata/inversions_<name>.csv, whose rows start with n dimensions.
 func table(t *testing.T, name string, n int) []row {
 	t.Helper()
-	f, err := os.Open(filepath.Join("testdata", "inversions_"+name+".csv"))
+	return readTable(t, "inversions_"+name, n)
+}
+
+// readTable reads testdata/<name>.csv, whose rows start with n dimensions.
+func readTable(t *testing.T, name string, n int) []row {
+	t.Helper()
+	f, err := os.Open(filepath.Join("testdata", name+".csv"))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -70,8 +76,14 @@ func table(t *testing.T, name string, n int) []row {
 // how near to it they come.
 func compare(t *testing.T, name string, n int, bound float64, solve func(r row) ([]rigid.Coordinate, error)) {
 	t.Helper()
+	compareRows(t, table(t, name, n), bound, solve)
+}
+
+// compareRows is compare for the rows of any table.
+func compareRows(t *testing.T, rows []row, bound float64, solve func(r row) ([]rigid.Coordinate, error)) {
+	t.Helper()
 	var worst rigid.Coordinate
-	for i, r := range table(t, name, n) {
+	for i, r := range rows {
 		got, err := solve(r)
 		if err != nil {
 			t.Errorf("row %d: %v: %v", i, r.dims, err)
