@@ -24,8 +24,8 @@ func allFinite(x ...float64) bool {
 }
 
 func finiteMotion(m *rigid.Motion) bool {
-	p := m.At(m.Pose.Local(m.Pose.Origin))
-	return allFinite(p.Pos.X, p.Pos.Y, p.Vel.X, p.Vel.Y, p.Acc.X, p.Acc.Y, m.Pose.Axis.X, m.Pose.Axis.Y, m.Omega, m.Alpha)
+	o, u := m.Pose.Origin, m.Pose.Axis
+	return allFinite(o.X, o.Y, u.X, u.Y, m.Vel.X, m.Vel.Y, m.Acc.X, m.Acc.Y, m.Omega, m.Alpha)
 }
 
 // refused checks a constructor's errors: each one a *DimensionError.

@@ -31,10 +31,10 @@ type Track func(arc float64) (TrackPoint, error)
 //
 // The contact particle has the acceleration (1 − rκ)/r·(ds/dt)² towards the centre.
 // Where rκ = 1 the centre rests; where rκ > 1 the wheel must be a ring around the
-// track. The error of track is returned as it is.
+// track. The error of track is returned as it is; a nil track is ErrInput.
 func (w *Wheel) SolveTrack(dst *WheelState, track Track, arc rigid.Coordinate) error {
 	r := w.dim.Radius
-	if r == 0 {
+	if r == 0 || track == nil {
 		return rigid.ErrInput
 	}
 	p, err := track(arc.Pos)
@@ -77,11 +77,11 @@ func (w *Wheel) turnOn(p TrackPoint, arc float64) rigid.Coefficients {
 
 // TurnOn returns the law of the wheel's turn, in rad, for the arc along a track, in
 // m: the way back, from a given turn to the arc that SolveTrack wants, is that law's
-// inverse. The law returns the track's errors, ErrInput for a zero Wheel and
-// ErrNotFinite.
+// inverse. The law returns the track's errors, ErrInput for a zero Wheel or a nil
+// track, and ErrNotFinite.
 func (w *Wheel) TurnOn(track Track) rigid.Law {
 	return func(arc float64) (rigid.Coefficients, error) {
-		if w.dim.Radius == 0 {
+		if w.dim.Radius == 0 || track == nil {
 			return rigid.Coefficients{}, rigid.ErrInput
 		}
 		p, err := track(arc)

@@ -195,6 +195,12 @@ func TestTurnOn(t *testing.T) {
 	if err := w.SolveTrack(&st, track, rigid.Coordinate{Pos: 50}); err != rigid.ErrUnreachable || st != before {
 		t.Error(err)
 	}
+	if _, err := w.TurnOn(nil)(1); err != rigid.ErrInput {
+		t.Error(err)
+	}
+	if err := w.SolveTrack(&st, nil, rigid.Coordinate{}); err != rigid.ErrInput || st != before {
+		t.Error(err)
+	}
 	broken := func(float64) (rolling.TrackPoint, error) { return rolling.TrackPoint{Curvature: math.NaN()}, nil }
 	if _, err := w.TurnOn(broken)(1); err != rigid.ErrNotFinite {
 		t.Error(err)

@@ -87,9 +87,9 @@ func (t *Train) Design() TrainDesign { return t.design.clone() }
 
 // Solve writes the turn of every member, in rad, into dst: dst[m] is that of Member
 // m, dst[0] rests. In are the turns of the drives in the order of TrainDesign.Drives,
-// counted from a position in which all turns are 0. The results are the float64
-// nearest to the exact ones for the numbers given, however many turns they are; only
-// where drives nearly cancel each other in 1e16 turns does that end.
+// counted from a position in which all turns are 0. A result is the float64 nearest
+// to the exact one for the numbers given, however many turns they are and however
+// nearly the drives cancel each other: only a tie may go either way.
 //
 // ErrInput unless dst has one element for each member and in one for each drive;
 // ErrNotFinite where a given number is not finite or a result might overflow. On
