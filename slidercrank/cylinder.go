@@ -81,8 +81,8 @@ func (c *OscillatingCylinder) Solve(dst *CylinderState, turn rigid.Coordinate) e
 // the cylinder's pin: Right is a Turn in (0, π), Left one in (−π, 0).
 //
 // Turn.Pos is in (−π, π]; Margin is |sin| of the angle at the rod's pin between the
-// directions to the two pivots. Errors: ErrUnreachable for a length that is not
-// positive or that the arm cannot give; ErrSingular for rates where Margin is
+// directions to the two pivots. Errors: ErrUnreachable for a length that is
+// negative or that the arm cannot give; ErrSingular for rates where Margin is
 // below rigid.LeastMargin; ErrNotFinite; ErrInput for a zero OscillatingCylinder or
 // an unknown knee. An error leaves dst as it was.
 func (c *OscillatingCylinder) SolveSlide(dst *CylinderState, slide rigid.Coordinate, knee rigid.Side) error {
@@ -117,7 +117,7 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 	slack := 2 * beyond * k.size * s
 	ch, ok := root(s*s-k.least, slack)
 	sh, within := root((reach-e)*(reach+e)-s*s, slack)
-	if !(s > 0) || !ok || !within {
+	if !(s >= 0) || !ok || !within {
 		return rigid.ErrUnreachable
 	}
 	if knee == rigid.Left {

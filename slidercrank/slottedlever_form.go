@@ -165,3 +165,12 @@ func checkSlot(r, c, e float64, offset string, mount rigid.Placement) error {
 	}
 	return f.join()
 }
+
+// follow returns the line's angle a plus the whole turns that make it continuous in
+// the crank's angle, as place does.
+func (k *slotForm) follow(a, turn float64) float64 {
+	if k.across < 0 {
+		return rigid.Nearest(a, turn)
+	}
+	return rigid.Wrap(a)
+}
