@@ -31,7 +31,8 @@ type Misfit struct{ Pos, Vel, Acc float64 }
 // ErrInput for fewer than two points or lists of two lengths. ErrSingular where
 // the points determine no direction: all locals or all points in one place (within
 // 1e-150 m), or |Σ conj(x)·y| below LeastMargin of √(Σ|x|²·Σ|y|²), where it is 1
-// for a rigid body. ErrNotFinite where a number or a result is not finite.
+// for a rigid body. ErrNotFinite where a number, a result or a square on the way to it
+// is not finite.
 func Fit(locals []r2.Vec, points []Point) (Motion, Misfit, error) {
 	if len(locals) != len(points) || len(locals) < 2 {
 		return Motion{}, Misfit{}, ErrInput

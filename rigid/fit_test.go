@@ -161,6 +161,8 @@ func TestFitErrors(t *testing.T) {
 	fast[1].Vel.Y = 1e300
 	bad := at(0, 0, 1, 0)
 	bad[1].Acc.Y = nan
+	apart := at(-1, 0, 1, 0)
+	apart[0].Vel.X, apart[1].Vel.X = -1e200, 1e200
 	for _, c := range []struct {
 		why    string
 		locals []r2.Vec
@@ -180,6 +182,7 @@ func TestFitErrors(t *testing.T) {
 		{"infinite place", v(0, 0, 1, 0), at(0, 0, inf, 0), rigid.ErrNotFinite},
 		{"NaN acceleration", v(0, 0, 1, 0), bad, rigid.ErrNotFinite},
 		{"ω² overflows", v(0, 0, 1, 0), fast, rigid.ErrNotFinite},
+		{"the square of a misfit overflows", v(-1, 0, 1, 0), apart, rigid.ErrNotFinite},
 		{"differences overflow", v(0, 0, 1, 0), at(-1e308, 0, 1e308, 0), rigid.ErrNotFinite},
 	} {
 		m, miss, err := rigid.Fit(c.locals, c.points)

@@ -7,21 +7,23 @@ import "gonum.org/v1/gonum/spatial/r2"
 // unknowns, the body's angular velocity and the speed along the line, and again
 // for the accelerations.
 //
-// The known point is a. The guided one is at b, in m, and its line runs along the
-// direction of along, whose length does not matter. The origin of body is a, its x
-// axis points to b; slide is the motion of b along the line, with Pos 0 at b as
-// given. With r = b − a, R = |r|, e = r/R, u the unit vector of along, n = u⊥, v
-// and a the velocity and acceleration of the known point, the parts of
-// v + ω×r = slide.Vel·u and a + α×r − ω²r = slide.Acc·u along n and e give
+// The known point moves as a. The guided one is at b, in m, and its line runs along
+// the direction of along, whose length does not matter. The origin of body is the
+// known point, its x axis points to b; slide is the motion of b along the line, with
+// Pos 0 at b as given. With r = b − a.Pos, R = |r|, e = r/R, u the unit vector of
+// along and n = u⊥, the parts along n and e of
 //
-//	ω = −v·n/(R e·u)                  slide.Vel = v·e/(e·u)
-//	α = −(a·n − ω²R e·n)/(R e·u)      slide.Acc = (a·e − ω²R)/(e·u)
+//	a.Vel + ω×r = slide.Vel·u,  a.Acc + α×r − ω²r = slide.Acc·u
 //
-// the relative velocity and acceleration method of the textbooks in closed form.
+// are one equation each for ω, slide.Vel, α and slide.Acc:
+//
+//	ω = −a.Vel·n/(R e·u)                 slide.Vel = a.Vel·e/(e·u)
+//	α = −(a.Acc·n − ω²R e·n)/(R e·u)     slide.Acc = (a.Acc·e − ω²R)/(e·u)
+//
 // Zero Vel and Acc of a ask for the place only. |e·u| is the margin: rates asked
-// for below LeastMargin, where the line stands square to r, are ErrSingular, and
-// so are a and b in one place and a zero along, always. ErrNotFinite where a
-// number or a result is not finite.
+// for below LeastMargin, where the line stands square to r, are ErrSingular. So are
+// b at the known point and a zero along, always. ErrNotFinite where a number or a
+// result is not finite.
 func Guided(a Point, b r2.Vec, along r2.Vec) (body Motion, slide Coordinate, err error) {
 	r := r2.Sub(b, a.Pos)
 	if !finite(r.X, r.Y, a.Vel.X, a.Vel.Y, a.Acc.X, a.Acc.Y, along.X, along.Y) {

@@ -141,6 +141,10 @@ func TestPoleErrors(t *testing.T) {
 	if _, err := rigid.RelativePole(&fast, &back); err != rigid.ErrNotFinite {
 		t.Errorf("difference that overflows: %v", err)
 	}
+	up, down := rigid.Motion{Vel: r2.Vec{Y: huge}, Omega: 1}, rigid.Motion{Vel: r2.Vec{Y: -huge}}
+	if _, err := rigid.RelativePole(&up, &down); err != rigid.ErrNotFinite {
+		t.Errorf("difference of velocities that overflows: %v", err)
+	}
 	a := rigid.Motion{Vel: x, Omega: 3}
 	b := rigid.Motion{Omega: 3}
 	if _, err := rigid.RelativePole(&a, &b); err != rigid.ErrNoPole {

@@ -149,9 +149,9 @@ var both = cmp.Options{rigidtest.Lengths(tolerance), rigidtest.Angles(tolerance)
 // differ collects the paths that a comparison finds different, and those of all
 // numbers that no comparer looked at.
 type differ struct {
-	path         cmp.Path
-	off, exact   []string
-	seen, inSame int
+	path       cmp.Path
+	off, exact []string
+	seen       int
 }
 
 func (d *differ) PushStep(s cmp.PathStep) { d.path = append(d.path, s) }
