@@ -37,7 +37,7 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 		return rigid.ErrInput
 	}
 	sin, cos := trig.Sincos(turn.Pos)
-	x, y := l.crank*cos, l.crank*sin
+	x, y := l.crank*cos, float64(l.crank*sin) // y not fused with what follows: see outward
 	rod, ok := l.byCrank.Place(l.guide-y, l.side)
 	if !ok {
 		if rod, ok = l.square(l.guide - y); !ok {

@@ -3,12 +3,14 @@ package slidercrank
 import (
 	"math"
 
+	"example.com/twopoint/internal/trig"
 	"example.com/twopoint/rigid"
 )
 
 // Range returns the crank's angles that have a position: a whole turn where Rod ≥
 // Crank + |Offset|, elsewhere the one or two intervals at whose ends the rod
-// stands square to the guide. It is nil for a zero Linkage.
+// stands square to the guide, so that Solve refuses rates there. It is nil for a
+// zero Linkage.
 func (l *Linkage) Range() []rigid.Interval {
 	if l.crank == 0 {
 		return nil
@@ -18,11 +20,11 @@ func (l *Linkage) Range() []rigid.Interval {
 	case low == -math.Pi/2 && high == math.Pi/2:
 		return []rigid.Interval{{Lo: -math.Pi, Hi: math.Pi}}
 	case high == math.Pi/2:
-		return []rigid.Interval{{Lo: low, Hi: math.Pi - low}}
+		return []rigid.Interval{l.between(low, math.Pi-low)}
 	case low == -math.Pi/2:
-		return []rigid.Interval{turnFrom(math.Pi-high, math.Pi+2*high)}
+		return []rigid.Interval{l.between(math.Pi-high, rigid.Revolution+high)}
 	}
-	about0, aboutPi := rigid.Interval{Lo: low, Hi: high}, turnFrom(math.Pi-high, high-low)
+	about0, aboutPi := l.between(low, high), l.between(math.Pi-high, math.Pi-low)
 	if aboutPi.Lo < about0.Lo {
 		return []rigid.Interval{aboutPi, about0}
 	}
@@ -39,13 +41,28 @@ func (l *Linkage) end(y, quarter float64) float64 {
 	return math.Atan2(y, x)
 }
 
-// turnFrom returns the interval of the given length from lo, or from the same
-// angle a turn back where lo is not below π.
-func turnFrom(lo, length float64) rigid.Interval {
+// between returns the interval from lo to hi, or from the same angle a turn back
+// where lo is not below π. Where an end was rounded into the range it is put back
+// out, so that it is singular there, as it should be.
+func (l *Linkage) between(lo, hi float64) rigid.Interval {
 	if lo >= math.Pi {
-		lo -= rigid.Revolution
+		lo, hi = lo-rigid.Revolution, hi-rigid.Revolution
 	}
-	return rigid.Interval{Lo: lo, Hi: lo + length}
+	return rigid.Interval{Lo: max(l.outward(lo, -1), -math.Pi), Hi: l.outward(hi, 1)}
+}
+
+// outward returns the end moved on by as little as makes the rod square to the guide
+// there, its pin no longer within reach: as Solve reckons it, product and difference
+// both rounded on every processor.
+func (l *Linkage) outward(end, sign float64) float64 {
+	step := sign * 0x1p-53 * l.size / l.crank
+	for range 8 {
+		if sin, _ := trig.Sincos(end); math.Abs(l.guide-float64(l.crank*sin)) >= l.given.Rod {
+			break
+		}
+		end, step = end+step, 2*step
+	}
+	return end
 }
 
 // PressureAngles returns the least and the greatest angle in rad that the rod

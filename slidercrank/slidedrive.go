@@ -59,30 +59,36 @@ func (l *Linkage) triangle(t *dyad.Triangle, pos float64, knee rigid.Side) bool 
 	if s-l.outer > slack || l.folds && l.inner-s > slack || l.full && -pos*l.side > slack {
 		return false
 	}
-	stretched := s >= l.outer
-	if stretched || l.folds && s <= l.inner || l.full && pos*l.side < 0 {
-		l.flat(t, math.Copysign(1, pos), side, stretched)
+	d, ahead := r2.Vec{X: pos, Y: l.guide}, pos
+	if l.full {
+		ahead = l.side
+	}
+	switch {
+	case s >= l.outer:
+		d.X = math.Copysign(l.outer, ahead)
+	case l.folds && s <= l.inner || pos*ahead < 0:
+		d.X = math.Copysign(l.inner, ahead)
+	case l.bySlide.Place(t, d, side):
 		return true
 	}
-	return l.bySlide.Place(t, r2.Vec{X: pos, Y: l.guide}, side)
+	l.flat(t, d, side)
+	return true
 }
 
-// flat places crank and rod in one line, at a dead centre: the crank along the
-// vector d to the slider pin and the rod on from it, or one folded on the other.
-// Folded with equal lengths in line, d is 0 and they stand square to the guide, as
-// they do for the slightest slide.
-func (l *Linkage) flat(t *dyad.Triangle, ahead, side float64, stretched bool) {
-	r, rod, s := l.given.Crank, l.given.Rod, l.outer
-	q := -rod
-	if !stretched {
-		s, r, q = l.inner, math.Copysign(r, r-rod), math.Copysign(rod, r-rod)
+// flat places crank and rod in one line, at a dead centre, for the slider pin at d.
+// Where it is in the crank pivot, which takes equal lengths, every line will do:
+// they stand square to d, as they do for the shortest d.
+func (l *Linkage) flat(t *dyad.Triangle, d r2.Vec, side float64) {
+	if math.Abs(d.X)+math.Abs(d.Y) > equal*l.size {
+		l.bySlide.Flatten(t, d)
+		return
 	}
-	d := r2.Vec{X: ahead * s, Y: l.guide}
-	if s == 0 && l.guide == 0 {
-		d, r, q = r2.Vec{Y: side * ahead}, math.Abs(r), math.Abs(q)
+	if d.X == 0 && d.Y == 0 {
+		d.X = l.side
 	}
-	u := r2.Unit(d)
-	t.R, t.Q, t.F = r2.Scale(r, u), r2.Scale(q, u), 0
+	u := r2.Scale(side, r2.Unit(d))
+	u.X, u.Y = -u.Y, u.X
+	t.R, t.Q, t.F = r2.Scale(l.given.Crank, u), r2.Scale(l.given.Rod, u), 0
 }
 
 // branch returns the branch of a pose whose rod goes xi along the guide.

@@ -103,5 +103,5 @@ def write(name, place, drive, outputs, rows):
 
 if __name__ == "__main__":
     rng.seed("twopoint slidercrank")
-    write("crank", by_crank, "turn", ["rod", "slide"], cranks(700))
-    write("slide", by_slide, "slide", ["turn", "rod"], slides(700))
+    write("crank", by_crank, "turn", ["rod", "slide"], cranks(400))
+    write("slide", by_slide, "slide", ["turn", "rod"], slides(400))
