@@ -115,8 +115,8 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 	}
 	s, reach, e := slide.Pos, k.r+k.c, math.Abs(k.e)
 	slack := 2 * beyond * k.size * s
-	ch, ok := root(s*s-k.least, slack)
-	sh, within := root((reach-e)*(reach+e)-s*s, slack)
+	ch, ok := root(s*s-k.least, equal*(s*s+math.Abs(k.least)), slack)
+	sh, within := root((reach-e)*(reach+e)-s*s, equal*(reach-e)*(reach+e), slack)
 	if !(s >= 0) || !ok || !within {
 		return rigid.ErrUnreachable
 	}
@@ -160,10 +160,10 @@ func (k *slotForm) swingBySlide(m *slotMotion, sin float64) {
 	m.swing.Acc = first*m.turn.Acc + second*w*w + k.e*(m.slide.Acc-2*s*v*v*i)*i
 }
 
-// root returns the square root of a square that may be a rounding, slack, below
-// zero, and whether it is not more.
-func root(square, slack float64) (float64, bool) {
-	if square > 0 {
+// root returns the square root of a square, 0 where it is no more than the rounding
+// floor, and whether it is not below zero by more than slack.
+func root(square, floor, slack float64) (float64, bool) {
+	if square > floor {
 		return math.Sqrt(square), true
 	}
 	return 0, square >= -slack
@@ -191,8 +191,8 @@ func (c *OscillatingCylinder) Range() []rigid.Interval { return c.form.turns() }
 // for the ends of the stroke.
 func (c *OscillatingCylinder) Lengths() rigid.Interval {
 	k := &c.form
-	lo, _ := root(k.least, math.Inf(1))
-	hi, _ := root((k.r+k.c-k.e)*(k.r+k.c+k.e), 0)
+	lo, _ := root(k.least, 0, 0)
+	hi, _ := root((k.r+k.c-k.e)*(k.r+k.c+k.e), 0, 0)
 	return rigid.Interval{Lo: lo, Hi: hi}
 }
 

@@ -57,7 +57,9 @@ func (q *QuickReturn) reach(a r2.Vec) (dyad.Rod, bool) {
 	if over := math.Abs(eta) - q.byArm.L; over > 0 && over <= beyond*q.size {
 		eta = math.Copysign(q.byArm.L, eta)
 	}
-	return q.byArm.Place(eta, q.side)
+	t, ok := q.byArm.Place(eta, q.side)
+	t.Xi = settle(t.Xi, q.byArm.L, math.Abs(q.foot.Y)+math.Abs(a.Y))
+	return t, ok
 }
 
 // finite returns ErrNotFinite if a rate overflows.
@@ -149,6 +151,7 @@ func (q *QuickReturn) pull(r *ramMotion, travel rigid.Coordinate, elbow rigid.Si
 	rates := v != 0 || a != 0
 	if q.byArm.L == 0 {
 		y, ok := leg(q.arm, x, q.size)
+		y = settle(y, q.arm, math.Abs(travel.Pos)+math.Abs(q.foot.X))
 		if !ok {
 			return rigid.Coordinate{}, rigid.ErrUnreachable
 		}
@@ -176,12 +179,12 @@ func (q *QuickReturn) pull(r *ramMotion, travel rigid.Coordinate, elbow rigid.Si
 }
 
 // triangle places arm and rod between the lever pivot and the ram pin, d apart,
-// flat where d is beyond their reach by a rounding.
+// flat where d is a rounding from the limits of their reach or beyond.
 func (q *QuickReturn) triangle(t *dyad.Triangle, d r2.Vec, side float64) bool {
-	if q.byRam.Place(t, d, side) {
+	l, b, c := math.Hypot(d.X, d.Y), q.byRam.B, q.byRam.C
+	if min(math.Abs(l-(b+c)), math.Abs(l-math.Abs(b-c))) > equal*q.size && q.byRam.Place(t, d, side) {
 		return true
 	}
-	l := math.Hypot(d.X, d.Y)
 	if l == 0 || q.byRam.Gap(l) > beyond*q.size {
 		return false
 	}

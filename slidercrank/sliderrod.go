@@ -137,6 +137,7 @@ func (s *SliderRod) lean(slide rigid.Coordinate, knee rigid.Side, u r2.Vec, sign
 	k := sign * s.sin
 	eta := k * slide.Pos
 	xi, ok := leg(s.l, eta, s.l)
+	xi = settle(xi, s.l, s.l)
 	if !ok {
 		return axis, turn, 0, rigid.ErrUnreachable
 	}

@@ -31,6 +31,7 @@ type slotForm struct {
 	rc4        float64 // 4rc
 	difference float64 // (r − c)(r + c)
 	slack      float64 // of σ², for positions that are a rounding beyond the limit
+	floor      float64 // of σ², below which it is the rounding of a crank at its limit
 	size       float64 // the largest length
 	mount      rigid.Pose
 	pivot      r2.Vec // of the line, in the frame
@@ -44,11 +45,15 @@ func newSlotForm(r, c, e float64, mount rigid.Placement) slotForm {
 		long, short, across = r, c, -c
 	}
 	gap, size := long-short, max(long, math.Abs(e))
-	m := mount.Pose()
+	m, least := mount.Pose(), (gap-math.Abs(e))*(gap+math.Abs(e))
+	floor := 0.0
+	if least < 0 { // at the limit 4rc cos²(φ/2) = −least, and dσ²/dφ = −2rc sin φ
+		floor = equal * (-least + 2*math.Sqrt(-least*r*c))
+	}
 	return slotForm{
 		r: r, c: c, e: e,
 		across: across, twice: 2 * short, size: size,
-		gap: gap, gap2: gap * gap, least: (gap - math.Abs(e)) * (gap + math.Abs(e)),
+		gap: gap, gap2: gap * gap, least: least, floor: floor,
 		rc: r * c, perCrank: 1 / r, r2: r * r, rc4: 4 * r * c, difference: (r - c) * (r + c),
 		slack: 2 * beyond * size * math.Abs(e),
 		mount: m,
@@ -89,7 +94,7 @@ func (k *slotForm) place(m *slotMotion, turn rigid.Coordinate, sh, ch, d2, s2 fl
 		return rigid.ErrNotFinite
 	}
 	by := s2
-	if !(s2 > 0) {
+	if !(s2 > k.floor) {
 		if !(s2 >= -k.slack) || d2 == 0 {
 			return k.nowhere()
 		}

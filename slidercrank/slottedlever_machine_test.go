@@ -46,6 +46,7 @@ func makers(rng *rand.Rand) map[string]maker {
 		length = 0
 	}
 	return map[string]maker{
+		"press":    pressMaker(slidercrank.Dimensions{Crank: r, Rod: c, Offset: e, Branch: branch}),
 		"lever":    leverMaker(slidercrank.LeverDimensions{Crank: r, Centre: c, Slot: e}),
 		"cylinder": cylinderMaker(slidercrank.CylinderDimensions{Crank: r, Centre: c, Offset: e}),
 		"yoke":     yokeMaker(slidercrank.YokeDimensions{Crank: r, Tilt: tilt}),

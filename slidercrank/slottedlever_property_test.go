@@ -42,7 +42,7 @@ func each(t *testing.T, seed uint64, f func(t *testing.T, make maker, m machine,
 			}
 		}
 	}
-	for _, name := range []string{"lever", "cylinder", "yoke", "rod", "quick return"} {
+	for _, name := range []string{"press", "lever", "cylinder", "yoke", "rod", "quick return"} {
 		if tried[name] < rounds()/2 {
 			t.Errorf("%s: only %d machines tried", name, tried[name])
 		}
@@ -316,10 +316,20 @@ func TestInversionsReturnedPositions(t *testing.T) {
 						t.Errorf("beyond the range at %v: %v", out, err)
 					}
 				}
+				for _, end := range []float64{over.Lo, over.Hi} {
+					if _, err := m.solve(rigid.Coordinate{Pos: end, Vel: 1}); err != rigid.ErrSingular {
+						t.Errorf("rates at the end of the range, %v: %v", end, err)
+					}
+				}
 			}
 		}
 		for _, x := range m.dead {
 			turns = append(turns, x.In)
+			got, err := m.back(rigid.Coordinate{Pos: x.In, Vel: 1})
+			// of a ram the rounding of its travel may leave a margin, a very small one
+			if err != rigid.ErrSingular && (len(got) == 0 || len(got[0].links) != 5 || got[0].margin > 1e-5) {
+				t.Errorf("the way back with rates from the dead centre %+v: %v", x, err)
+			}
 		}
 		for _, at := range turns {
 			s, err := m.solve(rigid.Coordinate{Pos: at})

@@ -55,6 +55,7 @@ func (k *slotForm) solveSwing(m *slotMotion, swing rigid.Coordinate, knee rigid.
 	sin, cos := math.Sincos(swing.Pos)
 	h := k.e + k.c*sin
 	xi, ok := leg(k.r, h, k.size)
+	xi = settle(xi, k.r, math.Abs(k.e)+math.Abs(k.c*sin))
 	if knee == rigid.Left {
 		xi = -xi
 	}
@@ -97,6 +98,16 @@ func leg(hypotenuse, one, size float64) (float64, bool) {
 		return 0, true
 	}
 	return 0, false
+}
+
+// settle returns the leg xi of a triangle, or 0 where it is no more than what is
+// left of the rounding of a position at the limit: where the other leg is a sum
+// of terms of the given size, so that ξ² is off by 2·hypotenuse·ε·size.
+func settle(xi, hypotenuse, size float64) float64 {
+	if xi*xi <= 2*hypotenuse*equal*size {
+		return 0
+	}
+	return xi
 }
 
 // turned returns v turned by the angle of the unit vector u.

@@ -117,6 +117,7 @@ func (y *ScotchYoke) SolveSlide(dst *YokeState, slide rigid.Coordinate, knee rig
 	}
 	h := slide.Pos * y.cos // of the slot from the crank pivot
 	xi, ok := leg(y.r, h, y.r)
+	xi = settle(xi, y.r, y.r)
 	if !ok {
 		return rigid.ErrUnreachable
 	}
