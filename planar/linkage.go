@@ -22,7 +22,7 @@ func New(d Design) (*Linkage, error) {
 	if err != nil {
 		return nil, err
 	}
-	p, err := compile(s)
+	p, err := compile(s, d.Links)
 	if err != nil {
 		return nil, err
 	}

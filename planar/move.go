@@ -1,0 +1,294 @@
+package planar
+
+import (
+	"math"
+
+	"example.com/twopoint/rigid"
+)
+
+// A Move is cut into steps of at most these, and may take so many of them, each
+// halved so often.
+const (
+	longestTurn  = 0.25 // rad
+	longestSlide = 0.25 // of the largest length
+	mostSteps    = 256
+	mostHalvings = 12
+)
+
+// Move moves the drives to the places in, one for each drive, with the velocities
+// and accelerations given there. Inputs are literal: 0 and 2π differ by a turn, so
+// a caller with a wrapped angle passes rigid.Nearest(angle, last).
+//
+// The linkage goes along the straight path from the inputs before to these, and
+// stays in its assembly mode: it never jumps. No velocity or acceleration asks for
+// the place alone, with all rates zero; that is answered at a limit of a drive too.
+//
+// Errors leave the State as it was, and Stop tells more. They wrap
+// rigid.ErrUnreachable where a group can't follow, at the place given or on the
+// way; rigid.ErrSingular where the rates are not determined, or two motions part on
+// the way; ErrInconsistent where a redundant constraint is broken. They are
+// ErrTooFar for a path of more than 256 steps, of 0.25 rad or a quarter of the
+// largest length each, or where a step would have to be halved more than 12 times;
+// rigid.ErrInput for a wrong number of inputs; rigid.ErrNotFinite.
+//
+// Move doesn't allocate, even when it fails.
+func (s *State) Move(in ...rigid.Coordinate) error {
+	if s.l == nil || len(in) != len(s.to) {
+		return rigid.ErrInput
+	}
+	p := s.l.program
+	finite, moving, steps := 0.0, false, 1.0
+	for i := range in {
+		c := &in[i]
+		finite += c.Pos*0 + c.Vel*0 + c.Acc*0
+		moving = moving || c.Vel != 0 || c.Acc != 0
+		steps = max(steps, math.Abs(c.Pos-s.now.in[i].Pos)*p.perStep[i])
+		s.to[i], s.next.in[i] = *c, *c
+	}
+	s.stop = stop{}
+	if finite != 0 { // NaN
+		return rigid.ErrNotFinite
+	}
+	if steps > mostSteps {
+		s.stop = stop{err: ErrTooFar, op: -1}
+		return ErrTooFar
+	}
+	if steps == 1 && len(p.newtons) == 0 {
+		st, op := p.solve(s.now, s.next, moving)
+		if st == solved {
+			return s.accept(s.next)
+		}
+		if st == unreachable || st == singular {
+			return s.fail(op, st, 0, 1, s.next)
+		}
+	}
+	return s.walk(int(math.Ceil(steps)), moving)
+}
+
+// solve runs the ops: places, and rates if moving.
+func (p *program) solve(was, to *scene, moving bool) (status, int) {
+	st := solved
+	for i, o := range p.ops {
+		switch o.place(was, to) {
+		case solved:
+		case doubtful:
+			return doubtful, i
+		case unreachable:
+			return unreachable, i
+		case singular:
+			return singular, i
+		case tooLong:
+			return tooLong, i
+		}
+		if moving && !o.rates(to) {
+			return singular, i
+		}
+	}
+	if !moving {
+		to.rest()
+	}
+	return st, 0
+}
+
+// accept makes a scene the State's place, if the redundant constraints hold there.
+func (s *State) accept(to *scene) error {
+	if i := s.broken(to); i >= 0 {
+		s.stop = stop{err: s.l.program.breach(i), op: -1, gap: math.Abs(s.l.program.checks[i].residual(to)), done: 1, blocked: 1}
+		return s.stop.err
+	}
+	if to == s.next {
+		s.now, s.next = s.next, s.now
+	} else {
+		s.now, s.spare = s.spare, s.now
+	}
+	return nil
+}
+
+// A walk goes along the path of a Move in steps.
+type walk struct {
+	*State
+	from, to *scene
+	t        float64 // how far along the path from is
+	legs     [mostHalvings + 2]leg
+	top      int
+	suspect  suspect
+}
+
+// A leg is a step that lies ahead: its end, and how often it has been halved.
+type leg struct {
+	t     float64
+	depth int
+}
+
+// A suspect is the condition for a dyad to close that had the walk cut a step, what
+// it was expected to be there, and by how much that was wrong.
+type suspect struct {
+	op, room  int
+	predicted float64
+	off       float64
+	size      float64 // of the motion of the drives in the step
+	pending   bool
+}
+
+// walk moves the State to s.to in n equal steps, or more.
+func (s *State) walk(n int, moving bool) error {
+	w := walk{State: s, from: s.spare, to: s.next}
+	w.from.set(s.now)
+	w.suspect.op = -1
+	steps := 0
+	for part := 1; part <= n; part++ {
+		w.legs[0], w.top = leg{t: float64(part) / float64(n)}, 0
+		for w.top >= 0 {
+			l := &w.legs[w.top]
+			st, op, cut := w.step(l.t)
+			switch st {
+			case solved:
+				if steps++; steps > mostSteps {
+					return s.fail(op, tooLong, w.t, l.t, w.to)
+				}
+				w.t = l.t
+				w.from, w.to = w.to, w.from
+				w.top--
+			case tooLong:
+				if l.depth == mostHalvings {
+					return s.fail(op, tooLong, w.t, l.t, w.to)
+				}
+				l.depth++
+				w.top++
+				w.legs[w.top] = leg{w.t + cut*(l.t-w.t), l.depth}
+			default:
+				return s.fail(op, st, w.t, l.t, w.to)
+			}
+		}
+	}
+	copy(w.from.in, s.to)
+	if !moving {
+		w.from.rest()
+		return s.accept(w.from)
+	}
+	if op := s.l.program.rate(w.from); op < len(s.l.program.ops) {
+		return s.fail(op, singular, 1, 1, w.from)
+	}
+	return s.accept(w.from)
+}
+
+// rate solves all rates, and returns the first op whose rates are not determined.
+func (p *program) rate(sc *scene) int {
+	first := len(p.ops)
+	for i, o := range p.ops {
+		if !o.rates(sc) {
+			first = min(first, i)
+		}
+	}
+	return first
+}
+
+// step tries to go to the place t of the path: solved, or tooLong with the part of
+// the step at which to cut it.
+func (w *walk) step(t float64) (st status, op int, cut float64) {
+	p := w.l.program
+	size := 0.0
+	for i := range w.to.in {
+		a, b := w.now.in[i].Pos, w.State.to[i].Pos
+		pos := a + t*(b-a)
+		if t == 1 {
+			pos = b
+		}
+		d := (t - w.t) * (b - a)
+		size = math.Max(size, math.Abs(d)*p.perStep[i]*longestTurn)
+		w.to.in[i] = rigid.Coordinate{Pos: pos, Vel: d}
+		w.from.in[i].Vel, w.from.in[i].Acc = d, 0
+	}
+	rated := len(p.ops)
+	if len(p.newtons) > 0 {
+		w.from.rest()
+		rated = p.rate(w.from)
+	}
+	if st, op = w.place(); st != solved {
+		return st, op, 0.5
+	}
+	if w.suspect.pending {
+		if !w.judge() {
+			return singular, w.suspect.op, 0
+		}
+	}
+	if len(w.doubt) == 0 && len(p.newtons) == 0 {
+		return solved, 0, 0
+	}
+	if len(p.newtons) == 0 {
+		w.from.rest()
+		rated = p.rate(w.from)
+	}
+	w.to.rest()
+	rated = min(rated, p.rate(w.to))
+	if op, cut, ok := w.crossed(size, rated); ok {
+		return tooLong, op, cut
+	}
+	for i, o := range p.ops {
+		if g, ok := o.(*group); ok && rated == len(p.ops) && !w.to.desks[g.at].agrees(&w.from.desks[g.at]) {
+			return tooLong, i, 0.5
+		}
+	}
+	return solved, 0, 0
+}
+
+// place solves the place of to, and gathers the ops that may have crossed a gap.
+func (w *walk) place() (status, int) {
+	w.doubt = w.doubt[:0]
+	for i, o := range w.l.program.ops {
+		switch st := o.place(w.from, w.to); st {
+		case solved:
+		case doubtful:
+			w.doubt = append(w.doubt, i)
+		default:
+			return st, i
+		}
+	}
+	return solved, 0
+}
+
+// crossed looks for a gap in the step, by the cubic through both ends of each
+// condition for a dyad to close. It may be off by
+//
+//	h⁴/384 × the fourth derivative
+//
+// taken as four times the condition's size for h in rad, and by what it was off at
+// the last trial.
+func (w *walk) crossed(h float64, rated int) (op int, cut float64, ok bool) {
+	for _, i := range w.doubt {
+		if i > rated {
+			return i, 0.5, true // no path rates here: halve until the guard is content
+		}
+		o := w.l.program.ops[i].(crosser)
+		a, n := o.rooms(w.from)
+		b, _ := o.rooms(w.to)
+		for k := range n {
+			at, value, dips := dip(a[k], b[k])
+			if !dips {
+				continue
+			}
+			off := h * h * h * h / 96 * a[k].size
+			if w.suspect.op == i && w.suspect.room == k {
+				off = math.Max(off, 4*w.suspect.off)
+			}
+			if value > off {
+				continue
+			}
+			w.suspect = suspect{op: i, room: k, predicted: value, off: w.suspect.off, size: a[k].size, pending: true}
+			return i, min(max(at, 1./16), 15./16), true
+		}
+	}
+	return 0, 0, false
+}
+
+// judge compares the condition that had the step cut with what it was expected to
+// be, and reports false where two motions part.
+func (w *walk) judge() bool {
+	const flat = 1e-7
+	s := &w.suspect
+	s.pending = false
+	o := w.l.program.ops[s.op].(crosser)
+	r, _ := o.rooms(w.to)
+	s.off = math.Abs(r[s.room].value - s.predicted)
+	return o.margin(w.to) > flat
+}

@@ -1,0 +1,215 @@
+package planar
+
+import (
+	"errors"
+	"math"
+	"slices"
+
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+// A newton solves a unit that no closed form covers: a group of higher class, or
+// links of known angles that slide on one another in a ring.
+//
+// Its unknowns are absolute angles, and slides along a spanning tree: every body
+// hangs on the one before by a pin or by a guide, so that its place is a sum of
+// vectors fixed in bodies, and only the joints that close loops leave equations.
+// Angles are held as unit vectors, which a correction turns without trigonometry.
+//
+// Its workspace is a slice of size() float64s that belongs to one scene. What place
+// finds beyond poses is kept there: unit vectors, slides, slopes and their factors.
+type newton struct {
+	n, free, slides int     // unknowns: free angles, then slides
+	length          float64 // of the group: slides are unknowns in units of it
+	psi             []int   // of its free angles, indices into system.free
+	whole           []bool  // of its free angles: whether the angle itself is needed, not its direction alone
+	members         []member
+	tree            []limb
+	loops           []loop
+}
+
+// A member is a body of the group's equations.
+type member struct {
+	body  int
+	own   []term // free angles of the group, by their place in newton.psi
+	rest  angle  // what else its angle is made of, its psi those of earlier steps
+	fixed bool   // rest is a constant
+	u     r2.Vec // the unit vector at rest, if fixed
+	hangs bool   // its place is found by the group
+}
+
+// plain reports whether the body turns with one free angle, or against it.
+func (m *member) plain() bool { return len(m.own) == 1 && math.Abs(m.own[0].Coef) == 1 }
+
+// A limb hangs a member on a base that is placed before it:
+//
+//	origin of member = origin of base + R_base·pBase − R_member·pMember
+//
+// Where slide is not −1, one of the two points lies that far along u, on the line
+// of the base or, if back, of the member. A limb without a base (−1) puts its
+// member's origin at two slides along the frame's axes.
+type limb struct {
+	base, member   int
+	pBase, pMember r2.Vec
+	u              r2.Vec
+	slide          int
+	back           bool
+}
+
+// A loop is a joint that is left over by the tree.
+type loop struct {
+	kind   rowKind // rowX stands for both rows of a pin
+	a, b   int
+	pa, pb r2.Vec
+	u      r2.Vec
+	value  float64
+	drive  int
+	rate   float64
+	phase  int // index of the joint whose phase is read at Assemble, or −1
+}
+
+// largestGroup is the number of unknowns up to which the dense factors of a group
+// are of use.
+const largestGroup = 128
+
+// newNewton prepares the solution of a unit, or says why it can't: too large a
+// group. The rows' points and the angles are in the axes of scene.m.
+func newNewton(s *system, b *block) (*newton, error) {
+	n := &newton{}
+	placed := map[int]bool{}
+	for _, k := range b.unknowns {
+		if k >= s.psi(0) {
+			n.psi = append(n.psi, k-s.psi(0))
+		} else {
+			placed[k/2+1] = true
+		}
+	}
+	n.free = len(n.psi)
+	n.whole = make([]bool, n.free)
+	for _, i := range b.rows {
+		r := &s.rows[i]
+		n.member(s, r.a, placed)
+		n.member(s, r.b, placed)
+		n.length = math.Max(n.length, math.Max(r2.Norm(r.pa), math.Max(r2.Norm(r.pb), math.Abs(r.rate))))
+	}
+	if n.length == 0 {
+		n.length = s.length
+	}
+	n.span(s, b.rows)
+	n.n = n.free + n.slides
+	rows := 0
+	for i := range n.loops {
+		rows++
+		if n.loops[i].kind == rowX {
+			rows++
+		}
+		if n.loops[i].kind == rowRack {
+			n.count(n.loops[i].a)
+			n.count(n.loops[i].b)
+		}
+	}
+	for i := range n.members {
+		if m := &n.members[i]; len(m.own) > 0 && !m.plain() {
+			n.count(i)
+		}
+	}
+	if rows != n.n {
+		return nil, errors.New("twopoint: a group of higher class whose equations do not match its unknowns")
+	}
+	if n.n > largestGroup {
+		return nil, errors.New("twopoint: a group of higher class with more than 128 angles and slides")
+	}
+	return n, nil
+}
+
+// count notes that a member's angle is needed over whole turns.
+func (n *newton) count(i int) {
+	for _, t := range n.members[i].own {
+		n.whole[t.Index] = true
+	}
+}
+
+// member returns the place of a body in members, entered if it is new.
+func (n *newton) member(s *system, body int, placed map[int]bool) int {
+	if i := slices.IndexFunc(n.members, func(m member) bool { return m.body == body }); i >= 0 {
+		return i
+	}
+	form := s.angles[body]
+	m := member{body: body, hangs: placed[body], rest: form, u: r2.Vec{X: math.Cos(form.Const), Y: math.Sin(form.Const)}}
+	m.rest.psi = nil
+	for _, t := range form.psi {
+		if k := slices.Index(n.psi, t.Index); k >= 0 {
+			m.own = append(m.own, term{k, t.Coef})
+		} else {
+			m.rest.psi = append(m.rest.psi, t)
+		}
+	}
+	m.fixed = len(m.rest.psi)+len(m.rest.in)+len(m.rest.phase) == 0
+	n.members = append(n.members, m)
+	return len(n.members) - 1
+}
+
+// span grows the tree by pins, then by guides, and leaves the other joints as
+// loops. A body that neither reaches floats: its place is two slides.
+func (n *newton) span(s *system, rows []int) {
+	hung := make([]bool, len(n.members))
+	for i := range n.members {
+		hung[i] = !n.members[i].hangs
+	}
+	used := make([]bool, len(rows))
+	grow := func(kind rowKind) bool {
+		for k, i := range rows {
+			r := &s.rows[i]
+			a, b := n.member(s, r.a, nil), n.member(s, r.b, nil)
+			if used[k] || r.kind != kind || hung[a] == hung[b] {
+				continue
+			}
+			used[k] = true
+			n.hang(r, a, b, hung[b])
+			hung[a], hung[b] = true, true
+			return true
+		}
+		return false
+	}
+	for {
+		if grow(rowX) || grow(rowGuide) {
+			continue
+		}
+		i := slices.Index(hung, false)
+		if i < 0 {
+			break
+		}
+		hung[i] = true
+		n.tree = append(n.tree, limb{base: -1, member: i, slide: n.slide(2)})
+	}
+	for k, i := range rows {
+		r := &s.rows[i]
+		if used[k] || r.kind == rowY {
+			continue
+		}
+		l := loop{kind: r.kind, a: n.member(s, r.a, nil), b: n.member(s, r.b, nil), pa: r.pa, pb: r.pb, u: r.u, value: r.value, drive: r.drive, rate: r.rate, phase: -1}
+		if r.phased {
+			l.phase = r.joint
+		}
+		n.loops = append(n.loops, l)
+	}
+}
+
+// slide enters new unknown slides, and returns the first.
+func (n *newton) slide(more int) int {
+	n.slides += more
+	return n.slides - more
+}
+
+// hang enters a limb: b on a, or a on b if back. A guide's line is fixed in a.
+func (n *newton) hang(r *row, a, b int, back bool) {
+	l := limb{base: a, member: b, pBase: r.pa, pMember: r.pb, slide: -1, back: back}
+	if r.kind == rowGuide {
+		l.slide, l.u = n.slide(1), r.u
+		l.pBase = r2.Add(r.pa, r2.Scale(r.value, r2.Vec{X: -r.u.Y, Y: r.u.X}))
+	}
+	if back {
+		l.base, l.member, l.pBase, l.pMember = b, a, l.pMember, l.pBase
+	}
+	n.tree = append(n.tree, l)
+}

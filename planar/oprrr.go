@@ -1,0 +1,119 @@
+package planar
+
+import (
+	"example.com/twopoint/internal/dyad"
+	"example.com/twopoint/rigid"
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+// An rrr solves two links between pins on bodies that are known.
+type rrr struct {
+	k        dyad.RRR
+	i, tri   int    // its number among the dyads, and among the RRR ones
+	a, c     spot   // the outer pins on the known bodies
+	one, two spot   // the links, and the outer pins in them
+	u1, u2   r2.Vec // what turns the links' vectors AB, CB into their axes
+	most     float64
+	limit    float64 // m beyond a limit that counts as the limit
+	cell     *cell   // of a parallelogram cell
+	seen     []int   // links that a guess tells of
+}
+
+func newRRR(a, c, one, two spot, ab, cb r2.Vec) *rrr {
+	b1, b2 := r2.Norm(ab), r2.Norm(cb)
+	o := &rrr{k: dyad.NewRRR(b1, b2), a: a, c: c, one: one, two: two}
+	o.u1 = r2.Vec{X: ab.X / b1, Y: -ab.Y / b1}
+	o.u2 = r2.Vec{X: cb.X / b2, Y: -cb.Y / b2}
+	o.most, _ = o.k.Reach()
+	return o
+}
+
+func (o *rrr) place(was, to *scene) status {
+	a, c := to.place(&o.a), to.place(&o.c)
+	d := r2.Vec{X: c.X - a.X, Y: c.Y - a.Y}
+	t, g := &to.tri[o.tri], &to.guard[o.i]
+	st := solved
+	side := to.branch[o.i]
+	if side > left {
+		g.d = d
+		o.cell.place(to, t, side, a, c)
+	} else {
+		g.d, g.room = d, o.k.Room(d.X*d.X+d.Y*d.Y)
+		if !o.k.Place(t, d, float64(side)) {
+			if st = o.flat(t, d); st != solved {
+				return st
+			}
+		}
+		if !g.clear(&was.guard[o.i], o.most) {
+			st = doubtful
+		}
+	}
+	ab, cb := o.k.Axes(t)
+	to.m[o.one.body].Pose.Axis = turned(ab, o.u1)
+	to.m[o.two.body].Pose.Axis = turned(cb, o.u2)
+	to.hang(&o.one, a)
+	to.hang(&o.two, c)
+	if !to.count(was, o.one.body) || !to.count(was, o.two.body) {
+		return tooLong
+	}
+	return st
+}
+
+// flat places the dyad at a limit that rounding has passed.
+func (o *rrr) flat(t *dyad.Triangle, d r2.Vec) status {
+	l := r2.Norm(d)
+	if !(o.k.Gap(l) <= o.limit) {
+		return unreachable
+	}
+	if !(l > o.limit) {
+		return singular
+	}
+	o.k.Flatten(t, d)
+	return solved
+}
+
+func (o *rrr) rates(sc *scene) bool {
+	t := &sc.tri[o.tri]
+	a, c := sc.m[o.a.body].At(o.a.at), sc.m[o.c.body].At(o.c.at)
+	m1, m2 := &sc.m[o.one.body], &sc.m[o.two.body]
+	if side := sc.branch[o.i]; side > left {
+		o.cell.rates(sc, o, side, &a, &c)
+	} else {
+		if o.k.Margin(t) < rigid.LeastMargin {
+			return false
+		}
+		w1, w2 := t.Rates(r2.Vec{X: a.Vel.X - c.Vel.X, Y: a.Vel.Y - c.Vel.Y})
+		m1.Omega, m2.Omega = w1, w2
+		m1.Alpha, m2.Alpha = t.Rates(t.Bias(r2.Vec{X: a.Acc.X - c.Acc.X, Y: a.Acc.Y - c.Acc.Y}, w1, w2))
+	}
+	sc.carry(&o.one, a.Vel, a.Acc)
+	sc.carry(&o.two, c.Vel, c.Acc)
+	return true
+}
+
+func (o *rrr) margin(sc *scene) float64 {
+	if sc.branch[o.i] > left {
+		return 1
+	}
+	return o.k.Margin(&sc.tri[o.tri])
+}
+
+func (o *rrr) gap(sc *scene) float64 { return o.k.Gap(r2.Norm(sc.guard[o.i].d)) }
+
+func (o *rrr) choose(sc *scene) status {
+	if o.cell != nil {
+		return sc.nearest(o, o.i, o.seen, o.cell.branches()...)
+	}
+	return sc.nearest(o, o.i, o.seen, left, right)
+}
+
+func (o *rrr) rooms(sc *scene) (r [2]room, n int) {
+	if sc.branch[o.i] > left {
+		return r, 0
+	}
+	most, least := o.k.Reach()
+	g := &sc.guard[o.i]
+	d2 := r2.Dot(g.d, g.d)
+	slope := 2 * r2.Dot(g.d, r2.Sub(sc.vel(&o.c), sc.vel(&o.a)))
+	return [2]room{{most - d2, -slope, most}, {d2 - least, slope, most}}, 2
+}
