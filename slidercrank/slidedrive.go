@@ -53,9 +53,11 @@ func (l *Linkage) SolveSlide(dst *State, slide rigid.Coordinate, knee rigid.Side
 }
 
 // triangle places crank and rod for the slider pin at pos, and reports whether
-// there is a pose on a branch that the mechanism can come to.
+// there is a pose on a branch that the mechanism can come to. A slide no farther
+// from a dead centre than the rounding of one that Solve gives there is at it.
 func (l *Linkage) triangle(t *dyad.Triangle, pos float64, knee rigid.Side) bool {
 	side, slack, s := 1-2*float64(knee), beyond*l.size, math.Abs(pos)
+	near := equal * (l.given.Crank + l.given.Rod)
 	if s-l.outer > slack || l.folds && l.inner-s > slack || l.full && -pos*l.side > slack {
 		return false
 	}
@@ -64,9 +66,9 @@ func (l *Linkage) triangle(t *dyad.Triangle, pos float64, knee rigid.Side) bool 
 		ahead = l.side
 	}
 	switch {
-	case s >= l.outer:
+	case s >= l.outer-near:
 		d.X = math.Copysign(l.outer, ahead)
-	case l.folds && s <= l.inner || pos*ahead < 0:
+	case l.folds && s <= l.inner+near || pos*ahead < 0:
 		d.X = math.Copysign(l.inner, ahead)
 	case l.bySlide.Place(t, d, side):
 		return true

@@ -28,9 +28,14 @@ type machine struct {
 // A maker makes one random machine: to a scale, mirrored in its x axis, mounted.
 type maker func(t *testing.T, scale float64, mirror bool, mount rigid.Placement) machine
 
+type named struct {
+	name string
+	make maker
+}
+
 // makers returns one random machine of each kind; every second lever's crank is
 // longer than its centre distance.
-func makers(rng *rand.Rand) map[string]maker {
+func makers(rng *rand.Rand) []named {
 	r, c := 0.05+0.1*rng.Float64(), 0.17+0.2*rng.Float64()
 	if rng.IntN(2) == 0 {
 		r, c = c, r
@@ -45,15 +50,15 @@ func makers(rng *rand.Rand) map[string]maker {
 	if rng.IntN(3) == 0 {
 		length = 0
 	}
-	return map[string]maker{
-		"press":    pressMaker(slidercrank.Dimensions{Crank: r, Rod: c, Offset: e, Branch: branch}),
-		"lever":    leverMaker(slidercrank.LeverDimensions{Crank: r, Centre: c, Slot: e}),
-		"cylinder": cylinderMaker(slidercrank.CylinderDimensions{Crank: r, Centre: c, Offset: e}),
-		"yoke":     yokeMaker(slidercrank.YokeDimensions{Crank: r, Tilt: tilt}),
-		"rod":      rodMaker(slidercrank.RodDimensions{Length: r, Angle: angle}),
-		"quick return": ramMaker(slidercrank.QuickReturnDimensions{
+	return []named{
+		{"press", pressMaker(slidercrank.Dimensions{Crank: r, Rod: c, Offset: e, Branch: branch})},
+		{"lever", leverMaker(slidercrank.LeverDimensions{Crank: r, Centre: c, Slot: e})},
+		{"cylinder", cylinderMaker(slidercrank.CylinderDimensions{Crank: r, Centre: c, Offset: e})},
+		{"yoke", yokeMaker(slidercrank.YokeDimensions{Crank: r, Tilt: tilt})},
+		{"rod", rodMaker(slidercrank.RodDimensions{Length: r, Angle: angle})},
+		{"quick return", ramMaker(slidercrank.QuickReturnDimensions{
 			Crank: r, Centre: c, Slot: e, Arm: arm, ArmAngle: bend, Rod: length, Branch: branch, Guide: guide,
-		}),
+		})},
 	}
 }
 
