@@ -55,8 +55,8 @@ func (l *Linkage) Assemble(guess []rigid.Placement, in ...rigid.Coordinate) (*St
 	}
 	if s.choose(guess) == nil {
 		s.settle()
-		if err := s.Move(in...); err == nil {
-			return s, s.begin()
+		if s.Move(in...) == nil && s.begin() == nil {
+			return s, nil
 		}
 	}
 	for i, c := range in {
@@ -69,7 +69,10 @@ func (l *Linkage) Assemble(guess []rigid.Placement, in ...rigid.Coordinate) (*St
 	if err := s.Move(in...); err != nil {
 		return nil, err
 	}
-	return s, s.begin()
+	if err := s.begin(); err != nil {
+		return nil, err
+	}
+	return s, nil
 }
 
 // choose solves the ops one after another from rough poses, each on the branch that
@@ -232,7 +235,7 @@ func (s *State) begin() error {
 	for b := range s.start {
 		s.start[b] = p.whole[b].value(s.now)
 	}
-	return nil
+	return s.check()
 }
 
 // unread returns which phases are to be read from the position.

@@ -11,17 +11,18 @@ import (
 // A program says how a system is solved: ops in the order of solution. It is
 // immutable.
 type program struct {
-	system  // rows and angles in the axes of the scenes' motions: those of the links
-	ops     []op
-	groupOf []int      // of every op, or −1
-	link    []int      // the motion of every link of the Design
-	offset  []float64  // of every link: its angle in its body's axes
-	counted []bool     // bodies whose whole turns are counted
-	whole   []angleSum // the angle of every body
-	geared  bool       // whether an angle is a broken multiple of one that is counted
-	newtons []*newton  // groups of higher class: Move needs path rates where there are any
-	perStep []float64  // of each drive: steps per rad or m
-	faults  []faults
+	system   // rows and angles in the axes of the scenes' motions: those of the links
+	ops      []op
+	groupOf  []int      // of every op, or −1
+	link     []int      // the motion of every link of the Design
+	offset   []float64  // of every link: its angle in its body's axes
+	counted  []bool     // bodies whose whole turns are counted
+	whole    []angleSum // the angle of every body
+	geared   bool       // whether an angle is a broken multiple of one that is counted
+	newtons  []*newton  // groups of higher class: Move needs path rates where there are any
+	perStep  []float64  // of each drive: steps per rad or m
+	faults   []faults
+	breaches []error // of every check
 
 	bodies, motions, psis, dyads, tris, rods, slots, meets int
 }
@@ -67,6 +68,7 @@ func compile(s *system, names []string) (*program, error) {
 	}
 	c.links()
 	c.name(names)
+	c.unsolved()
 	c.steps()
 	return c.program, nil
 }

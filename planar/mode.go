@@ -85,7 +85,10 @@ func (l *Linkage) AssembleMode(mode string, in ...rigid.Coordinate) (*State, err
 	if err := s.Move(in...); err != nil {
 		return nil, err
 	}
-	return s, s.begin()
+	if err := s.begin(); err != nil {
+		return nil, err
+	}
+	return s, nil
 }
 
 func (s *State) setMode(mode []rune) error {

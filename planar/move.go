@@ -92,9 +92,11 @@ func (p *program) solve(was, to *scene, moving bool) (status, int) {
 
 // accept makes a scene the State's place, if the redundant constraints hold there.
 func (s *State) accept(to *scene) error {
-	if i := s.broken(to); i >= 0 {
-		s.stop = stop{err: s.l.program.breach(i), op: -1, gap: math.Abs(s.l.program.checks[i].residual(to)), done: 1, blocked: 1}
-		return s.stop.err
+	for i := range s.l.program.checks {
+		if miss := s.l.program.miss(i, to); !(miss <= s.most[i]) {
+			s.stop = stop{err: s.l.program.breaches[i], op: -1, gap: miss, done: 1, blocked: 1}
+			return s.stop.err
+		}
 	}
 	if to == s.next {
 		s.now, s.next = s.next, s.now

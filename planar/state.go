@@ -17,7 +17,7 @@ type State struct {
 	next  *scene             // where Move tries to go
 	spare *scene             // for Moves of several steps
 	start []float64          // total angles of the bodies at Assemble
-	miss  []float64          // by how much each redundant constraint may be off, m or rad
+	most  []float64          // by how much each redundant constraint may be off, m or rad
 	to    []rigid.Coordinate // where Move is to go
 	doubt []int              // ops that may have crossed a gap
 	stop  stop
@@ -34,7 +34,7 @@ func newState(l *Linkage) *State {
 	v := r2.Vec{X: nan, Y: nan}
 	return &State{
 		l: l, now: p.newScene(c), next: p.newScene(c), spare: p.newScene(c),
-		start: make([]float64, p.bodies), miss: make([]float64, len(p.checks)),
+		start: make([]float64, p.bodies), most: make([]float64, len(p.checks)),
 		to: make([]rigid.Coordinate, p.drives), doubt: make([]int, 0, p.dyads),
 		void: rigid.Motion{Pose: rigid.Pose{Origin: v, Axis: v}, Vel: v, Acc: v, Omega: nan, Alpha: nan},
 	}
@@ -60,7 +60,7 @@ func (s *State) Set(from *State) error {
 	copy(s.now.branch, from.now.branch)
 	copy(s.now.phase, from.now.phase)
 	copy(s.start, from.start)
-	copy(s.miss, from.miss)
+	copy(s.most, from.most)
 	copy(s.to, from.to)
 	s.stop = from.stop
 	return nil

@@ -77,13 +77,3 @@ func (s *State) reach(free, blocked float64) float64 {
 	copy(s.to, far)
 	return free
 }
-
-// residual returns by how much a redundant constraint is broken, in m or rad.
-func (c *check) residual(sc *scene) float64 {
-	return 0
-}
-
-// broken returns the first redundant constraint that doesn't hold, or −1.
-func (s *State) broken(sc *scene) int { return -1 }
-
-func (p *program) breach(i int) error { return ErrInconsistent }

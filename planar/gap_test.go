@@ -1,0 +1,104 @@
+package planar_test
+
+import (
+	"errors"
+	"math"
+	"math/rand/v2"
+	"testing"
+
+	. "example.com/twopoint/planar"
+	"example.com/twopoint/rigid"
+)
+
+// fourBarOf returns a four-bar of the given lengths, driven at the crank.
+func fourBarOf(t testing.TB, a, b, c, d float64) *Linkage {
+	var p plan
+	l := p.links("crank", "coupler", "follower")
+	p.pin(Frame.At(0, 0), l[0].At(0, 0))
+	p.pin(l[0].At(a, 0), l[1].At(0, 0))
+	p.pin(l[1].At(b, 0), l[2].At(c, 0))
+	p.pin(Frame.At(d, 0), l[2].At(0, 0))
+	p.turn(l[0], Frame)
+	f, err := New(p.Design)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return f
+}
+
+// blocked returns by how much, over (b + c)², the loop of a four-bar fails to close
+// somewhere between two crank angles: |AC|² = a² + d² − 2ad cos φ is extreme at the
+// ends and at multiples of π.
+func blocked(a, b, c, d, from, to float64) float64 {
+	most, least := (b+c)*(b+c), (b-c)*(b-c)
+	worst := 0.0
+	see := func(phi float64) {
+		d2 := a*a + d*d - 2*a*d*math.Cos(phi)
+		worst = max(worst, (d2-most)/most, (least-d2)/most)
+	}
+	see(from)
+	see(to)
+	lo, hi := min(from, to), max(from, to)
+	for k := math.Ceil(lo / math.Pi); k*math.Pi < hi; k++ {
+		see(k * math.Pi)
+	}
+	return worst
+}
+
+// TestNoGapIsCrossed drives random four-bars by steps of all sizes both ways. A Move
+// must fail just where the loop doesn't close at some place of the path, found from
+// the lengths alone; it may miss gaps where it nearly does.
+func TestNoGapIsCrossed(t *testing.T) {
+	random := rand.New(rand.NewPCG(7, 1))
+	bars, moves := 3000, 12
+	if testing.Short() {
+		bars = 300
+	}
+	gaps, small, refused, passed := 0, 0, 0, 0
+	for range bars {
+		a, b, c, d := 0.3+random.Float64(), 0.3+random.Float64(), 0.3+random.Float64(), 0.3+random.Float64()
+		l := fourBarOf(t, a, b, c, d)
+		phi := random.Float64() * 6
+		mode := ".+"
+		if random.IntN(2) == 0 {
+			mode = ".-"
+		}
+		s, err := l.AssembleMode(mode, rigid.Coordinate{Pos: phi})
+		if err != nil {
+			if blocked(a, b, c, d, phi, phi) == 0 {
+				t.Fatalf("%v %v %v %v at %v: %v", a, b, c, d, phi, err)
+			}
+			continue
+		}
+		for range moves {
+			step := math.Pow(10, -2.5+3.3*random.Float64())
+			if random.IntN(2) == 0 {
+				step = -step
+			}
+			gap := blocked(a, b, c, d, phi, phi+step)
+			err := s.Move(rigid.Coordinate{Pos: phi + step})
+			switch {
+			case err == nil && gap > 1e-5:
+				t.Errorf("%v %v %v %v from %v by %v: crossed a gap of %.2g", a, b, c, d, phi, step, gap)
+			case err != nil && gap == 0:
+				refused++
+				t.Errorf("%v %v %v %v from %v by %v: %v", a, b, c, d, phi, step, err)
+			case err != nil && !errors.Is(err, rigid.ErrUnreachable):
+				t.Errorf("%v %v %v %v from %v by %v: %v", a, b, c, d, phi, step, err)
+			}
+			if gap > 1e-5 {
+				gaps++
+			} else if gap > 0 && err == nil {
+				small++
+			}
+			if err == nil {
+				passed++
+				phi += step
+			}
+			if got := s.Mode(); got != mode {
+				t.Fatalf("mode %s after %s", got, mode)
+			}
+		}
+	}
+	t.Logf("%d moves passed, %d gaps refused, %d of below 1e-5 crossed", passed, gaps, small)
+}
