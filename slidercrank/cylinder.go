@@ -115,8 +115,8 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 	}
 	s, reach, e := slide.Pos, k.r+k.c, math.Abs(k.e)
 	slack := 2 * beyond * k.size * s
-	ch, ok := root(s*s-k.least, equal*(s*s+math.Abs(k.least)), slack)
-	sh, within := root((reach-e)*(reach+e)-s*s, equal*(reach-e)*(reach+e), slack)
+	ch, ok := root(s*s-k.least, 2*equal*(s*s+math.Abs(k.least)), slack)
+	sh, within := root((reach-e)*(reach+e)-s*s, 2*equal*(reach-e)*(reach+e), slack)
 	if !(s >= 0) || !ok || !within {
 		return rigid.ErrUnreachable
 	}
