@@ -27,12 +27,12 @@ func (l *Linkage) SolveFollower(dst *State, swing rigid.Coordinate, knee rigid.S
 	if l.dim.Branch > Crossed {
 		return l.solveCellBack(dst, swing)
 	}
-	p := pose{follower: link{direction(swing.Pos), swing.Vel, swing.Acc}}
+	p := pose{follower: dyad.Link{Axis: direction(swing.Pos), Omega: swing.Vel, Alpha: swing.Acc}}
 	margin, err := l.solveDyad(&p, &l.byFollower, &p.follower, sign(knee), &p.coupler)
 	if err != nil {
 		return err
 	}
-	p.coupler.axis = r2.Scale(-1, p.coupler.axis)
+	p.coupler.Axis = r2.Scale(-1, p.coupler.Axis)
 	if err := l.writeBack(dst, &p); err != nil {
 		return err
 	}
@@ -57,7 +57,7 @@ func (l *Linkage) SolveCoupler(dst *State, coupler rigid.Coordinate, lean rigid.
 	case l.dim.Branch == Parallel:
 		return parallelCoupler(coupler)
 	}
-	p := pose{coupler: link{direction(coupler.Pos), coupler.Vel, coupler.Acc}}
+	p := pose{coupler: dyad.Link{Axis: direction(coupler.Pos), Omega: coupler.Vel, Alpha: coupler.Acc}}
 	var margin float64
 	var err error
 	if l.dim.Branch == Contrary {
@@ -71,7 +71,7 @@ func (l *Linkage) SolveCoupler(dst *State, coupler rigid.Coordinate, lean rigid.
 	if err := l.writeBack(dst, &p); err != nil {
 		return err
 	}
-	dst.Swing.Pos = l.swing(dst.Turn.Pos, p.follower.axis)
+	dst.Swing.Pos = l.swing(dst.Turn.Pos, p.follower.Axis)
 	dst.Lean, dst.Margin = lean, margin
 	return nil
 }
@@ -80,28 +80,14 @@ func (l *Linkage) SolveCoupler(dst *State, coupler rigid.Coordinate, lean rigid.
 // arm is r as it comes: the errors of a short crank's direction and of its rate
 // are one error, which cancels in its pin's velocity. Seen from a long driven link
 // that is so of a part of the rate only, the smaller one.
-func (l *Linkage) solveDyad(p *pose, k *drive, driven *link, side float64, other *link) (margin float64, err error) {
-	d := k.span(driven.axis)
+func (l *Linkage) solveDyad(p *pose, k *drive, driven *dyad.Link, side float64, other *dyad.Link) (margin float64, err error) {
 	var t dyad.Triangle
-	if !k.dyad.Place(&t, d, side) {
-		if err := l.atLimit(k, &t, d); err != nil {
-			return 0, err
-		}
-	}
-	margin = k.dyad.Margin(&t)
-	r := &p.crank
-	if driven.omega != 0 || driven.alpha != 0 {
-		if margin < rigid.LeastMargin {
-			return 0, rigid.ErrSingular
-		}
-		r.omega, other.omega, r.alpha, other.alpha = k.rates(&t, driven.axis, driven.omega, driven.alpha)
-	}
-	r.axis, other.axis = k.dyad.Axes(&t)
+	margin, err = l.solve(k, &t, &p.crank, other, driven, side)
 	p.arm = t.R
 	if k.long {
-		p.arm = r2.Scale(l.crank, r.axis)
+		p.arm = r2.Scale(l.crank, p.crank.Axis)
 	}
-	return margin, nil
+	return margin, err
 }
 
 // writeBack writes a pose found from the follower or the coupler, but for what
@@ -120,12 +106,12 @@ func (l *Linkage) writeBack(dst *State, p *pose) error {
 	if !l.write(dst, p) {
 		return rigid.ErrNotFinite
 	}
-	dst.Turn = rigid.Coordinate{Pos: trig.Angle(p.crank.axis.X, p.crank.axis.Y), Vel: p.crank.omega, Acc: p.crank.alpha}
+	dst.Turn = rigid.Coordinate{Pos: trig.Angle(p.crank.Axis.X, p.crank.Axis.Y), Vel: p.crank.Omega, Acc: p.crank.Alpha}
 	if dst.Turn.Pos == -math.Pi {
 		dst.Turn.Pos = math.Pi
 	}
 	dst.Branch = branch
-	dst.Transmission = trig.Angle(r2.Dot(p.coupler.axis, p.follower.axis), math.Abs(sin))
+	dst.Transmission = trig.Angle(r2.Dot(p.coupler.Axis, p.follower.Axis), math.Abs(sin))
 	return nil
 }
 
@@ -135,9 +121,9 @@ func (l *Linkage) writeBack(dst *State, p *pose) error {
 func (l *Linkage) kink(p *pose) float64 {
 	d := r2.Vec{X: l.frame - p.arm.X, Y: -p.arm.Y}
 	if d.X*d.X+d.Y*d.Y < l.coupler*l.coupler {
-		return r2.Cross(d, p.follower.axis) / l.coupler
+		return r2.Cross(d, p.follower.Axis) / l.coupler
 	}
-	return r2.Cross(p.coupler.axis, p.follower.axis)
+	return r2.Cross(p.coupler.Axis, p.follower.Axis)
 }
 
 // flat is a sine that rounding alone makes out of 0 where three links fall into

@@ -34,8 +34,8 @@ func (k *drive) span(u r2.Vec) r2.Vec {
 	return r2.Vec{X: k.base - k.arm*u.X, Y: -k.arm * u.Y}
 }
 
-// rates returns the angular velocities and accelerations of r and q for a driven
-// link along u that turns with w and al.
+// move solves the dyad for a driven link that moves. It reports false where the
+// dyad does not close; where it is flat the rates are not finite.
 //
 // It looks from the longer of the frame and the driven link. With a driven link
 // much longer than the frame all links turn almost as one, and seen from the
@@ -43,16 +43,46 @@ func (k *drive) span(u r2.Vec) r2.Vec {
 // shorter of the two, the velocity of the dyad's first outer pin less that of the
 // second is ω×m, their acceleration α×m − ω²m seen from the frame and α×m + ω²m
 // seen from the driven link, whose own ω and α are added in the end.
-func (k *drive) rates(t *dyad.Triangle, u r2.Vec, w, al float64) (wr, wq, ar, aq float64) {
+func (k *drive) move(t *dyad.Triangle, r, q, driven *dyad.Link, side float64) bool {
+	arm := r2.Vec{X: k.arm * driven.Axis.X, Y: k.arm * driven.Axis.Y}
+	w, al := driven.Omega, driven.Alpha
+	m, w2 := arm, -w*w
 	if k.long {
-		wr, wq = t.Rates(r2.Vec{Y: w * k.base})
-		ar, aq = t.Rates(t.Bias(r2.Vec{X: w * w * k.base, Y: al * k.base}, wr, wq))
-		return wr + w, wq + w, ar + al, aq + al
+		m, w2 = r2.Vec{X: k.base}, -w2
 	}
-	m, w2 := r2.Vec{X: k.arm * u.X, Y: k.arm * u.Y}, w*w
-	wr, wq = t.Rates(r2.Vec{X: -w * m.Y, Y: w * m.X})
-	ar, aq = t.Rates(t.Bias(r2.Vec{X: -w2*m.X - al*m.Y, Y: -w2*m.Y + al*m.X}, wr, wq))
-	return wr, wq, ar, aq
+	ok := k.dyad.Move(t, r, q,
+		r2.Vec{X: k.base - arm.X, Y: -arm.Y},
+		r2.Vec{X: -w * m.Y, Y: w * m.X},
+		r2.Vec{X: w2*m.X - al*m.Y, Y: w2*m.Y + al*m.X}, side)
+	if k.long {
+		r.Omega, r.Alpha = r.Omega+w, r.Alpha+al
+		q.Omega, q.Alpha = q.Omega+w, q.Alpha+al
+	}
+	return ok
+}
+
+// solve solves the dyad of a driven link at rest or in motion, and says why where
+// there is no answer. It gives the sine of the angle between the dyad's links.
+func (l *Linkage) solve(k *drive, t *dyad.Triangle, r, q, driven *dyad.Link, side float64) (margin float64, err error) {
+	if driven.Omega != 0 || driven.Alpha != 0 {
+		if k.move(t, r, q, driven, side) {
+			if margin = k.dyad.Margin(t); margin >= rigid.LeastMargin {
+				return margin, nil
+			}
+			return 0, rigid.ErrSingular
+		}
+	}
+	d := k.span(driven.Axis)
+	if !k.dyad.Place(t, d, side) {
+		if err := l.atLimit(k, t, d); err != nil {
+			return 0, err
+		}
+	}
+	if driven.Omega != 0 || driven.Alpha != 0 {
+		return 0, rigid.ErrSingular
+	}
+	r.Axis, q.Axis = k.dyad.Axes(t)
+	return k.dyad.Margin(t), nil
 }
 
 // atLimit places the dyad that d does not let close: flat where d is within

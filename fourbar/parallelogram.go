@@ -5,6 +5,7 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/internal/dyad"
 	"example.com/twopoint/rigid"
 )
 
@@ -14,7 +15,7 @@ import (
 
 // solveCell is Solve for Parallel and Contrary.
 func (l *Linkage) solveCell(dst *State, turn rigid.Coordinate) error {
-	p := pose{crank: link{direction(turn.Pos), turn.Vel, turn.Acc}}
+	p := pose{crank: dyad.Link{Axis: direction(turn.Pos), Omega: turn.Vel, Alpha: turn.Acc}}
 	l.cell(&p.crank, &l.byCrank, &p.coupler, &p.follower)
 	if err := l.writeCell(dst, &p, turn.Pos); err != nil {
 		return err
@@ -22,21 +23,21 @@ func (l *Linkage) solveCell(dst *State, turn rigid.Coordinate) error {
 	dst.Turn = turn
 	dst.Swing.Pos = turn.Pos
 	if l.dim.Branch == Contrary {
-		dst.Swing.Pos = l.swing(turn.Pos, p.follower.axis)
+		dst.Swing.Pos = l.swing(turn.Pos, p.follower.Axis)
 	}
-	dst.Margin = math.Abs(r2.Cross(p.coupler.axis, p.follower.axis))
+	dst.Margin = math.Abs(r2.Cross(p.coupler.Axis, p.follower.Axis))
 	return nil
 }
 
 // solveCellBack is SolveFollower for Parallel and Contrary.
 func (l *Linkage) solveCellBack(dst *State, swing rigid.Coordinate) error {
-	p := pose{follower: link{direction(swing.Pos), swing.Vel, swing.Acc}}
+	p := pose{follower: dyad.Link{Axis: direction(swing.Pos), Omega: swing.Vel, Alpha: swing.Acc}}
 	l.cell(&p.follower, &l.byFollower, &p.coupler, &p.crank)
 	if err := l.writeCell(dst, &p, swing.Pos); err != nil {
 		return err
 	}
 	dst.Swing = swing
-	dst.Margin = math.Abs(r2.Cross(p.crank.axis, p.coupler.axis))
+	dst.Margin = math.Abs(r2.Cross(p.crank.Axis, p.coupler.Axis))
 	return nil
 }
 
@@ -44,7 +45,7 @@ func (l *Linkage) writeCell(dst *State, p *pose, in float64) error {
 	if in*0 != 0 {
 		return rigid.ErrNotFinite
 	}
-	p.arm = r2.Scale(l.crank, p.crank.axis)
+	p.arm = r2.Scale(l.crank, p.crank.Axis)
 	return l.writeBack(dst, p)
 }
 
@@ -56,23 +57,23 @@ func (l *Linkage) writeCell(dst *State, p *pose, in float64) error {
 // the driven link's u become e² and e²u*, their angular velocities 2ωd and 2ωd − ω. With m = arm·u, d' = −ω m⊥ and so on,
 //
 //	ωd = d×d'/d² = −ω d·m/d²,  αd = (−α d·m − ω (2ωd − ω) d×m)/d²
-func (l *Linkage) cell(driven *link, k *drive, coupler, opposite *link) {
+func (l *Linkage) cell(driven *dyad.Link, k *drive, coupler, opposite *dyad.Link) {
 	if l.dim.Branch == Parallel {
-		coupler.axis, *opposite = r2.Vec{X: 1}, *driven
+		coupler.Axis, *opposite = r2.Vec{X: 1}, *driven
 		return
 	}
-	u, d := driven.axis, k.span(driven.axis)
+	u, d := driven.Axis, k.span(driven.Axis)
 	i := 1 / (d.X*d.X + d.Y*d.Y)
 	e2 := r2.Vec{X: (d.X - d.Y) * (d.X + d.Y) * i, Y: 2 * d.X * d.Y * i}
-	coupler.axis, opposite.axis = e2, less(e2, u)
-	if driven.omega == 0 && driven.alpha == 0 {
+	coupler.Axis, opposite.Axis = e2, less(e2, u)
+	if driven.Omega == 0 && driven.Alpha == 0 {
 		return
 	}
 	dot, cross := k.arm*r2.Dot(d, u)*i, k.arm*r2.Cross(d, u)*i
-	coupler.omega = -2 * driven.omega * dot
-	opposite.omega = coupler.omega - driven.omega
-	coupler.alpha = -2 * (driven.alpha*dot + driven.omega*opposite.omega*cross)
-	opposite.alpha = coupler.alpha - driven.alpha
+	coupler.Omega = -2 * driven.Omega * dot
+	opposite.Omega = coupler.Omega - driven.Omega
+	coupler.Alpha = -2 * (driven.Alpha*dot + driven.Omega*opposite.Omega*cross)
+	opposite.Alpha = coupler.Alpha - driven.Alpha
 }
 
 // less returns the unit vector at the angle of u less that of v.
@@ -117,9 +118,9 @@ func (l *Linkage) contraryCoupler(p *pose, in rigid.Coordinate, side float64) (m
 	if over > 0 {
 		sin = math.Copysign(1, sin)
 	}
-	p.crank.axis = less(half, r2.Vec{X: cos, Y: sin})
-	p.follower.axis = less(half, r2.Vec{X: cos, Y: -sin})
-	p.arm = r2.Scale(l.crank, p.crank.axis)
+	p.crank.Axis = less(half, r2.Vec{X: cos, Y: sin})
+	p.follower.Axis = less(half, r2.Vec{X: cos, Y: -sin})
+	p.arm = r2.Scale(l.crank, p.crank.Axis)
 	if in.Vel != 0 || in.Acc != 0 {
 		if math.Abs(cos) < rigid.LeastMargin {
 			return 0, rigid.ErrSingular
@@ -127,8 +128,8 @@ func (l *Linkage) contraryCoupler(p *pose, in rigid.Coordinate, side float64) (m
 		w, al := in.Vel/2, in.Acc/2
 		b1 := ratio * c * w / cos
 		b2 := (ratio*(c*al-s*w*w) + sin*b1*b1) / cos
-		p.crank.omega, p.follower.omega = w-b1, w+b1
-		p.crank.alpha, p.follower.alpha = al-b2, al+b2
+		p.crank.Omega, p.follower.Omega = w-b1, w+b1
+		p.crank.Alpha, p.follower.Alpha = al-b2, al+b2
 	}
 	return 2 * math.Abs(sin*cos), nil
 }

@@ -26,23 +26,13 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	if l.dim.Branch > Crossed {
 		return l.solveCell(dst, turn)
 	}
-	k, u := &l.byCrank, direction(turn.Pos)
-	d := k.span(u)
-	var t dyad.Triangle
-	if !k.dyad.Place(&t, d, l.side) {
-		if err := l.atLimit(k, &t, d); err != nil {
-			return err
-		}
+	k, t := &l.byCrank, dyad.Triangle{}
+	p := pose{crank: dyad.Link{Axis: direction(turn.Pos), Omega: turn.Vel, Alpha: turn.Acc}}
+	margin, err := l.solve(k, &t, &p.coupler, &p.follower, &p.crank, l.side)
+	if err != nil {
+		return err
 	}
-	margin := k.dyad.Margin(&t)
-	p := pose{crank: link{u, turn.Vel, turn.Acc}, arm: r2.Scale(l.crank, u)}
-	if turn.Vel != 0 || turn.Acc != 0 {
-		if margin < rigid.LeastMargin {
-			return rigid.ErrSingular
-		}
-		p.coupler.omega, p.follower.omega, p.coupler.alpha, p.follower.alpha = k.rates(&t, u, turn.Vel, turn.Acc)
-	}
-	p.coupler.axis, p.follower.axis = k.dyad.Axes(&t)
+	p.arm = r2.Scale(l.crank, p.crank.Axis)
 	if !l.write(dst, &p) {
 		return rigid.ErrNotFinite
 	}
@@ -50,19 +40,13 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	dst.Margin = margin
 	dst.Branch = l.dim.Branch
 	dst.Transmission = trig.Angle(k.dyad.Cos(&t), margin)
-	dst.Swing.Pos = l.swing(turn.Pos, p.follower.axis)
+	dst.Swing.Pos = l.swing(turn.Pos, p.follower.Axis)
 	return nil
-}
-
-// A link is what the closure equations determine of a link's motion.
-type link struct {
-	axis         r2.Vec
-	omega, alpha float64
 }
 
 // A pose is the motion of the three moving links in the mechanism's own axes.
 type pose struct {
-	crank, coupler, follower link
+	crank, coupler, follower dyad.Link
 	arm                      r2.Vec // along the crank, for the motion of its pin
 }
 
@@ -76,33 +60,33 @@ func direction(angle float64) r2.Vec {
 // origin is added last so that a small machine far from it keeps its accuracy. It
 // reports false, and writes nothing, where a rate is not finite.
 func (l *Linkage) write(dst *State, p *pose) bool {
-	w, al, w2 := p.crank.omega, p.crank.alpha, p.crank.omega*p.crank.omega
+	w, al, w2 := p.crank.Omega, p.crank.Alpha, p.crank.Omega*p.crank.Omega
 	arm := l.mounted(p.arm)
 	acc := r2.Vec{X: -al*arm.Y - w2*arm.X, Y: al*arm.X - w2*arm.Y}
-	if acc.X*0+acc.Y*0+al*0+p.coupler.alpha*0+p.follower.alpha*0 != 0 { // NaN unless all are finite
+	if acc.X*0+acc.Y*0+al*0+p.coupler.Alpha*0+p.follower.Alpha*0 != 0 { // NaN unless all are finite
 		return false
 	}
 	m := &dst.Crank
-	m.Pose.Origin, m.Pose.Axis = l.origin, l.mounted(p.crank.axis)
+	m.Pose.Origin, m.Pose.Axis = l.origin, l.mounted(p.crank.Axis)
 	m.Vel, m.Acc = r2.Vec{}, r2.Vec{}
 	m.Omega, m.Alpha = w, al
 
 	m = &dst.Coupler
 	m.Pose.Origin.X = l.origin.X + l.crank*dst.Crank.Pose.Axis.X
 	m.Pose.Origin.Y = l.origin.Y + l.crank*dst.Crank.Pose.Axis.Y
-	m.Pose.Axis = l.mounted(p.coupler.axis)
+	m.Pose.Axis = l.mounted(p.coupler.Axis)
 	m.Vel.X, m.Vel.Y = -w*arm.Y, w*arm.X
 	m.Acc = acc
-	m.Omega, m.Alpha = p.coupler.omega, p.coupler.alpha
+	m.Omega, m.Alpha = p.coupler.Omega, p.coupler.Alpha
 
 	m = &dst.Follower
-	m.Pose.Origin, m.Pose.Axis = l.pivot, l.mounted(p.follower.axis)
+	m.Pose.Origin, m.Pose.Axis = l.pivot, l.mounted(p.follower.Axis)
 	m.Vel, m.Acc = r2.Vec{}, r2.Vec{}
-	m.Omega, m.Alpha = p.follower.omega, p.follower.alpha
+	m.Omega, m.Alpha = p.follower.Omega, p.follower.Alpha
 
-	dst.Swing.Vel, dst.Swing.Acc = p.follower.omega, p.follower.alpha
-	dst.Knee = sideOf(p.coupler.axis, p.crank.axis)
-	dst.Lean = sideOf(p.crank.axis, p.follower.axis)
+	dst.Swing.Vel, dst.Swing.Acc = p.follower.Omega, p.follower.Alpha
+	dst.Knee = sideOf(p.coupler.Axis, p.crank.Axis)
+	dst.Lean = sideOf(p.crank.Axis, p.follower.Axis)
 	return true
 }
 

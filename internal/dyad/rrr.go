@@ -62,6 +62,44 @@ func (k *RRR) Place(t *Triangle, d r2.Vec, side float64) bool {
 	return true
 }
 
+// A Link is the direction of a link, with its angular velocity and acceleration.
+type Link struct {
+	Axis         r2.Vec
+	Omega, Alpha float64
+}
+
+// Move is Place, Axes, Rates and Bias in one, for inner loops: it solves both links
+// for d = C − A, w = vA − vC and z = aA − aC on the given side. It reports false,
+// and changes nothing, where Place does. Where the links lie in one line the rates
+// are not finite: see Margin.
+func (k *RRR) Move(t *Triangle, ab, cb *Link, d, w, z r2.Vec, side float64) bool {
+	d2 := d.X*d.X + d.Y*d.Y
+	x := d2 - k.n
+	p := (k.g - x) * (k.g + x)
+	if math.Abs(x) > k.h {
+		p = (k.s - d2) * (d2 - k.e)
+	}
+	if !(p >= 0 && d2 > k.point) {
+		return false
+	}
+	f := side * math.Sqrt(p)
+	i, c := 0.5/d2, -2/p // while the root is on its way
+	u, v, h := (d2+k.m)*i, (k.m-d2)*i, f*i
+	rx, ry := u*d.X-h*d.Y, u*d.Y+h*d.X
+	qx, qy := v*d.X-h*d.Y, v*d.Y+h*d.X
+	t.R, t.Q, t.X, t.F = r2.Vec{X: rx, Y: ry}, r2.Vec{X: qx, Y: qy}, x, f
+
+	c *= f // −2/F
+	w1, w2 := c*(w.X*qx+w.Y*qy), c*(w.X*rx+w.Y*ry)
+	ab.Omega, cb.Omega = w1, w2
+	w1, w2 = w1*w1, w2*w2
+	zx, zy := z.X-w1*rx+w2*qx, z.Y-w1*ry+w2*qy
+	ab.Alpha, cb.Alpha = c*(zx*qx+zy*qy), c*(zx*rx+zy*ry)
+	ab.Axis = unit(r2.Vec{X: k.ib * rx, Y: k.ib * ry})
+	cb.Axis = unit(r2.Vec{X: k.ic * qx, Y: k.ic * qy})
+	return true
+}
+
 // Flatten places the dyad with both links along d = C − A, which is not 0: its
 // place at a limit, where rounding has put C a little too far or too near.
 func (k *RRR) Flatten(t *Triangle, d r2.Vec) {
