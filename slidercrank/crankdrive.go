@@ -75,5 +75,5 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 // square returns the rod square to the guide where eta is beyond its length by a
 // rounding, and reports whether it is no more than that.
 func (l *Linkage) square(eta float64) (dyad.Rod, bool) {
-	return dyad.Rod{Eta: math.Copysign(l.byCrank.L, eta)}, math.Abs(eta)-l.byCrank.L <= beyond*l.size
+	return dyad.Rod{Eta: math.Copysign(l.rod, eta)}, math.Abs(eta)-l.rod <= beyond*l.size
 }

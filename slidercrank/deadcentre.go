@@ -33,7 +33,7 @@ func (l *Linkage) DeadCentres() (outer, inner DeadCentre, err error) {
 		return outer, DeadCentre{}, rigid.ErrUnreachable
 	}
 	x, y := -l.side*l.inner, l.guide
-	switch d := l.given.Rod - l.given.Crank; {
+	switch d := l.rod - l.crank; {
 	case d > 0:
 		inner = deadCentre(x, 0-y, -x)
 	case d < 0:
@@ -58,7 +58,7 @@ func (l *Linkage) Stroke() (float64, error) {
 	if err := l.turning(); err != nil {
 		return 0, err
 	}
-	return 4 * (l.given.Crank / (l.outer + l.inner)) * l.given.Rod, nil
+	return 4 * (l.crank / (l.outer + l.inner)) * l.rod, nil
 }
 
 // TimeRatio returns the crank's angle, turning positive, from the inner dead centre

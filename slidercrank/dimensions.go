@@ -76,6 +76,20 @@ func (d Dimensions) check() error {
 	return f.join()
 }
 
+// settle returns Rod, and whether there is a change point: Rod = Crank ± |Offset|
+// within rounding, where crank and rod can both stand square to the guide. Rod is
+// then that sum to the last digit, so that they do at the quarter turn.
+func (d Dimensions) settle() (rod float64, changes bool) {
+	e := math.Abs(d.Offset)
+	slack := equal * max(d.Crank, d.Rod, e)
+	for _, sum := range [...]float64{d.Crank + e, d.Crank - e} {
+		if sum > 0 && math.Abs(d.Rod-sum) <= slack {
+			return sum, true
+		}
+	}
+	return d.Rod, false
+}
+
 const (
 	// equal is the difference, of the longest length, below which sums of lengths
 	// count as equal: lengths come as decimals, whose sums are rounded.

@@ -15,7 +15,7 @@ func (l *Linkage) Range() []rigid.Interval {
 	if l.crank == 0 {
 		return nil
 	}
-	low, high := l.end(l.guide-l.given.Rod, -1), l.end(l.guide+l.given.Rod, 1)
+	low, high := l.end(l.guide-l.rod, -1), l.end(l.guide+l.rod, 1)
 	switch {
 	case low == -math.Pi/2 && high == math.Pi/2:
 		return []rigid.Interval{{Lo: -math.Pi, Hi: math.Pi}}
@@ -57,7 +57,7 @@ func (l *Linkage) between(lo, hi float64) rigid.Interval {
 func (l *Linkage) outward(end, sign float64) float64 {
 	step := sign * 0x1p-53 * l.size / l.crank
 	for range 8 {
-		if sin, _ := trig.Sincos(end); math.Abs(l.guide-float64(l.crank*sin)) >= l.given.Rod {
+		if sin, _ := trig.Sincos(end); math.Abs(l.guide-float64(l.crank*sin)) >= l.rod {
 			break
 		}
 		end, step = end+step, 2*step
@@ -79,6 +79,6 @@ func (l *Linkage) PressureAngles() (least, greatest float64) {
 // tilt returns the angle between the rod and the guide where the slider pin is
 // higher or lower than the crank pin by eta, or a right angle where it never is.
 func (l *Linkage) tilt(eta float64) float64 {
-	xi, _ := leg(l.given.Rod, eta, l.size)
-	return math.Atan2(min(eta, l.given.Rod), xi)
+	xi, _ := leg(l.rod, eta, l.size)
+	return math.Atan2(min(eta, l.rod), xi)
 }

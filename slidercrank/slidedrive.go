@@ -57,7 +57,7 @@ func (l *Linkage) SolveSlide(dst *State, slide rigid.Coordinate, knee rigid.Side
 // from a dead centre than the rounding of one that Solve gives there is at it.
 func (l *Linkage) triangle(t *dyad.Triangle, pos float64, knee rigid.Side) bool {
 	side, slack, s := 1-2*float64(knee), beyond*l.size, math.Abs(pos)
-	near := equal * (l.given.Crank + l.given.Rod)
+	near := equal * (l.crank + l.rod)
 	if s-l.outer > slack || l.folds && l.inner-s > slack || l.full && -pos*l.side > slack {
 		return false
 	}
@@ -90,7 +90,7 @@ func (l *Linkage) flat(t *dyad.Triangle, d r2.Vec, side float64) {
 	}
 	u := r2.Scale(side, r2.Unit(d))
 	u.X, u.Y = -u.Y, u.X
-	t.R, t.Q, t.F = r2.Scale(l.given.Crank, u), r2.Scale(l.given.Rod, u), 0
+	t.R, t.Q, t.F = r2.Scale(l.crank, u), r2.Scale(l.rod, u), 0
 }
 
 // branch returns the branch of a pose whose rod goes xi along the guide.

@@ -15,6 +15,7 @@ import (
 type Linkage struct {
 	given        Dimensions
 	crank, guide float64 // Crank, Offset
+	rod          float64 // Rod, to the last digit that of a change point where it is one
 	side         float64 // of the slider pin from the crank pin along the guide: 1 Ahead, −1 Behind
 	size         float64 // the greatest length
 	full         bool    // whether the crank turns fully
@@ -40,23 +41,26 @@ func New(d Dimensions) (*Linkage, error) {
 		return nil, err
 	}
 	m, e := d.Mount.Pose(), math.Abs(d.Offset)
+	rod, changes := d.settle()
+	size := max(d.Crank, d.Rod, e)
 	l := &Linkage{
 		given: d,
-		crank: d.Crank, guide: d.Offset, side: 1,
-		size:    max(d.Crank, d.Rod, e),
-		byCrank: dyad.RRP{L: d.Rod}, bySlide: dyad.NewRRR(d.Crank, d.Rod),
+		crank: d.Crank, rod: rod, guide: d.Offset, side: 1,
+		size:    size,
+		full:    rod >= d.Crank+e,
+		folds:   changes || math.Abs(rod-d.Crank) >= e,
+		byCrank: dyad.RRP{L: rod}, bySlide: dyad.NewRRR(d.Crank, rod),
 		origin: m.Origin, axis: m.Axis,
-		rodAxis: r2.Scale(1/d.Rod, m.Axis),
+		rodAxis: r2.Scale(1/rod, m.Axis),
 		offset:  r2.Vec{X: -m.Axis.Y * d.Offset, Y: m.Axis.X * d.Offset},
 	}
 	if d.Branch == Behind {
 		l.side = -1
 	}
-	slack, fold := equal*l.size, math.Abs(d.Rod-d.Crank)
-	l.full = d.Rod-d.Crank-e >= -slack
-	l.folds = fold-e >= -slack
-	l.outer, _ = leg(d.Crank+d.Rod, e, l.size)
-	l.inner, _ = leg(fold, e, l.size)
+	l.outer, _ = leg(d.Crank+rod, e, size)
+	if !changes {
+		l.inner, _ = leg(math.Abs(rod-d.Crank), e, size)
+	}
 	return l, nil
 }
 
