@@ -6,6 +6,9 @@ import "math"
 // Where a derivative is not known it is 0: Find then does with what there is.
 type Point struct{ In, Out, First, Second float64 }
 
+// ulps is what f may be off for its rounding: four units of float64's precision.
+const ulps = 0x1p-50
+
 // Calls is how often Find calls f at most.
 const Calls = 2*halvings + 1
 
@@ -20,7 +23,7 @@ const Calls = 2*halvings + 1
 // lets it come no nearer to y: where f jumps over y that is beside the jump.
 func Find(f func(x float64) (Point, error), a, b Point, y float64) (Point, error) {
 	rising := b.Out > a.Out
-	noise := 0x1p-50 * math.Max(math.Abs(a.Out), math.Abs(b.Out))
+	noise := ulps * math.Max(math.Abs(a.Out), math.Abs(b.Out))
 	best, p := a, a
 	if math.Abs(b.Out-y) < math.Abs(a.Out-y) {
 		best, p = b, b
@@ -47,12 +50,11 @@ func Find(f func(x float64) (Point, error), a, b Point, y float64) (Point, error
 			b = p
 		}
 		off, was := math.Abs(p.Out-y), math.Abs(best.Out-y)
-		if off >= was && off <= noise {
-			break // no nearer than rounding of f allows
-		}
-		halve = !(off <= was/2)
 		if off <= was {
 			best = p
+		}
+		if halve = !(off <= was/2); halve && off <= noise+ulps*math.Abs(p.First*p.In) {
+			break // no nearer than rounding allows
 		}
 	}
 	return best, nil

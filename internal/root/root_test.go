@@ -165,7 +165,11 @@ func TestFindPathological(t *testing.T) {
 		for _, y := range []float64{-0.7, 0, 1e-9, 0.25} {
 			c := counted{f: f}
 			p := c.find(t, -1, 1, y)
-			if name != "jump" && name != "NaN inside" {
+			switch name {
+			case "false derivatives": // a slope of 1e9 makes rounding of In 1e-6
+				near(t, name, p.Out, y, 1e-6)
+			case "jump", "NaN inside":
+			default:
 				near(t, name, p.Out, y, 1e-15)
 			}
 		}
