@@ -6,7 +6,7 @@ import (
 	"example.com/twopoint/rigid"
 )
 
-// A Linkage is a four-bar linkage. It never changes, so that any number of
+// A Linkage is a four-bar linkage made by New. It never changes, so that any number of
 // goroutines may share it. The zero Linkage is no mechanism: its methods return
 // ErrInput, or NaN or nothing where they return no error.
 type Linkage struct {
