@@ -42,6 +42,7 @@ func (b *builder) group() {
 // the joints among them and to what is known before, which is cluster 0.
 type contour struct {
 	clusters int
+	known    []bool // of every cluster: its angle is known
 	joints   []contourJoint
 }
 
@@ -54,7 +55,19 @@ type contourJoint struct {
 // classify tells class and kind of a group.
 func (b *builder) classify(bodies, groupOf []int) Group {
 	g := Group{Links: b.linksIn(bodies)}
-	c := b.contour(bodies, groupOf)
+	if len(bodies) == 2 {
+		whole := b.contour(bodies, groupOf, apart(bodies))
+		if g.Kind = whole.kind(); g.Kind != NoDyad {
+			g.Class = 2
+			return g
+		}
+	}
+	c := b.contour(bodies, groupOf, b.fused(bodies))
+	for cluster := c.clusters; cluster > 0; cluster-- {
+		if c.known[cluster] {
+			c.contract(cluster)
+		}
+	}
 	switch {
 	case c.clusters == 1:
 		g.Class = 1
@@ -66,16 +79,15 @@ func (b *builder) classify(bodies, groupOf []int) Group {
 	return g
 }
 
-// contour fuses and contracts a group: bodies with known relative pose are one, and
-// one of known angle between two revolutes is a known distance of them.
-func (b *builder) contour(bodies, groupOf []int) *contour {
-	cluster := b.fused(bodies)
+// contour returns the clusters of a group, given by the root of each body's.
+func (b *builder) contour(bodies, groupOf []int, cluster map[int]int) *contour {
 	name := map[int]int{0: 0}
-	c := &contour{}
+	c := &contour{known: []bool{true}}
 	for _, body := range bodies {
-		if root := cluster[body]; name[root] == 0 && root != 0 {
+		if root := cluster[body]; name[root] == 0 {
 			c.clusters++
 			name[root] = c.clusters
+			c.known = append(c.known, b.class[root] == 0)
 		}
 	}
 	solved := func(body int) bool { return body == 0 || groupOf[body] >= 0 }
@@ -86,12 +98,16 @@ func (b *builder) contour(bodies, groupOf []int) *contour {
 		}
 		c.joints = append(c.joints, contourJoint{kind: jointKind(r.kind), a: i, b: j, pa: b.pin(r.at), pb: b.pin(r.bt)})
 	}
-	for _, body := range bodies {
-		if b.class[body] == 0 && cluster[body] == body {
-			c.contract(name[body])
-		}
-	}
 	return c
+}
+
+// apart makes every body a cluster of its own.
+func apart(bodies []int) map[int]int {
+	root := map[int]int{}
+	for _, body := range bodies {
+		root[body] = body
+	}
+	return root
 }
 
 func jointKind(k rowKind) byte {
@@ -107,10 +123,7 @@ func jointKind(k rowKind) byte {
 // fused returns the root of the cluster of every body of a group: bodies of one
 // class that two rows hold together.
 func (b *builder) fused(bodies []int) map[int]int {
-	root := map[int]int{}
-	for _, body := range bodies {
-		root[body] = body
-	}
+	root := apart(bodies)
 	for merged := true; merged; {
 		merged = false
 		rows := map[[2]int]int{}
@@ -135,7 +148,8 @@ func (b *builder) fused(bodies []int) map[int]int {
 	return root
 }
 
-// contract takes out a cluster that has two revolutes and no other joint.
+// contract takes out a cluster of known angle that has two revolutes and no other
+// joint: it is a known distance between its neighbours.
 func (c *contour) contract(cluster int) {
 	var at []int
 	for i, j := range c.joints {
@@ -163,6 +177,7 @@ func (c *contour) contract(cluster int) {
 	c.joints = slices.Delete(c.joints, at[1], at[1]+1)
 	c.joints[at[0]] = link
 	last := c.clusters
+	c.known[cluster] = c.known[last]
 	for i := range c.joints {
 		j := &c.joints[i]
 		if j.a == last {

@@ -104,6 +104,8 @@ func refusals() []refusal {
 			p.guide(rocker.Line(0, 0, 0), p.Link("block").Line(0, 0, 0))
 			p.turn(4, rocker)
 		}), err: ErrOverconstrained, links: "rocker block", joints: []int{4}, drives: []int{1}},
+		{name: "drive of links fixed to each other", design: with(func(p *plan) { l := p.Link("plate"); p.fix(1, l); p.turn(l, crank) }),
+			err: ErrOverconstrained, links: "crank plate", drives: []int{1}, says: "fixed to each other"},
 		{name: "third crank", design: thirdCrank(0.05), err: ErrOverconstrained, says: "takes a Guess"},
 		{name: "three guides of different slopes that contradict", design: badWedge(), err: ErrInconsistent,
 			links: "frame wedge lifter", joints: []int{0, 1, 2}, says: "by -0.1 rad"},

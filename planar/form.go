@@ -109,10 +109,11 @@ func (e *elimination) solve(reduced form, pivot int) {
 
 // put sets the form of a solved unknown.
 func (e *elimination) put(unknown int, f form) {
+	before := e.forms[unknown]
 	e.solved[unknown] = true
 	e.forms[unknown] = f
 	for _, t := range f.terms {
-		if !slices.Contains(e.users[t.index], unknown) {
+		if _, known := before.of(t.index); !known {
 			e.users[t.index] = append(e.users[t.index], unknown)
 		}
 	}
@@ -143,33 +144,33 @@ func (e *elimination) eliminate(rows []form) (vanished []int) {
 			vanished = append(vanished, i)
 			continue
 		}
-		e.solve(reduced, reduced.terms[len(reduced.terms)-1].index)
+		e.solve(reduced, e.leastUsed(reduced))
 	}
 	return vanished
+}
+
+// leastUsed returns the unknown of a form that the fewest solved ones need, so that
+// few forms change.
+func (e *elimination) leastUsed(f form) int {
+	return slices.MinFunc(f.terms, func(s, t formTerm) int {
+		return len(e.users[s.index]) - len(e.users[t.index])
+	}).index
 }
 
 // kernel returns the null space of the rows, a vector for each free unknown.
 func kernel(rows []form, unknowns int) []form {
 	e := newElimination(unknowns)
 	e.eliminate(rows)
-	vectors := make(map[int]*form)
-	var frees []int
-	for u := range unknowns {
+	vectors := make([]form, unknowns)
+	for u := range unknowns { // in this order, so that terms are sorted
 		if !e.solved[u] {
-			vectors[u] = &form{terms: []formTerm{{u, one}}}
-			frees = append(frees, u)
+			vectors[u].terms = append(vectors[u].terms, formTerm{u, one})
 		}
-	}
-	for u := range unknowns {
 		for _, t := range e.forms[u].terms {
 			vectors[t.index].terms = append(vectors[t.index].terms, formTerm{u, t.by})
 		}
 	}
-	out := make([]form, len(frees))
-	for i, u := range frees {
-		out[i] = *vectors[u]
-	}
-	return out
+	return slices.DeleteFunc(vectors, func(v form) bool { return len(v.terms) == 0 })
 }
 
 // transpose returns the columns of the rows as rows.

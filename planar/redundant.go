@@ -21,7 +21,7 @@ func solvable(d *Design) (*system, error) {
 	if err == nil {
 		return b.system, nil
 	}
-	if b.imbalance == nil || b.imbalance.over == 0 || d.Guess == nil {
+	if b.imbalance == nil || b.imbalance.over == 0 || d.Guess == nil || b.bodies() < 2 {
 		return nil, err
 	}
 	r := relaxation{b: b, aside: aside{}}
@@ -70,6 +70,10 @@ func (p *position) survey() (*survey, bool) {
 // look closes the guess, moves the drives both ways and keeps the positions of
 // largest rank.
 func (r *relaxation) look() error {
+	const limit = 100 // bodies: matrices are dense here
+	if r.b.bodies() > limit {
+		return r.refuse(fmt.Errorf("%w, and of %d bodies, more than %d, which can be left out is not looked for", ErrOverconstrained, r.b.bodies(), limit))
+	}
 	start := r.b.guessed()
 	if gap := start.close(); !(gap <= agree) {
 		return r.refuse(fmt.Errorf("%w: from the guess they miss each other by %.3g m", ErrInconsistent, gap*r.b.length))
@@ -84,13 +88,16 @@ func (r *relaxation) look() error {
 	gap := math.Inf(1)
 	for _, way := range []float64{1, -1} {
 		at, by := start, 0.0
-		for _, to := range []float64{0.003, 0.07, 0.15, 0.23, 0.36, 0.48, 0.61} {
+		for i, to := range []float64{0.003, 0.07, 0.15, 0.23, 0.36, 0.48, 0.61} {
 			at = at.turned(way * (to - by))
 			by = to
 			left := at.close()
 			gap = math.Min(gap, left)
 			if !(left <= agree) {
 				break
+			}
+			if i == 2 || i == 4 || i == 5 {
+				continue // on the way
 			}
 			if s, ok := at.survey(); ok {
 				all = append(all, s)
@@ -190,19 +197,20 @@ type candidate struct {
 }
 
 // choose sets units aside, of the first kind in the order of preference that has
-// one, the cheapest to solve without, until no equation is too many.
+// one, the cheapest to solve without, until no equation is too many. What costs the
+// same goes at once, but for the last one, after which all must be solvable.
 func (r *relaxation) choose() (*system, error) {
 	units := r.candidates()
 	for len(r.positions[0].left) > 0 {
-		best, ok := r.best(units)
-		if !ok {
+		spare := r.cheapest(units)
+		if len(spare) == 0 {
 			return nil, r.refuse(fmt.Errorf("%w: %s too many, and none can be left out", ErrOverconstrained,
 				count(len(r.positions[0].left), "constraint", "constraints")))
 		}
-		r.aside[best.joint] = best.setting
-		for i, s := range r.positions {
-			for _, weight := range best.weights(i) {
-				s.take(best.rows, weight)
+		r.leave(spare[0])
+		for _, c := range spare[1:] {
+			if len(r.positions[0].left) > 1 && c.cost-spare[0].cost < 1e-3 && r.spare(c) {
+				r.leave(c)
 			}
 		}
 	}
@@ -210,24 +218,40 @@ func (r *relaxation) choose() (*system, error) {
 	return b.system, err
 }
 
-// best returns the candidate to set aside next.
-func (r *relaxation) best(units []candidate) (candidate, bool) {
-	var best candidate
-	found := false
+// leave sets a candidate aside.
+func (r *relaxation) leave(c candidate) {
+	r.aside[c.joint] = c.setting
+	for i, s := range r.positions {
+		for _, weight := range c.weights(i) {
+			s.take(c.rows, weight)
+		}
+	}
+}
+
+// cheapest returns the candidates of the first kind that has any, by cost.
+func (r *relaxation) cheapest(units []candidate) []candidate {
+	var out []candidate
 	for _, c := range units {
-		if _, gone := r.aside[c.joint]; gone || found && c.unit > best.unit || !r.spare(c) {
+		if len(out) > 0 && c.unit > out[0].unit {
+			break
+		}
+		if !r.spare(c) {
 			continue
 		}
 		var ok bool
-		if c.cost, ok = r.cost(c); ok && (!found || c.unit < best.unit || c.cost < best.cost) {
-			best, found = c, true
+		if c.cost, ok = r.cost(c); ok {
+			out = append(out, c)
 		}
 	}
-	return best, found
+	slices.SortStableFunc(out, func(c, d candidate) int { return cmp.Compare(c.cost, d.cost) })
+	return out
 }
 
 // spare reports whether the rank stays, at every position, without the candidate.
 func (r *relaxation) spare(c candidate) bool {
+	if _, gone := r.aside[c.joint]; gone {
+		return false
+	}
 	for i, s := range r.positions {
 		t := &survey{position: s.position, left: s.left}
 		for _, weight := range c.weights(i) {
@@ -330,7 +354,7 @@ func (s *survey) take(rows []int, weight []float64) bool {
 	return true
 }
 
-// candidates lists the units, in the order of joints.
+// candidates lists the units, in the order of preference and then of joints.
 func (r *relaxation) candidates() []candidate {
 	var units []candidate
 	add := func(c candidate) { units = append(units, c) }
@@ -360,6 +384,7 @@ func (r *relaxation) candidates() []candidate {
 			add(candidate{joint: t.joint, setting: setting{unit: meshUnit}, rows: []int{len(b.rows) + i}})
 		}
 	}
+	slices.SortStableFunc(units, func(c, d candidate) int { return int(c.unit) - int(d.unit) })
 	return units
 }
 

@@ -269,6 +269,9 @@ func (b *builder) drive(pins *pins) error {
 	drives := map[Drive]int{}
 	for i, m := range b.d.Drives {
 		joint := len(b.d.Joints) + i
+		if l := b.d.linksOf(joint); b.seats[l[0]].body == b.seats[l[1]].body {
+			return b.refuse(fmt.Errorf("%w: a drive of links fixed to each other", ErrOverconstrained), joint)
+		}
 		switch m := m.(type) {
 		case Turn:
 			of, from := b.seats[m.Of], b.seats[m.From]
@@ -310,9 +313,6 @@ func oneWay(m Drive) Drive {
 // reach pins the hidden barrel and rod and drives one along the other.
 func (b *builder) reach(pins *pins, m Reach, drive int) error {
 	joint := len(b.d.Joints) + drive
-	if b.seats[m.A.Link].body == b.seats[m.B.Link].body {
-		return b.refuse(fmt.Errorf("%w: a drive of links fixed to each other", ErrOverconstrained), joint)
-	}
 	first := b.hiddenOf(joint)
 	barrel, rod := first.Line(0, 0, 0), (first+1).Line(0, 0, 0)
 	if err := b.hinge(pins, m.A, first.At(0, 0), joint); err != nil {

@@ -1,5 +1,10 @@
 package planar
 
+import (
+	"fmt"
+	"slices"
+)
+
 // Checks returns what of a linkage is checked instead of solved.
 func Checks(l *Linkage) []string {
 	var units []string
@@ -7,4 +12,35 @@ func Checks(l *Linkage) []string {
 		units = append(units, c.unit)
 	}
 	return units
+}
+
+// Once reports whether every unknown and every row is in one block, and no row
+// needs an unknown of a later one.
+func Once(l *Linkage) error {
+	s := l.system
+	var unknowns, rows []int
+	for _, b := range s.blocks {
+		if len(b.unknowns) != len(b.rows) || len(b.rows) == 0 || b.group < 0 || b.group >= len(s.groups) {
+			return fmt.Errorf("block %+v", b)
+		}
+		unknowns, rows = append(unknowns, b.unknowns...), append(rows, b.rows...)
+		for _, i := range b.rows {
+			for _, body := range []int{s.rows[i].a, s.rows[i].b} {
+				if body > 0 && !slices.Contains(unknowns, s.xy(body)) && !slices.Contains(unknowns, s.xy(body)+1) {
+					return fmt.Errorf("row %d needs body %d before it has a place", i, body)
+				}
+			}
+		}
+	}
+	slices.Sort(unknowns)
+	slices.Sort(rows)
+	if len(unknowns) != s.unknowns() || len(rows) != len(s.rows) {
+		return fmt.Errorf("%d unknowns of %d, %d rows of %d", len(unknowns), s.unknowns(), len(rows), len(s.rows))
+	}
+	for i, u := range unknowns {
+		if u != i || rows[i] != i {
+			return fmt.Errorf("unknown %d and row %d at %d", u, rows[i], i)
+		}
+	}
+	return nil
 }

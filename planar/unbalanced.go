@@ -21,11 +21,10 @@ type imbalance struct {
 func (b *builder) unbalanced() error {
 	q := b.full()
 	of, by := match(q.rows, q.unknowns)
-	q = q.inOrder(components(q.rows, of, by))
+	blocks := components(q.rows, of, by)
+	q = q.inOrder(blocks)
 	var m imbalance
-	columns := transpose(q.rows, q.unknowns)
-	slices.Reverse(columns)
-	left := kernel(columns, len(q.rows))
+	left := kernel(backwards(transpose(q.rows, q.unknowns), blocks, of), len(q.rows))
 	m.over = len(left)
 	for _, v := range left {
 		for _, t := range v.terms {
@@ -41,6 +40,25 @@ func (b *builder) unbalanced() error {
 	}
 	b.imbalance = &m
 	return b.explain(&m)
+}
+
+// backwards returns the columns of unknowns in the order opposite to that of
+// solution, those of no row last.
+func backwards(columns []form, blocks [][]int, of []int) []form {
+	var out []form
+	taken := make([]bool, len(columns))
+	for _, row := range slices.Backward(slices.Concat(blocks...)) {
+		if u := of[row]; u >= 0 {
+			out = append(out, columns[u])
+			taken[u] = true
+		}
+	}
+	for u, column := range columns {
+		if !taken[u] {
+			out = append(out, column)
+		}
+	}
+	return out
 }
 
 // explain makes the imbalance an error.
