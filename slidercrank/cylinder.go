@@ -123,8 +123,11 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 	if knee == rigid.Left {
 		sh = -sh
 	}
-	n := 1 / math.Hypot(sh, ch) // 4rc within rounding: the crank must keep its length
-	sh, ch = sh*n, ch*n
+	n := math.Hypot(sh, ch) // √(4rc) within rounding: the crank must keep its length
+	if n == 0 {             // a crank so short that the length does not tell where it is
+		ch, n = 1, 1
+	}
+	sh, ch = sh/n, ch/n
 	margin := 2 * math.Abs(sh*ch) * k.c / math.Hypot(s, e)
 	turn := rigid.Coordinate{Pos: rigid.Wrap(2 * math.Atan2(sh, ch))}
 	rates := slide.Vel != 0 || slide.Acc != 0
