@@ -114,6 +114,7 @@ type walk struct {
 	legs     [mostHalvings + 2]leg
 	top      int
 	suspect  suspect
+	paced    int // the first op without path rates at the end of the last step, in a linkage with higher groups
 }
 
 // A leg is a step that lies ahead: its end, and how often it has been halved.
@@ -163,12 +164,20 @@ func (s *State) walk(n int, moving bool) error {
 			}
 		}
 	}
+	path, ops := 0.0, len(s.l.program.ops)
+	if len(s.to) == 1 {
+		path = w.from.in[0].Vel
+	}
 	copy(w.from.in, s.to)
 	if !moving {
 		w.from.rest()
 		return s.accept(w.from)
 	}
-	if op := s.l.program.rate(w.from); op < len(s.l.program.ops) {
+	if path != 0 && w.paced == ops {
+		w.from.drive(path, s.to[0])
+		return s.accept(w.from)
+	}
+	if op := s.l.program.rate(w.from); op < ops {
 		return s.fail(op, singular, 1, 1, w.from)
 	}
 	return s.accept(w.from)
@@ -201,10 +210,10 @@ func (w *walk) step(t float64) (st status, op int, cut float64) {
 		w.to.in[i] = rigid.Coordinate{Pos: pos, Vel: d}
 		w.from.in[i].Vel, w.from.in[i].Acc = d, 0
 	}
-	rated := len(p.ops)
-	if len(p.newtons) > 0 {
+	rated, fresh := len(p.ops), false
+	if len(p.newtons) > 0 && !(len(w.to.in) == 1 && w.from.foresee(w.to.in[0].Vel)) {
 		w.from.rest()
-		rated = p.rate(w.from)
+		rated, fresh = p.rate(w.from), true
 	}
 	if st, op = w.place(); st != solved {
 		return st, op, 0.5
@@ -217,12 +226,13 @@ func (w *walk) step(t float64) (st status, op int, cut float64) {
 	if len(w.doubt) == 0 && len(p.newtons) == 0 {
 		return solved, 0, 0
 	}
-	if len(p.newtons) == 0 {
+	if !fresh && len(w.doubt) > 0 {
 		w.from.rest()
 		rated = p.rate(w.from)
 	}
 	w.to.rest()
-	rated = min(rated, p.rate(w.to))
+	w.paced = p.rate(w.to)
+	rated = min(rated, w.paced)
 	if op, cut, ok := w.crossed(size, rated); ok {
 		return tooLong, op, cut
 	}

@@ -22,10 +22,11 @@ type newton struct {
 	n, free, slides int     // unknowns: free angles, then slides
 	length          float64 // of the group: slides are unknowns in units of it
 	psi             []int   // of its free angles, indices into system.free
-	whole           []bool  // of its free angles: whether the angle itself is needed, not its direction alone
+	whole           []int   // of its free angles: those of which whole turns are needed, not the direction alone
 	members         []member
 	tree            []limb
 	loops           []loop
+	chords          []chord // of all loops, in their order
 }
 
 // A member is a body of the group's equations.
@@ -34,6 +35,7 @@ type member struct {
 	own   []term // free angles of the group, by their place in newton.psi
 	rest  angle  // what else its angle is made of, its psi those of earlier steps
 	fixed bool   // rest is a constant
+	same  bool   // its angle is a free one
 	u     r2.Vec // the unit vector at rest, if fixed
 	hangs bool   // its place is found by the group
 }
@@ -56,16 +58,35 @@ type limb struct {
 	back           bool
 }
 
-// A loop is a joint that is left over by the tree.
+// A loop is a joint that is left over by the tree. With C from a's point to b's, u
+// and n = u⊥ turning with a, it asks for
+//
+//	C = 0;  n·C = value;  u·C = value + in;  u·C + rate·(θb − θa) = value
+//
+// where C is, by the limbs, a sum of chords between the origins of two known bodies:
+//
+//	C = origin of to − origin of from + Σ chords
 type loop struct {
-	kind   rowKind // rowX stands for both rows of a pin
-	a, b   int
-	pa, pb r2.Vec
-	u      r2.Vec
-	value  float64
-	drive  int
-	rate   float64
-	phase  int // index of the joint whose phase is read at Assemble, or −1
+	kind     rowKind // rowX stands for both rows of a pin
+	a, b     int
+	u        r2.Vec
+	value    float64
+	drive    int
+	rate     float64
+	phase    int // index of the joint whose phase is read at Assemble, or −1
+	from, to int // known members
+	// of newton.chords: those fixed in known bodies, then those that the unknowns move
+	still, moved, end int
+}
+
+// A chord is a vector fixed in a member; with a slide, so many times the vector.
+type chord struct {
+	member int
+	v      r2.Vec
+	slide  int     // or −1
+	col    int     // of the free angle that turns the member, where it is one; else −1
+	coef   float64 // of that
+	mixed  bool    // more than one does
 }
 
 // largestGroup is the number of unknowns up to which the dense factors of a group
@@ -85,7 +106,6 @@ func newNewton(s *system, b *block) (*newton, error) {
 		}
 	}
 	n.free = len(n.psi)
-	n.whole = make([]bool, n.free)
 	for _, i := range b.rows {
 		r := &s.rows[i]
 		n.member(s, r.a, placed)
@@ -97,20 +117,12 @@ func newNewton(s *system, b *block) (*newton, error) {
 	}
 	n.span(s, b.rows)
 	n.n = n.free + n.slides
+	n.count()
 	rows := 0
 	for i := range n.loops {
 		rows++
 		if n.loops[i].kind == rowX {
 			rows++
-		}
-		if n.loops[i].kind == rowRack {
-			n.count(n.loops[i].a)
-			n.count(n.loops[i].b)
-		}
-	}
-	for i := range n.members {
-		if m := &n.members[i]; len(m.own) > 0 && !m.plain() {
-			n.count(i)
 		}
 	}
 	if rows != n.n {
@@ -122,10 +134,26 @@ func newNewton(s *system, b *block) (*newton, error) {
 	return n, nil
 }
 
-// count notes that a member's angle is needed over whole turns.
-func (n *newton) count(i int) {
-	for _, t := range n.members[i].own {
-		n.whole[t.Index] = true
+// count notes which angles are needed over whole turns: those in racks, and those
+// that turn a member at another speed.
+func (n *newton) count() {
+	see := func(i int) {
+		for _, t := range n.members[i].own {
+			if !slices.Contains(n.whole, t.Index) {
+				n.whole = append(n.whole, t.Index)
+			}
+		}
+	}
+	for i := range n.loops {
+		if l := &n.loops[i]; l.kind == rowRack {
+			see(l.a)
+			see(l.b)
+		}
+	}
+	for i := range n.members {
+		if m := &n.members[i]; len(m.own) > 0 && !m.plain() {
+			see(i)
+		}
 	}
 }
 
@@ -145,71 +173,7 @@ func (n *newton) member(s *system, body int, placed map[int]bool) int {
 		}
 	}
 	m.fixed = len(m.rest.psi)+len(m.rest.in)+len(m.rest.phase) == 0
+	m.same = m.fixed && m.plain() && m.own[0].Coef == 1 && form.Const == 0
 	n.members = append(n.members, m)
 	return len(n.members) - 1
-}
-
-// span grows the tree by pins, then by guides, and leaves the other joints as
-// loops. A body that neither reaches floats: its place is two slides.
-func (n *newton) span(s *system, rows []int) {
-	hung := make([]bool, len(n.members))
-	for i := range n.members {
-		hung[i] = !n.members[i].hangs
-	}
-	used := make([]bool, len(rows))
-	grow := func(kind rowKind) bool {
-		for k, i := range rows {
-			r := &s.rows[i]
-			a, b := n.member(s, r.a, nil), n.member(s, r.b, nil)
-			if used[k] || r.kind != kind || hung[a] == hung[b] {
-				continue
-			}
-			used[k] = true
-			n.hang(r, a, b, hung[b])
-			hung[a], hung[b] = true, true
-			return true
-		}
-		return false
-	}
-	for {
-		if grow(rowX) || grow(rowGuide) {
-			continue
-		}
-		i := slices.Index(hung, false)
-		if i < 0 {
-			break
-		}
-		hung[i] = true
-		n.tree = append(n.tree, limb{base: -1, member: i, slide: n.slide(2)})
-	}
-	for k, i := range rows {
-		r := &s.rows[i]
-		if used[k] || r.kind == rowY {
-			continue
-		}
-		l := loop{kind: r.kind, a: n.member(s, r.a, nil), b: n.member(s, r.b, nil), pa: r.pa, pb: r.pb, u: r.u, value: r.value, drive: r.drive, rate: r.rate, phase: -1}
-		if r.phased {
-			l.phase = r.joint
-		}
-		n.loops = append(n.loops, l)
-	}
-}
-
-// slide enters new unknown slides, and returns the first.
-func (n *newton) slide(more int) int {
-	n.slides += more
-	return n.slides - more
-}
-
-// hang enters a limb: b on a, or a on b if back. A guide's line is fixed in a.
-func (n *newton) hang(r *row, a, b int, back bool) {
-	l := limb{base: a, member: b, pBase: r.pa, pMember: r.pb, slide: -1, back: back}
-	if r.kind == rowGuide {
-		l.slide, l.u = n.slide(1), r.u
-		l.pBase = r2.Add(r.pa, r2.Scale(r.value, r2.Vec{X: -r.u.Y, Y: r.u.X}))
-	}
-	if back {
-		l.base, l.member, l.pBase, l.pMember = b, a, l.pMember, l.pBase
-	}
-	n.tree = append(n.tree, l)
 }

@@ -27,6 +27,7 @@ func (n *newton) assemble(sc *scene, d *desk) status {
 	}
 	n.lay(sc, d)
 	d.factor()
+	n.pose(sc, d)
 	return solved
 }
 

@@ -15,52 +15,73 @@ import (
 const (
 	widest    = 0.1
 	contracts = 0.25
-	settled   = 1e-9 // the square of a correction so small is rounding
+	settled   = 1e-9  // the square of a correction so small is rounding
+	reused    = 1e-5  // after a correction so small the factors are good for one more
+	rounding  = 1e-17 // what the next correction would be, to end with
 	mostTurns = 16
 )
 
-// place solves the place of the unit at to.in, from the workspace p of the
-// place before. Its rates are path rates: in one unit of time the inputs there go to
-// those of to, at constant speed, so that the predictor is
+// place solves the place of the unit at to.in, from the workspace p of the place
+// before. Its rates, times pathScale, are path rates: in one unit of time the inputs
+// there go to those of to, at constant speed, so that the predictor is
 //
 //	q = q₀ + q̇₀ + q̈₀/2
 //
 // It returns solved, or tooLong where the first correction is over 0.1, the second
 // over a quarter of the first, or the determinant changes its sign.
 func (n *newton) place(to *scene, p, d *desk) status {
-	for k := range n.free {
-		h := p.vel[k] + p.acc[k]/2
-		turnBy(d.dir[2*k:], p.dir[2*k:], h/2*(1+h*h/12)) // tan(h/2)
-		d.angle[k] = p.angle[k] + h
-	}
-	for i := range n.slides {
-		k := n.free + i
-		d.slide[i] = p.slide[i] + (p.vel[k]+p.acc[k]/2)*n.length
-	}
-	n.rewind(d)
+	n.predict(p, d)
 	n.prepare(to, d)
-	sign, first := p.last[detSign], 0.0
-	for turn := range mostTurns {
-		n.lay(to, d)
-		if !d.factor() || d.last[detSign]*sign < 0 {
+	sign := p.last[detSign]
+	if !n.slopes(to, d, sign) {
+		return n.fail(d)
+	}
+	size := n.correct(d, nil, 0)
+	if !(size <= widest) {
+		return n.fail(d)
+	}
+	fresh := true
+	for turn := 0; !(fresh && size <= settled); turn++ {
+		if fresh = size > reused; !fresh {
+			n.lay(to, d)
+		} else if !n.slopes(to, d, sign) {
+			return n.fail(d)
+		}
+		next := n.correct(d, nil, 0)
+		if turn == 0 && next > math.Max(contracts*size, settled) || turn == mostTurns || next != next {
+			return n.fail(d)
+		}
+		if next <= settled && (next*next <= rounding*size || next > contracts*size) {
 			break
 		}
-		size := n.correct(d, nil, 0)
-		switch {
-		case !(size <= widest), turn == 1 && size > math.Max(contracts*first, settled):
-			return n.fail(d)
-		case size <= settled:
-			n.lay(to, d)
-			if !d.factor() || d.last[detSign]*sign < 0 {
-				return n.fail(d)
-			}
-			return solved
-		}
-		if turn == 0 {
-			first = size
-		}
+		size = next
 	}
-	return n.fail(d)
+	if !n.slopes(to, d, sign) {
+		return n.fail(d)
+	}
+	n.pose(to, d)
+	return solved
+}
+
+// slopes writes what the loops miss and the factors of their slopes, and reports
+// whether their determinant has the sign given, or that is 0.
+func (n *newton) slopes(to *scene, d *desk, sign float64) bool {
+	n.lay(to, d)
+	return d.factor() && d.last[detSign]*sign >= 0
+}
+
+func (n *newton) predict(p, d *desk) {
+	k := p.last[pathScale]
+	half := k * k / 2
+	for i := range n.free {
+		h := k*p.vel[i] + half*p.acc[i]
+		turnBy(d.dir[2*i:2*i+2], p.dir[2*i:2*i+2], h/2*(1+h*h/12)) // tan(h/2)
+		d.angle[i] = p.angle[i] + h
+	}
+	for i := range n.slides {
+		d.slide[i] = p.slide[i] + (k*p.vel[n.free+i]+half*p.acc[n.free+i])*n.length
+	}
+	n.rewind(d)
 }
 
 func (n *newton) fail(d *desk) status {
@@ -84,10 +105,8 @@ func turnBy(to, from []float64, t float64) {
 // rewind sets the angles that are needed over whole turns by their unit vectors, so
 // that sums of corrections don't drift away from them.
 func (n *newton) rewind(d *desk) {
-	for k, whole := range n.whole {
-		if whole {
-			d.angle[k] = rigid.Nearest(math.Atan2(d.dir[2*k+1], d.dir[2*k]), d.angle[k])
-		}
+	for _, k := range n.whole {
+		d.angle[k] = rigid.Nearest(math.Atan2(d.dir[2*k+1], d.dir[2*k]), d.angle[k])
 	}
 }
 
@@ -115,7 +134,7 @@ func (n *newton) correct(d *desk, base []float64, share float64) float64 {
 // take makes k times a correction.
 func (n *newton) take(d *desk, x []float64, k float64) {
 	for i := range n.free {
-		turnBy(d.dir[2*i:], d.dir[2*i:], -k*x[i]/2)
+		turnBy(d.dir[2*i:2*i+2], d.dir[2*i:2*i+2], -k*x[i]/2)
 		d.angle[i] -= k * x[i]
 	}
 	for i := range n.slides {
@@ -124,20 +143,39 @@ func (n *newton) take(d *desk, x []float64, k float64) {
 	n.rewind(d)
 }
 
-// prepare sets what the group does not turn of its members' angles.
+// prepare sets what the unknowns do not change: angles of the members without the
+// group's own, the chords in known bodies.
 func (n *newton) prepare(sc *scene, d *desk) {
 	for i := range n.members {
-		m, rest := &n.members[i], d.rest[3*i:]
-		if len(m.own) == 0 {
-			continue
-		}
-		if m.fixed {
+		m, rest := &n.members[i], d.rest[3*i:3*i+3]
+		switch {
+		case len(m.own) == 0:
+			u := sc.m[m.body].Pose.Axis
+			d.axis[2*i], d.axis[2*i+1] = u.X, u.Y
+		case m.fixed:
 			rest[0], rest[1], rest[2] = m.u.X, m.u.Y, m.rest.Const
-			continue
+		default:
+			rest[2] = m.rest.value(sc)
+			rest[1], rest[0] = trig.Sincos(rest[2])
 		}
-		rest[2] = m.rest.value(sc)
-		rest[1], rest[0] = trig.Sincos(rest[2])
 	}
+	for i := range n.loops {
+		l := &n.loops[i]
+		c := r2.Sub(sc.m[n.members[l.to].body].Pose.Origin, sc.m[n.members[l.from].body].Pose.Origin)
+		for k := l.still; k < l.moved; k++ {
+			c = r2.Add(c, n.turnChord(d, k))
+		}
+		d.fixed[2*i], d.fixed[2*i+1] = c.X, c.Y
+	}
+}
+
+// turnChord turns a chord into the frame.
+func (n *newton) turnChord(d *desk, k int) r2.Vec {
+	a := &n.chords[k]
+	x, y := d.axis[2*a.member], d.axis[2*a.member+1]
+	r := r2.Vec{X: x*a.v.X - y*a.v.Y, Y: x*a.v.Y + y*a.v.X}
+	d.chords[2*k], d.chords[2*k+1] = r.X, r.Y
+	return r
 }
 
 // value returns an angle whose free angles are known.
@@ -168,145 +206,24 @@ func (n *newton) total(sc *scene, d *desk, i int) float64 {
 	return sum
 }
 
-// axis returns the unit vector of a member that the group turns.
-func (n *newton) axis(sc *scene, d *desk, i int) r2.Vec {
-	m := &n.members[i]
-	if !m.plain() {
-		s, c := trig.Sincos(n.total(sc, d, i))
-		return r2.Vec{X: c, Y: s}
-	}
-	t := m.own[0]
-	dir := r2.Vec{X: d.dir[2*t.Index], Y: t.Coef * d.dir[2*t.Index+1]}
-	u := turned(dir, r2.Vec{X: d.rest[3*i], Y: d.rest[3*i+1]})
-	unit := 1.5 - 0.5*(u.X*u.X+u.Y*u.Y)
-	return r2.Vec{X: unit * u.X, Y: unit * u.Y}
-}
-
-// lay places the members by the unknowns, and writes the slopes of their origins
-// and what the loops miss, with its slopes.
-func (n *newton) lay(sc *scene, d *desk) {
+// turn sets the unit vectors of the members that the group turns.
+func (n *newton) turn(sc *scene, d *desk) {
 	for i := range n.members {
-		if m := &n.members[i]; len(m.own) > 0 {
-			sc.m[m.body].Pose.Axis = n.axis(sc, d, i)
+		m := &n.members[i]
+		u := d.axis[2*i : 2*i+2]
+		switch {
+		case len(m.own) == 0:
+		case m.same:
+			k := 2 * m.own[0].Index
+			u[0], u[1] = d.dir[k], d.dir[k+1]
+		case m.plain():
+			k, rest := 2*m.own[0].Index, d.rest[3*i:3*i+2]
+			x, y := d.dir[k], m.own[0].Coef*d.dir[k+1]
+			x, y = x*rest[0]-y*rest[1], x*rest[1]+y*rest[0]
+			unit := 1.5 - 0.5*(x*x+y*y)
+			u[0], u[1] = unit*x, unit*y
+		default:
+			u[1], u[0] = trig.Sincos(n.total(sc, d, i))
 		}
-	}
-	for i := range n.tree {
-		n.layLimb(sc, d, &n.tree[i], d.arms[6*i:6*i+6])
-	}
-	row := 0
-	for i := range n.loops {
-		k := len(n.tree) + i
-		row += n.layLoop(sc, d, &n.loops[i], d.arms[6*k:6*k+6], row)
-	}
-}
-
-func (n *newton) layLimb(sc *scene, d *desk, l *limb, arms []float64) {
-	to := &sc.m[n.members[l.member].body]
-	slope := d.slope[2*n.n*l.member:][:2*n.n]
-	if l.base < 0 {
-		to.Pose.Origin = r2.Vec{X: d.slide[l.slide], Y: d.slide[l.slide+1]}
-		k := 2 * (n.free + l.slide)
-		slope[k], slope[k+3] = n.length, n.length
-		return
-	}
-	from := &sc.m[n.members[l.base].body]
-	base, member := l.pBase, l.pMember
-	var u r2.Vec
-	if l.slide >= 0 {
-		along := r2.Scale(d.slide[l.slide], l.u)
-		if l.back {
-			member, u = r2.Add(member, along), turned(to.Pose.Axis, l.u)
-		} else {
-			base, u = r2.Add(base, along), turned(from.Pose.Axis, l.u)
-		}
-	}
-	base, member = turned(from.Pose.Axis, base), turned(to.Pose.Axis, member)
-	arms[0], arms[1], arms[2], arms[3], arms[4], arms[5] = base.X, base.Y, member.X, member.Y, u.X, u.Y
-	to.Pose.Origin = r2.Vec{X: from.Pose.Origin.X + base.X - member.X, Y: from.Pose.Origin.Y + base.Y - member.Y}
-	copy(slope, d.slope[2*n.n*l.base:][:2*n.n])
-	n.addTurn(slope, l.base, base, 1)
-	n.addTurn(slope, l.member, member, -1)
-	if l.slide >= 0 {
-		k, sign := 2*(n.free+l.slide), n.length
-		if l.back {
-			sign = -sign
-		}
-		slope[k] += sign * u.X
-		slope[k+1] += sign * u.Y
-	}
-}
-
-// addTurn adds sign times the derivatives of an arm that turns with a member.
-func (n *newton) addTurn(slope []float64, member int, arm r2.Vec, sign float64) {
-	for _, t := range n.members[member].own {
-		k := sign * t.Coef
-		slope[2*t.Index] -= k * arm.Y
-		slope[2*t.Index+1] += k * arm.X
-	}
-}
-
-// layLoop writes what a loop misses with its slopes, and returns its number of
-// equations. With C from a's point to b's, u and n = u⊥ turning with a:
-//
-//	C = 0;  n·C = value;  u·C = value + in;  u·C + rate·(θb − θa) = value
-func (n *newton) layLoop(sc *scene, d *desk, l *loop, arms []float64, row int) int {
-	a, b := &sc.m[n.members[l.a].body], &sc.m[n.members[l.b].body]
-	ra, rb := turned(a.Pose.Axis, l.pa), turned(b.Pose.Axis, l.pb)
-	u := turned(a.Pose.Axis, l.u)
-	arms[0], arms[1], arms[2], arms[3], arms[4], arms[5] = ra.X, ra.Y, rb.X, rb.Y, u.X, u.Y
-	c := r2.Vec{
-		X: b.Pose.Origin.X - a.Pose.Origin.X + rb.X - ra.X,
-		Y: b.Pose.Origin.Y - a.Pose.Origin.Y + rb.Y - ra.Y,
-	}
-	slope := d.temp
-	sb, sa := d.slope[2*n.n*l.b:][:2*n.n], d.slope[2*n.n*l.a:][:2*n.n]
-	for k := range slope {
-		slope[k] = sb[k] - sa[k]
-	}
-	n.addTurn(slope, l.b, rb, 1)
-	n.addTurn(slope, l.a, ra, -1)
-	j := d.j[row*n.n:][:n.n]
-	if l.kind == rowX {
-		next := d.j[(row+1)*n.n:][:n.n]
-		for k := range j {
-			j[k], next[k] = slope[2*k], slope[2*k+1]
-		}
-		d.miss[row], d.miss[row+1] = c.X, c.Y
-		return 2
-	}
-	along, beside := u.X*c.X+u.Y*c.Y, u.X*c.Y-u.Y*c.X
-	v, miss, turns := u, along-l.value, beside
-	if l.kind == rowGuide {
-		v, miss, turns = r2.Vec{X: -u.Y, Y: u.X}, beside-l.value, -along
-	}
-	for k := range j {
-		j[k] = v.X*slope[2*k] + v.Y*slope[2*k+1]
-	}
-	for _, t := range n.members[l.a].own {
-		j[t.Index] += t.Coef * turns
-	}
-	switch l.kind {
-	case rowSlide:
-		if l.drive >= 0 {
-			miss -= sc.in[l.drive].Pos
-		}
-	case rowRack:
-		miss += l.rate * (n.total(sc, d, l.b) - n.total(sc, d, l.a))
-		if l.phase >= 0 {
-			miss -= sc.phase[l.phase]
-		}
-		n.addRate(j, l)
-	}
-	d.miss[row] = miss
-	return 1
-}
-
-// addRate adds the derivatives of rate·(θb − θa).
-func (n *newton) addRate(j []float64, l *loop) {
-	for _, t := range n.members[l.b].own {
-		j[t.Index] += l.rate * t.Coef
-	}
-	for _, t := range n.members[l.a].own {
-		j[t.Index] -= l.rate * t.Coef
 	}
 }

@@ -16,184 +16,126 @@ import (
 // all velocities in them.
 func (n *newton) rates(sc *scene, d *desk) {
 	n.knownRates(sc, d)
-	n.driftVel(sc, d)
+	row := 0
+	for i := range n.loops {
+		row += n.driftVel(sc, d, i, row)
+	}
 	d.solve(d.vel)
 	for i := range n.members {
-		m := &n.members[i]
-		if len(m.own) > 0 {
-			b := &sc.m[m.body]
-			b.Omega = d.known[2*i]
-			for _, t := range m.own {
-				b.Omega += t.Coef * d.vel[t.Index]
-			}
+		w := d.turn[3*i]
+		for _, t := range n.members[i].own {
+			w += t.Coef * d.vel[t.Index]
 		}
-		if m.hangs {
-			sc.m[m.body].Vel = n.sweep(d, i, d.drift[4*i], d.drift[4*i+1], d.vel)
-		}
+		d.turn[3*i+2] = w
 	}
-	n.driftAcc(sc, d)
+	row = 0
+	for i := range n.loops {
+		row += n.driftAcc(sc, d, i, row)
+	}
 	d.solve(d.acc)
-	for i := range n.members {
-		m := &n.members[i]
-		if len(m.own) > 0 {
-			b := &sc.m[m.body]
-			b.Alpha = d.known[2*i+1]
-			for _, t := range m.own {
-				b.Alpha += t.Coef * d.acc[t.Index]
-			}
-		}
-		if m.hangs {
-			sc.m[m.body].Acc = n.sweep(d, i, d.drift[4*i+2], d.drift[4*i+3], d.acc)
-		}
-	}
+	n.spread(sc, d)
 }
 
 // still notes that the rates are not determined.
 func (d *desk) still() {
 	clear(d.vel)
 	clear(d.acc)
-}
-
-// sweep adds to the velocity or acceleration of an origin what the unknowns do.
-func (n *newton) sweep(d *desk, member int, x, y float64, unknowns []float64) r2.Vec {
-	slope := d.slope[2*n.n*member:][:2*n.n]
-	for k, v := range unknowns {
-		x += slope[2*k] * v
-		y += slope[2*k+1] * v
-	}
-	return r2.Vec{X: x, Y: y}
+	d.last[pathSpeed], d.last[pathScale] = 0, 0
 }
 
 func (n *newton) knownRates(sc *scene, d *desk) {
 	for i := range n.members {
 		m := &n.members[i]
-		b := &sc.m[m.body]
-		known, drift := d.known[2*i:], d.drift[4*i:]
-		if len(m.own) == 0 {
-			known[0], known[1] = b.Omega, b.Alpha
-		} else {
-			known[0], known[1] = 0, 0
+		vel, acc := 0.0, 0.0
+		switch {
+		case len(m.own) == 0:
+			vel, acc = sc.m[m.body].Omega, sc.m[m.body].Alpha
+		case !m.fixed:
 			for _, t := range m.rest.psi {
-				known[0] += t.Coef * sc.psi[t.Index].Vel
-				known[1] += t.Coef * sc.psi[t.Index].Acc
+				vel += t.Coef * sc.psi[t.Index].Vel
+				acc += t.Coef * sc.psi[t.Index].Acc
 			}
 			for _, t := range m.rest.in {
-				known[0] += t.Coef * sc.in[t.Index].Vel
-				known[1] += t.Coef * sc.in[t.Index].Acc
+				vel += t.Coef * sc.in[t.Index].Vel
+				acc += t.Coef * sc.in[t.Index].Acc
 			}
 		}
-		if !m.hangs {
-			drift[0], drift[1], drift[2], drift[3] = b.Vel.X, b.Vel.Y, b.Acc.X, b.Acc.Y
-		}
+		d.turn[3*i], d.turn[3*i+1] = vel, acc
 	}
 }
 
-// driftVel writes the velocities of origins without the unknown ones, and the
-// negative of what that leaves the loops.
-func (n *newton) driftVel(sc *scene, d *desk) {
-	for i := range n.tree {
-		l, arms, drift := &n.tree[i], d.arms[6*i:], d.drift[4*n.tree[i].member:]
-		if l.base < 0 {
-			drift[0], drift[1] = 0, 0
-			continue
-		}
-		from := d.drift[4*l.base:]
-		wa, wb := d.known[2*l.base], d.known[2*l.member]
-		drift[0] = from[0] - wa*arms[1] + wb*arms[3]
-		drift[1] = from[1] + wa*arms[0] - wb*arms[2]
+// chord returns a chord in the frame, times its slide.
+func (n *newton) chord(d *desk, k int) r2.Vec {
+	r := r2.Vec{X: d.chords[2*k], Y: d.chords[2*k+1]}
+	if s := n.chords[k].slide; s >= 0 {
+		r = r2.Vec{X: d.slide[s] * r.X, Y: d.slide[s] * r.Y}
 	}
-	row := 0
-	for i := range n.loops {
-		l, arms := &n.loops[i], d.arms[6*(len(n.tree)+i):]
-		a, b := d.drift[4*l.a:], d.drift[4*l.b:]
-		wa, wb := d.known[2*l.a], d.known[2*l.b]
-		c := r2.Vec{
-			X: b[0] - a[0] - wb*arms[3] + wa*arms[1],
-			Y: b[1] - a[1] + wb*arms[2] - wa*arms[0],
-		}
-		if l.kind == rowX {
-			d.vel[row], d.vel[row+1] = -c.X, -c.Y
-			row += 2
-			continue
-		}
-		u := r2.Vec{X: arms[4], Y: arms[5]}
-		along, beside := n.offset(sc, l, arms)
-		switch l.kind {
-		case rowGuide:
-			d.vel[row] = -(cross(u, c) - wa*along)
-		case rowSlide:
-			d.vel[row] = -(r2.Dot(u, c) + wa*beside)
-			if l.drive >= 0 {
-				d.vel[row] += sc.in[l.drive].Vel
-			}
-		case rowRack:
-			d.vel[row] = -(r2.Dot(u, c) + wa*beside + l.rate*(wb-wa))
-		}
-		row++
-	}
+	return r
 }
 
-// offset returns u·C and n·C of a loop.
-func (n *newton) offset(sc *scene, l *loop, arms []float64) (along, beside float64) {
-	a, b := &sc.m[n.members[l.a].body], &sc.m[n.members[l.b].body]
-	c := r2.Vec{
-		X: b.Pose.Origin.X - a.Pose.Origin.X + arms[2] - arms[0],
-		Y: b.Pose.Origin.Y - a.Pose.Origin.Y + arms[3] - arms[1],
+// driftVel writes the negative of the velocity that a loop has without the unknown
+// ones, and returns its number of equations.
+func (n *newton) driftVel(sc *scene, d *desk, i, row int) int {
+	l := &n.loops[i]
+	to, from := &sc.m[n.members[l.to].body], &sc.m[n.members[l.from].body]
+	c := r2.Vec{X: to.Vel.X - from.Vel.X, Y: to.Vel.Y - from.Vel.Y}
+	for k := l.still; k < l.end; k++ {
+		if w := d.turn[3*n.chords[k].member]; w != 0 {
+			r := n.chord(d, k)
+			c.X -= w * r.Y
+			c.Y += w * r.X
+		}
 	}
-	u := r2.Vec{X: arms[4], Y: arms[5]}
-	return r2.Dot(u, c), cross(u, c)
+	if l.kind == rowX {
+		d.vel[row], d.vel[row+1] = -c.X, -c.Y
+		return 2
+	}
+	u, along, beside := n.line(d, i)
+	wa, wb := d.turn[3*l.a], d.turn[3*l.b]
+	switch l.kind {
+	case rowGuide:
+		d.vel[row] = -(cross(u, c) - wa*along)
+	case rowSlide:
+		d.vel[row] = -(r2.Dot(u, c) + wa*beside)
+		if l.drive >= 0 {
+			d.vel[row] += sc.in[l.drive].Vel
+		}
+	case rowRack:
+		d.vel[row] = -(r2.Dot(u, c) + wa*beside + l.rate*(wb-wa))
+	}
+	return 1
 }
 
-// driftAcc writes the accelerations of origins without the unknown ones, and the
-// negative of what that leaves the loops. With ω turning u and n = u⊥,
+// driftAcc writes the negative of the acceleration that a loop has without the
+// unknown ones. With ω turning u and n = u⊥,
 //
 //	(n·C)″ = n·C″ − 2ω u·C′ − α u·C − ω² n·C
 //	(u·C)″ = u·C″ + 2ω n·C′ + α n·C − ω² u·C
-func (n *newton) driftAcc(sc *scene, d *desk) {
-	for i := range n.tree {
-		l, arms, drift := &n.tree[i], d.arms[6*i:6*i+6], d.drift[4*n.tree[i].member:]
-		if l.base < 0 {
-			drift[2], drift[3] = 0, 0
-			continue
-		}
-		from := d.drift[4*l.base:]
-		a, b := &sc.m[n.members[l.base].body], &sc.m[n.members[l.member].body]
-		pull := centripetal(d.known[2*l.base+1], a.Omega, arms[0], arms[1])
-		less := centripetal(d.known[2*l.member+1], b.Omega, arms[2], arms[3])
-		drift[2] = from[2] + pull.X - less.X
-		drift[3] = from[3] + pull.Y - less.Y
-		if l.slide >= 0 { // 2ω×(sliding velocity)
-			k := 2 * d.vel[n.free+l.slide] * n.length * a.Omega
-			if l.back {
-				k = -2 * d.vel[n.free+l.slide] * n.length * b.Omega
-			}
-			drift[2] -= k * arms[5]
-			drift[3] += k * arms[4]
+func (n *newton) driftAcc(sc *scene, d *desk, i, row int) int {
+	l := &n.loops[i]
+	to, from := &sc.m[n.members[l.to].body], &sc.m[n.members[l.from].body]
+	v := r2.Vec{X: to.Vel.X - from.Vel.X, Y: to.Vel.Y - from.Vel.Y}
+	c := r2.Vec{X: to.Acc.X - from.Acc.X, Y: to.Acc.Y - from.Acc.Y}
+	for k := l.still; k < l.end; k++ {
+		a, r := &n.chords[k], n.chord(d, k)
+		w, al := d.turn[3*a.member+2], d.turn[3*a.member+1]
+		c.X -= al*r.Y + w*w*r.X
+		c.Y += al*r.X - w*w*r.Y
+		v.X -= w * r.Y
+		v.Y += w * r.X
+		if a.slide >= 0 {
+			speed := d.vel[n.free+a.slide] * n.length
+			x, y := speed*d.chords[2*k], speed*d.chords[2*k+1]
+			v.X, v.Y = v.X+x, v.Y+y
+			c.X, c.Y = c.X-2*w*y, c.Y+2*w*x
 		}
 	}
-	row := 0
-	for i := range n.loops {
-		row += n.driftLoop(sc, d, &n.loops[i], d.arms[6*(len(n.tree)+i):][:6], row)
-	}
-}
-
-func (n *newton) driftLoop(sc *scene, d *desk, l *loop, arms []float64, row int) int {
-	a, b := &sc.m[n.members[l.a].body], &sc.m[n.members[l.b].body]
-	da, db := d.drift[4*l.a:], d.drift[4*l.b:]
-	pull := centripetal(d.known[2*l.b+1], b.Omega, arms[2], arms[3])
-	less := centripetal(d.known[2*l.a+1], a.Omega, arms[0], arms[1])
-	c := r2.Vec{X: db[2] - da[2] + pull.X - less.X, Y: db[3] - da[3] + pull.Y - less.Y}
 	if l.kind == rowX {
 		d.acc[row], d.acc[row+1] = -c.X, -c.Y
 		return 2
 	}
-	u := r2.Vec{X: arms[4], Y: arms[5]}
-	along, beside := n.offset(sc, l, arms)
-	v := r2.Vec{
-		X: b.Vel.X - a.Vel.X - b.Omega*arms[3] + a.Omega*arms[1],
-		Y: b.Vel.Y - a.Vel.Y + b.Omega*arms[2] - a.Omega*arms[0],
-	}
-	w, al := a.Omega, d.known[2*l.a+1]
+	u, along, beside := n.line(d, i)
+	w, al := d.turn[3*l.a+2], d.turn[3*l.a+1]
 	switch l.kind {
 	case rowGuide:
 		d.acc[row] = -(cross(u, c) - 2*w*r2.Dot(u, v) - al*along - w*w*beside)
@@ -203,22 +145,62 @@ func (n *newton) driftLoop(sc *scene, d *desk, l *loop, arms []float64, row int)
 			d.acc[row] += sc.in[l.drive].Acc
 		}
 	case rowRack:
-		d.acc[row] = -(r2.Dot(u, c) + 2*w*cross(u, v) + al*beside - w*w*along + l.rate*(d.known[2*l.b+1]-al))
+		d.acc[row] = -(r2.Dot(u, c) + 2*w*cross(u, v) + al*beside - w*w*along + l.rate*(d.turn[3*l.b+1]-al))
 	}
 	return 1
 }
 
-// centripetal returns α×r − ω²r.
-func centripetal(al, w, x, y float64) r2.Vec {
-	return r2.Vec{X: -al*y - w*w*x, Y: al*x - w*w*y}
+// spread gives the members the rates that follow from those of the unknowns.
+func (n *newton) spread(sc *scene, d *desk) {
+	for i := range n.members {
+		m := &n.members[i]
+		if len(m.own) == 0 {
+			continue
+		}
+		al := d.turn[3*i+1]
+		for _, t := range m.own {
+			al += t.Coef * d.acc[t.Index]
+		}
+		sc.m[m.body].Omega, sc.m[m.body].Alpha = d.turn[3*i+2], al
+	}
+	for i := range n.tree {
+		l := &n.tree[i]
+		to := &sc.m[n.members[l.member].body]
+		if l.base < 0 {
+			k := n.free + l.slide
+			to.Vel = r2.Vec{X: n.length * d.vel[k], Y: n.length * d.vel[k+1]}
+			to.Acc = r2.Vec{X: n.length * d.acc[k], Y: n.length * d.acc[k+1]}
+			continue
+		}
+		from := &sc.m[n.members[l.base].body]
+		p, q := n.ends(d, l, from.Pose.Axis, to.Pose.Axis)
+		v, w, al, be := from.Omega, to.Omega, from.Alpha, to.Alpha
+		vel := r2.Vec{X: from.Vel.X - v*p.Y + w*q.Y, Y: from.Vel.Y + v*p.X - w*q.X}
+		acc := r2.Vec{
+			X: from.Acc.X - al*p.Y - v*v*p.X + be*q.Y + w*w*q.X,
+			Y: from.Acc.Y + al*p.X - v*v*p.Y - be*q.X + w*w*q.Y,
+		}
+		if l.slide >= 0 { // along the line of one of them
+			k, u, turn := n.free+l.slide, turned(from.Pose.Axis, l.u), v
+			sign := n.length
+			if l.back {
+				u, turn, sign = turned(to.Pose.Axis, l.u), w, -sign
+			}
+			s, ss := sign*d.vel[k], sign*d.acc[k]
+			vel = r2.Vec{X: vel.X + s*u.X, Y: vel.Y + s*u.Y}
+			acc = r2.Vec{X: acc.X + ss*u.X - 2*turn*s*u.Y, Y: acc.Y + ss*u.Y + 2*turn*s*u.X}
+		}
+		to.Vel, to.Acc = vel, acc
+	}
 }
 
 // agrees reports whether path rates at both ends of a step fit each other:
 // |v₁ − v₀ − a₀| ≤ 0.1 of every unknown, with the rates by the same unit of time as
 // in place, those of the start in p.
 func (d *desk) agrees(p *desk) bool {
-	for k, v := range d.vel {
-		if !(math.Abs(v-p.vel[k]-p.acc[k]) <= widest) {
+	k := p.last[pathScale]
+	for i, v := range d.vel {
+		if !(math.Abs(v-k*(p.vel[i]+k*p.acc[i])) <= widest) {
 			return false
 		}
 	}

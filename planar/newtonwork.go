@@ -8,31 +8,32 @@ import (
 
 // A desk is the workspace of a newton, laid out.
 type desk struct {
-	dir   []float64 // unit vectors of the free angles, x and y
-	angle []float64 // free angles over whole turns, where they are needed
-	slide []float64 // in m
-	rest  []float64 // of every member: unit vector and angle of what the group does not turn
-	known []float64 // of every member: angular velocity and acceleration but for the group's own
-	arms  []float64 // of every limb and loop: both arms and the line, turned into the frame
-	slope []float64 // of every member: derivatives of the origin by the unknowns
-	drift []float64 // of every member: velocity and acceleration of the origin but for the unknown rates
-	vel   []float64 // of the unknowns; slides in units of the group's length
-	acc   []float64
-	miss  []float64 // of the equations
-	j     []float64 // slopes of the equations, by rows
-	lu    []float64
-	perm  []float64
-	norm  []float64 // of the columns of j
-	temp  []float64 // two of every unknown
-	last  []float64 // sign of the determinant, its ratio to that of a rectangular matrix, gap
+	dir    []float64 // unit vectors of the free angles, x and y
+	angle  []float64 // free angles over whole turns, where they are needed
+	slide  []float64 // in m
+	rest   []float64 // of every member: unit vector and angle of what the group does not turn
+	axis   []float64 // of every member: its unit vector
+	turn   []float64 // of every member: angular velocity and acceleration but for the group's own, and the whole velocity
+	chords []float64 // of every chord: its vector in the frame, not yet times its slide
+	fixed  []float64 // of every loop: what the unknowns do not move of C
+	gap    []float64 // of every loop: C
+	vel    []float64 // of the unknowns; slides in units of the group's length
+	acc    []float64
+	miss   []float64 // of the equations
+	j      []float64 // slopes of the equations, by rows
+	lu     []float64 // factors; of the pivots the inverses
+	perm   []float64
+	square []float64 // of the lengths of the columns of j
+	temp   []float64 // two of every unknown
+	last   []float64
 }
 
 // sizes of the parts of a desk, in their order.
-func (n *newton) sizes() [17]int {
+func (n *newton) sizes() [18]int {
 	m := len(n.members)
 	return [...]int{
-		2 * n.free, n.free, n.slides, 3 * m, 2 * m, 6 * (len(n.tree) + len(n.loops)), 2 * m * n.n, 4 * m,
-		n.n, n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, 3,
+		2 * n.free, n.free, n.slides, 3 * m, 2 * m, 3 * m, 2 * len(n.chords), 2 * len(n.loops), 2 * len(n.loops),
+		n.n, n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, lasts,
 	}
 }
 
@@ -64,8 +65,8 @@ func desks(groups []*newton) (all []desk, work []float64) {
 func (n *newton) desk(w []float64) (d desk) {
 	sizes := n.sizes()
 	for i, part := range [...]*[]float64{
-		&d.dir, &d.angle, &d.slide, &d.rest, &d.known, &d.arms, &d.slope, &d.drift,
-		&d.vel, &d.acc, &d.miss, &d.j, &d.lu, &d.perm, &d.norm, &d.temp, &d.last,
+		&d.dir, &d.angle, &d.slide, &d.rest, &d.axis, &d.turn, &d.chords, &d.fixed, &d.gap,
+		&d.vel, &d.acc, &d.miss, &d.j, &d.lu, &d.perm, &d.square, &d.temp, &d.last,
 	} {
 		*part, w = w[:sizes[i]:sizes[i]], w[sizes[i]:]
 	}
@@ -73,9 +74,12 @@ func (n *newton) desk(w []float64) (d desk) {
 }
 
 const (
-	detSign  = iota // indices into desk.last
-	detRatio        // |det| over the product of the columns' lengths
+	detSign   = iota // indices into desk.last
+	detSquare        // of |det| over the product of the columns' lengths
 	lastGap
+	pathSpeed // of a single drive, to which vel and acc belong with no acceleration of it; 0 if they do not
+	pathScale // by which the next step takes vel
+	lasts
 )
 
 // factor factors the slopes with partial pivoting, and reports false where they are
@@ -85,78 +89,80 @@ const (
 // of the rest, by Hadamard's inequality for the rest.
 func (d *desk) factor() bool {
 	n := len(d.perm)
-	copy(d.lu, d.j)
-	for k := range n {
-		sum := 0.0
-		for i := k; i < n*n; i += n {
-			sum += d.j[i] * d.j[i]
+	j, lu, square := d.j, d.lu[:len(d.j)], d.square[:n]
+	clear(square)
+	for i := 0; i+n <= len(j); i += n {
+		for k, v := range j[i : i+n] {
+			lu[i+k] = v
+			square[k] += v * v
 		}
-		d.norm[k] = math.Sqrt(sum)
 	}
 	sign, ratio := 1.0, 1.0
 	for k := range n {
-		best := k
+		rowK := lu[k*n : k*n+n]
+		best, most := k, math.Abs(rowK[k])
 		for i := k + 1; i < n; i++ {
-			if math.Abs(d.lu[i*n+k]) > math.Abs(d.lu[best*n+k]) {
-				best = i
+			if v := math.Abs(lu[i*n+k]); v > most {
+				best, most = i, v
 			}
 		}
 		d.perm[k] = float64(best)
-		rowK := d.lu[k*n : k*n+n]
 		if best != k {
 			sign = -sign
-			other := d.lu[best*n : best*n+n]
+			other := lu[best*n : best*n+n]
 			for i, v := range rowK {
 				rowK[i], other[i] = other[i], v
 			}
 		}
 		pivot := rowK[k]
-		if !(math.Abs(pivot) > 0) {
-			d.last[detSign], d.last[detRatio] = 0, 0
+		if !(most > 0) {
+			d.last[detSign], d.last[detSquare] = 0, 0
 			return false
 		}
 		if pivot < 0 {
 			sign = -sign
 		}
-		ratio *= math.Abs(pivot) / d.norm[k]
+		ratio *= pivot * pivot / square[k]
 		inverse := 1 / pivot
+		rowK[k] = inverse
+		rowK = rowK[k+1:]
 		for i := k + 1; i < n; i++ {
-			row := d.lu[i*n : i*n+n]
-			f := row[k] * inverse
-			row[k] = f
-			if f == 0 {
-				continue
-			}
-			for c := k + 1; c < n; c++ {
-				row[c] -= f * rowK[c]
+			row := lu[i*n+k : i*n+n]
+			f := row[0] * inverse
+			row[0] = f
+			row = row[1:]
+			for c, v := range rowK {
+				row[c] -= f * v
 			}
 		}
 	}
-	d.last[detSign], d.last[detRatio] = sign, ratio
+	d.last[detSign], d.last[detSquare] = sign, ratio
 	return true
 }
 
 // solve solves j·x = x in place by the factors.
 func (d *desk) solve(x []float64) {
 	n := len(d.perm)
-	for k := range n {
-		if p := int(d.perm[k]); p != k {
+	x = x[:n]
+	for k, p := range d.perm {
+		if p := int(p); p != k {
 			x[k], x[p] = x[p], x[k]
 		}
 	}
+	lu := d.lu
 	for i := 1; i < n; i++ {
 		sum := x[i]
-		for c, v := range d.lu[i*n : i*n+i] {
+		for c, v := range lu[i*n : i*n+i] {
 			sum -= v * x[c]
 		}
 		x[i] = sum
 	}
 	for i := n - 1; i >= 0; i-- {
-		row, sum := d.lu[i*n:i*n+n], x[i]
-		for c := i + 1; c < n; c++ {
-			sum -= row[c] * x[c]
+		row, sum := lu[i*n+i:i*n+n], x[i]
+		for c, v := range row[1:] {
+			sum -= v * x[i+1+c]
 		}
-		x[i] = sum / row[i]
+		x[i] = sum * row[0]
 	}
 }
 
@@ -179,7 +185,7 @@ func (d *desk) margin() float64 {
 	}
 	least := 1.0
 	for i, s := range square {
-		least = math.Min(least, 1/(math.Sqrt(s)*d.norm[i]))
+		least = math.Min(least, 1/math.Sqrt(s*d.square[i]))
 	}
 	if !(least >= 0) {
 		return 0
@@ -189,9 +195,9 @@ func (d *desk) margin() float64 {
 
 // regular reports whether the rates are determined.
 func (d *desk) regular() bool {
-	return d.last[detRatio] >= rigid.LeastMargin || d.margin() >= rigid.LeastMargin
+	return d.last[detSquare] >= rigid.LeastMargin*rigid.LeastMargin || d.margin() >= rigid.LeastMargin
 }
 
-// gap returns how far the loops were from closing, in m, at the last trial of a
+// open returns how far the loops were from closing, in m, at the last trial of a
 // place or assemble that failed.
-func (d *desk) gap() float64 { return d.last[lastGap] }
+func (d *desk) open() float64 { return d.last[lastGap] }

@@ -1,5 +1,10 @@
 package planar
 
+import (
+	"example.com/twopoint/rigid"
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
 // A group solves a group of higher class by Newton's method.
 type group struct {
 	n      *newton
@@ -8,6 +13,9 @@ type group struct {
 }
 
 func (o *group) place(was, to *scene) status {
+	if was == to {
+		return o.choose(to)
+	}
 	if st := o.n.place(to, &was.desks[o.at], &to.desks[o.at]); st != solved {
 		return st
 	}
@@ -26,9 +34,45 @@ func (o *group) rates(sc *scene) bool {
 		return false
 	}
 	o.n.rates(sc, d)
+	d.last[pathSpeed], d.last[pathScale] = 0, 1
+	if len(sc.in) == 1 && sc.in[0].Acc == 0 {
+		d.last[pathSpeed] = sc.in[0].Vel
+	}
 	return true
 }
 
 func (o *group) margin(sc *scene) float64 { return sc.desks[o.at].margin() }
-func (o *group) gap(sc *scene) float64    { return sc.desks[o.at].gap() }
+func (o *group) gap(sc *scene) float64    { return sc.desks[o.at].open() }
 func (o *group) choose(sc *scene) status  { return o.n.assemble(sc, &sc.desks[o.at]) }
+
+// foresee reports whether the path rates of all groups at a place are known for a
+// single drive that moves on so far: they grow with its speed.
+func (s *scene) foresee(speed float64) bool {
+	for i := range s.desks {
+		last := s.desks[i].last
+		if last[pathSpeed] == 0 {
+			return false
+		}
+		last[pathScale] = speed / last[pathSpeed]
+	}
+	return true
+}
+
+// drive takes all rates from path rates, for which a single drive has the speed in
+// path, to those for its motion in:
+//
+//	v = v_path·k,  a = a_path·k² + v_path·k′,  k = in.Vel/path,  k′ = in.Acc/path
+func (s *scene) drive(path float64, in rigid.Coordinate) {
+	k, more := in.Vel/path, in.Acc/path
+	for i := range s.m {
+		m := &s.m[i]
+		m.Acc = r2.Vec{X: k*k*m.Acc.X + more*m.Vel.X, Y: k*k*m.Acc.Y + more*m.Vel.Y}
+		m.Vel = r2.Vec{X: k * m.Vel.X, Y: k * m.Vel.Y}
+		m.Alpha = k*k*m.Alpha + more*m.Omega
+		m.Omega *= k
+	}
+	for i := range s.psi {
+		p := &s.psi[i]
+		p.Vel, p.Acc = k*p.Vel, k*k*p.Acc+more*p.Vel
+	}
+}
