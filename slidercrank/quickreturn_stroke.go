@@ -142,38 +142,75 @@ type RamStroke struct {
 // both are run from Hi to Lo. ErrUnreachable where the crank does not turn fully or
 // the ram has not just two dead centres; ErrInput for a zero QuickReturn.
 func (q *QuickReturn) Strokes() (cutting, back RamStroke, err error) {
-	if q.arm == 0 {
-		return cutting, back, rigid.ErrInput
+	from, to, err := q.ends()
+	if err != nil {
+		return RamStroke{}, RamStroke{}, err
 	}
-	c, r := q.DeadCentres(), q.Range()
-	if len(c) != 2 || len(r) != 1 || r[0].Hi-r[0].Lo < rigid.Revolution {
-		return cutting, back, rigid.ErrUnreachable
+	if cutting, err = q.stroke(from, to); err != nil {
+		return RamStroke{}, RamStroke{}, err
 	}
-	cutting = RamStroke{Turn: rigid.Interval{Lo: c[0].In, Hi: c[1].In}, From: c[0].Out, To: c[1].Out}
-	back = RamStroke{Turn: rigid.Interval{Lo: c[1].In, Hi: c[0].In + rigid.Revolution}, From: c[1].Out, To: c[0].Out}
-	if span(cutting.Turn) < span(back.Turn) {
-		cutting, back = back, cutting
+	from.In += rigid.Revolution
+	if back, err = q.stroke(to, from); err != nil {
+		return RamStroke{}, RamStroke{}, err
 	}
 	return cutting, back, nil
 }
 
-func span(i rigid.Interval) float64 { return i.Hi - i.Lo }
+// ends returns the dead centres at the beginning and the end of the cutting stroke,
+// the second up to a turn on.
+func (q *QuickReturn) ends() (from, to rigid.Coefficients, err error) {
+	if q.arm == 0 {
+		return from, to, rigid.ErrInput
+	}
+	c, r := q.DeadCentres(), q.Range()
+	if len(c) != 2 || len(r) != 1 || r[0].Hi-r[0].Lo < rigid.Revolution {
+		return from, to, rigid.ErrUnreachable
+	}
+	from, to = c[0], c[1]
+	if to.In-from.In < math.Pi {
+		from, to = to, from
+		to.In += rigid.Revolution
+	}
+	return from, to, nil
+}
+
+// stroke returns the stroke between two dead centres. The acceleration is greatest
+// inside, where it has a peak, or at an end.
+func (q *QuickReturn) stroke(from, to rigid.Coefficients) (RamStroke, error) {
+	s := RamStroke{Turn: rigid.Interval{Lo: from.In, Hi: to.In}, From: from.Out, To: to.Out}
+	speed, acc, err := rigid.Law(q.Coefficients).Peaks(s.Turn)
+	if err != nil {
+		return RamStroke{}, err
+	}
+	for _, c := range speed {
+		if math.Abs(c.First) > math.Abs(s.Speed.First) {
+			s.Speed = c
+		}
+	}
+	for _, c := range append(acc, from, to) {
+		if math.Abs(c.Second) > math.Abs(s.Acc.Second) {
+			s.Acc = c
+		}
+	}
+	return s, nil
+}
 
 // TimeRatio returns the crank's angle of the cutting stroke over that of the return,
 // at least 1: the ratio of the times at constant speed. Errors as Strokes.
 func (q *QuickReturn) TimeRatio() (float64, error) {
-	cutting, back, err := q.Strokes()
+	from, to, err := q.ends()
 	if err != nil {
 		return 0, err
 	}
-	return span(cutting.Turn) / span(back.Turn), nil
+	cut := to.In - from.In
+	return cut / (rigid.Revolution - cut), nil
 }
 
 // Stroke returns the ram's travel between its dead centres in m. Errors as Strokes.
 func (q *QuickReturn) Stroke() (float64, error) {
-	cutting, _, err := q.Strokes()
+	from, to, err := q.ends()
 	if err != nil {
 		return 0, err
 	}
-	return math.Abs(cutting.To - cutting.From), nil
+	return math.Abs(to.Out - from.Out), nil
 }
