@@ -80,9 +80,21 @@ func (b *builder) repeated(r turnRow, reduced form) error {
 		off = rigid.Wrap(off)
 	}
 	if math.Abs(off) > enough*(1+math.Abs(r.value)) {
-		return b.refuse(fmt.Errorf("%w: the angles contradict each other by %.3g rad", ErrInconsistent, off), joints...)
+		return b.refuse(fmt.Errorf("%w: the angles contradict each other by %.3g rad%s", ErrInconsistent, off, b.hint(joints)), joints...)
 	}
 	return nil
+}
+
+// hint tells how the phase of a gear pair is found, where one is concerned.
+func (b *builder) hint(joints []int) string {
+	for _, i := range joints {
+		if i < len(b.d.Joints) {
+			if _, ok := b.d.Joints[i].(GearPair); ok {
+				return "; AsAssembled reads a phase from the position"
+			}
+		}
+	}
+	return ""
 }
 
 // combination returns the joints of the rows that give the last one, and whether

@@ -89,6 +89,18 @@ func refusals() []refusal {
 		{name: "gears too far apart for their radii", design: gearsApart(0.19), err: ErrInconsistent, joints: []int{2},
 			says: "centres 0.15 m apart, their pins 0.19"},
 
+		{name: "pinion on the wrong side", design: rackOff(true, 0, 0), err: ErrInconsistent, links: "frame pinion rack", joints: []int{1, 2},
+			says: "lies 0.02 m left of the rack's line, its radius puts it at -0.02 m"},
+		{name: "pinion too far", design: rackOff(false, 0.001, 0), err: ErrInconsistent, joints: []int{1, 2}, says: "lies 0.021 m"},
+		{name: "rack askew", design: rackOff(false, 0, 0.01), err: ErrInconsistent, joints: []int{1, 2}, says: "not parallel"},
+		{name: "planets whose phases do not fit", design: func() Design {
+			d := epicyclic(2, false)
+			g := d.Joints[6].(GearPair)
+			g.Phase = 0.1
+			d.Joints[6] = g
+			return d
+		}(), err: ErrInconsistent, joints: []int{3, 4, 6, 7}, says: "AsAssembled"},
+
 		{name: "missing drive", design: fourBar().Design, err: ErrUnderconstrained, links: "crank rod rocker", says: "1 drive or joint missing"},
 		{name: "isolated link", design: with(func(p *plan) { p.Link("loose") }), err: ErrUnderconstrained, links: "loose", says: "3 drives or joints missing"},
 		{name: "two drives of one freedom", design: with(func(p *plan) { p.turn(rocker, Frame) }),
@@ -140,6 +152,17 @@ func gearsApart(centres float64) Design {
 	p.Joints = append(p.Joints, GearPair{A: l[0], B: l[1], Arm: Frame, RadiusA: 0.05, RadiusB: 0.1})
 	p.turn(l[0], Frame)
 	return p.Design
+}
+
+// rackOff is the rack press with its pinion on the other side, too far, or its rack
+// turned.
+func rackOff(right bool, far, askew float64) Design {
+	d := rackPress()
+	d.Joints[0] = Revolute{A: Frame.At(0, 0.02+far), B: Link(1).At(0, 0)}
+	r := d.Joints[2].(RackPair)
+	r.Right, r.Rack.Angle = right, askew
+	d.Joints[2] = r
+	return d
 }
 
 // driveRing drives three turns of which the third is the sum of the others.

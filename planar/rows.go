@@ -25,7 +25,7 @@ func (b *builder) joints() error {
 	if err := b.drive(pins); err != nil {
 		return err
 	}
-	return b.centres()
+	return b.meshes()
 }
 
 // tidied returns a joint that is the same from both sides with the lower link first.
@@ -328,38 +328,4 @@ func (b *builder) reach(pins *pins, m Reach, drive int) error {
 	r.drive = drive
 	b.rows = append(b.rows, r)
 	return nil
-}
-
-// centres checks the distance of the centres of gears whose radii are given, where
-// both are pinned to their arm.
-func (b *builder) centres() error {
-	for i, j := range b.d.Joints {
-		g, ok := j.(GearPair)
-		if !ok || g.RadiusA == 0 {
-			continue
-		}
-		a, okA := b.centre(g.A, g.Arm)
-		c, okB := b.centre(g.B, g.Arm)
-		want := g.RadiusA + g.RadiusB
-		if g.Internal {
-			want = math.Abs(g.RadiusA - g.RadiusB)
-		}
-		if gap := math.Abs(r2.Norm(r2.Sub(a, c)) - want); okA && okB && gap > 1e-9*(g.RadiusA+g.RadiusB) {
-			return b.refuse(fmt.Errorf("%w: the radii put the gears' centres %.9g m apart, their pins %.9g m",
-				ErrInconsistent, want, r2.Norm(r2.Sub(a, c))), i)
-		}
-	}
-	return nil
-}
-
-// centre returns the pin of a link on its arm, in the axes of the arm's body.
-func (b *builder) centre(l, arm Link) (r2.Vec, bool) {
-	for _, i := range b.inBody[b.seats[arm].body] {
-		for _, j := range b.inBody[b.seats[l].body] {
-			if i != j && b.pin(i) == b.pin(j) {
-				return b.points[i].at, true
-			}
-		}
-	}
-	return r2.Vec{}, false
 }
