@@ -67,27 +67,21 @@ func (s *State) Move(in ...rigid.Coordinate) error {
 
 // solve runs the ops: places, and rates if moving.
 func (p *program) solve(was, to *scene, moving bool) (status, int) {
-	st := solved
-	for i, o := range p.ops {
-		switch o.place(was, to) {
-		case solved:
-		case doubtful:
-			return doubtful, i
-		case unreachable:
-			return unreachable, i
-		case singular:
-			return singular, i
-		case tooLong:
-			return tooLong, i
-		}
-		if moving && !o.rates(to) {
-			return singular, i
-		}
-	}
 	if !moving {
+		for i, o := range p.ops {
+			if st := o.place(was, to); st != solved {
+				return st, i
+			}
+		}
 		to.rest()
+		return solved, 0
 	}
-	return st, 0
+	for i, o := range p.ops {
+		if st := o.move(was, to); st != solved {
+			return st, i
+		}
+	}
+	return solved, 0
 }
 
 // accept makes a scene the State's place, if the redundant constraints hold there.

@@ -16,7 +16,33 @@ type op interface {
 	// rates solves their rates at a place that is solved, and reports whether they
 	// are determined.
 	rates(sc *scene) bool
+	// move is place and rates, singular where those are not determined.
+	move(was, to *scene) status
 }
+
+// both is move for an op that has no shorter way.
+func both(o op, was, to *scene) status {
+	if st := o.place(was, to); st != solved {
+		return st
+	}
+	if !o.rates(to) {
+		return singular
+	}
+	return solved
+}
+
+func (o *spin) move(was, to *scene) status   { return both(o, was, to) }
+func (o *follow) move(was, to *scene) status { return both(o, was, to) }
+func (o *pin) move(was, to *scene) status    { return both(o, was, to) }
+func (o *ride) move(was, to *scene) status   { return both(o, was, to) }
+func (o *read) move(was, to *scene) status   { return both(o, was, to) }
+func (o *seated) move(was, to *scene) status { return both(o, was, to) }
+func (o *fused) move(was, to *scene) status  { return both(o, was, to) }
+func (o *rrp) move(was, to *scene) status    { return both(o, was, to) }
+func (o *rpr) move(was, to *scene) status    { return both(o, was, to) }
+func (o *meet) move(was, to *scene) status   { return both(o, was, to) }
+func (o *roll) move(was, to *scene) status   { return both(o, was, to) }
+func (o *group) move(was, to *scene) status  { return both(o, was, to) }
 
 // A solver is an op that has equations to solve, and so can fail.
 type solver interface {

@@ -59,6 +59,61 @@ func (o *rrr) place(was, to *scene) status {
 	return st
 }
 
+// move solves place and rates in one; what is not ordinary it leaves to those two.
+func (o *rrr) move(was, to *scene) status {
+	side := to.branch[o.i]
+	if side > left {
+		return both(o, was, to)
+	}
+	a, c := &to.m[o.a.body], &to.m[o.c.body]
+	ra, rc := turned(a.Pose.Axis, o.a.at), turned(c.Pose.Axis, o.c.at)
+	pa := r2.Vec{X: a.Pose.Origin.X + ra.X, Y: a.Pose.Origin.Y + ra.Y}
+	va, ba := swing(a, ra)
+	pc := r2.Vec{X: c.Pose.Origin.X + rc.X, Y: c.Pose.Origin.Y + rc.Y}
+	var vc, bc r2.Vec
+	if o.c.body != 0 {
+		vc, bc = swing(c, rc)
+	}
+	d := r2.Vec{X: pc.X - pa.X, Y: pc.Y - pa.Y}
+	w, z := r2.Vec{X: va.X - vc.X, Y: va.Y - vc.Y}, r2.Vec{X: ba.X - bc.X, Y: ba.Y - bc.Y}
+	t := &to.tri[o.tri]
+	var ab, cb dyad.Link
+	if !o.k.Move(t, &ab, &cb, d, w, z, float64(side)) || o.k.Margin(t) < rigid.LeastMargin {
+		return both(o, was, to)
+	}
+	o.set(&to.m[o.one.body], &ab, o.u1, o.one.at, pa, va, ba)
+	o.set(&to.m[o.two.body], &cb, o.u2, o.two.at, pc, vc, bc)
+	if !to.count(was, o.one.body) || !to.count(was, o.two.body) {
+		return tooLong
+	}
+	g := &to.guard[o.i]
+	g.d, g.room = d, o.k.Room(d.X*d.X+d.Y*d.Y)
+	if !g.clear(&was.guard[o.i], o.most) {
+		return doubtful
+	}
+	return solved
+}
+
+// swing returns velocity and acceleration of a point of a body at r from its origin.
+func swing(m *rigid.Motion, r r2.Vec) (vel, acc r2.Vec) {
+	w, al, w2 := m.Omega, m.Alpha, m.Omega*m.Omega
+	return r2.Vec{X: m.Vel.X - w*r.Y, Y: m.Vel.Y + w*r.X},
+		r2.Vec{X: m.Acc.X - al*r.Y - w2*r.X, Y: m.Acc.Y + al*r.X - w2*r.Y}
+}
+
+// set writes the motion of a link from its direction and that of its outer pin,
+// which is at own in it.
+func (o *rrr) set(m *rigid.Motion, l *dyad.Link, u, own, pos, vel, acc r2.Vec) {
+	axis := turned(l.Axis, u)
+	r := turned(axis, own)
+	w, al, w2 := l.Omega, l.Alpha, l.Omega*l.Omega
+	m.Pose.Axis = axis
+	m.Pose.Origin = r2.Vec{X: pos.X - r.X, Y: pos.Y - r.Y}
+	m.Vel = r2.Vec{X: vel.X + w*r.Y, Y: vel.Y - w*r.X}
+	m.Acc = r2.Vec{X: acc.X + al*r.Y + w2*r.X, Y: acc.Y - al*r.X + w2*r.Y}
+	m.Omega, m.Alpha = w, al
+}
+
 // flat places the dyad at a limit that rounding has passed.
 func (o *rrr) flat(t *dyad.Triangle, d r2.Vec) status {
 	l := r2.Norm(d)

@@ -126,7 +126,7 @@ func (c *compiler) explicit(p *puzzle) bool {
 	switch n := len(p.bodies); {
 	case n == 1 && len(p.ties) == 1 && t.pin:
 		own, on := t.end(1)
-		c.emit(p.group, &pin{on: on, of: own})
+		c.pin(p.group, &pin{on: on, of: own})
 		return true
 	case n == 1 && len(p.ties) == 2:
 		own, _ := t.end(1)
@@ -140,6 +140,17 @@ func (c *compiler) explicit(p *puzzle) bool {
 		return c.meeting(p, one[0], two[0], own, other)
 	}
 	return false
+}
+
+// pin emits a pin, as one with the input that turns the body where that is all.
+func (c *compiler) pin(group int, p *pin) {
+	if last := len(c.ops) - 1; last >= 0 {
+		if o, ok := cranked(c.ops[last], p); ok {
+			c.ops[last], c.groupOf[last] = o, group
+			return
+		}
+	}
+	c.emit(group, p)
 }
 
 // meeting emits the lines that two ties keep two points of one pin on.

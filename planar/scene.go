@@ -127,22 +127,21 @@ func (s *scene) carry(p *spot, vel, acc r2.Vec) {
 // turned by less than half a revolution. It reports false where it turned by more
 // than a quarter, so that this isn't sure.
 func (s *scene) count(was *scene, body int) bool {
-	a, b := was.m[body].Pose.Axis, s.m[body].Pose.Axis
-	n := was.turns[body]
-	if (a.Y < 0) != (b.Y < 0) {
-		if a.X*b.X+a.Y*b.Y < 0 {
-			return false
-		}
-		if (cross(a, b) > 0) == (b.Y < 0) { // past the negative x axis
-			if b.Y < 0 {
-				n++
-			} else {
-				n--
-			}
+	s.turns[body] = was.turns[body]
+	a, b := &was.m[body].Pose.Axis, &s.m[body].Pose.Axis
+	return (a.Y < 0) == (b.Y < 0) || s.cross(*a, *b, body)
+}
+
+// cross counts a turn of a body that has crossed the x axis from a to b.
+func (s *scene) cross(a, b r2.Vec, body int) bool {
+	if (cross(a, b) > 0) == (b.Y < 0) { // past the negative x axis
+		if b.Y < 0 {
+			s.turns[body]++
+		} else {
+			s.turns[body]--
 		}
 	}
-	s.turns[body] = n
-	return true
+	return a.X*b.X+a.Y*b.Y >= 0
 }
 
 // total returns the angle of a counted body, whole turns included.
