@@ -156,18 +156,7 @@ func TestQuickReturnRefuses(t *testing.T) {
 		{"unknown knee", travel(q, 0.2, 0, rigid.Right, 3), rigid.ErrInput},
 		{"travel of a zero drive", travel(zero, 0, 0, 0, 0), rigid.ErrInput},
 	} {
-		before := slidercrank.QuickReturnState{Travel: rigid.Coordinate{Pos: 7}}
-		st := before
-		err := row.run(&st)
-		if err != row.want {
-			t.Errorf("%s: %v, want %v", row.name, err, row.want)
-		}
-		if err != nil && st != before {
-			t.Errorf("%s: the state was touched: %+v", row.name, st)
-		}
-		if n := testing.AllocsPerRun(20, func() { _ = row.run(&st) }); n != 0 {
-			t.Errorf("%s: %v allocations", row.name, n)
-		}
+		outcome(t, row.name, slidercrank.QuickReturnState{Travel: rigid.Coordinate{Pos: 7}}, row.run, row.want)
 	}
 	if _, _, err := zero.Strokes(); err != rigid.ErrInput || zero.Range() != nil || zero.DeadCentres() != nil {
 		t.Errorf("strokes or range of no mechanism: %v", err)

@@ -186,24 +186,11 @@ func (s *SliderRod) slider(m *rigid.Motion, u r2.Vec, at *rigid.Coordinate) {
 // Coefficients returns SlideB and its derivatives by the rod's angle, turn in rad:
 // a rigid.Law. Any other output is one rigid.LawOf away. Errors as Solve.
 func (s *SliderRod) Coefficients(turn float64) (rigid.Coefficients, error) {
-	if turn*0 != 0 {
-		return rigid.Coefficients{}, rigid.ErrNotFinite
-	}
-	if s.l == 0 {
-		return rigid.Coefficients{}, rigid.ErrInput
-	}
-	sin, cos := math.Sincos(turn)
-	c := s.slideB(sin, cos, rigid.Coordinate{Vel: 1})
-	return rigid.Coefficients{In: turn, Out: c.Pos, First: c.Vel, Second: c.Acc}, nil
+	return harmonicLaw(s.l, 0, s.l/s.sin, turn)
 }
 
 // Range returns the rod's angles that have a position: all.
-func (s *SliderRod) Range() []rigid.Interval {
-	if s.l == 0 {
-		return nil
-	}
-	return []rigid.Interval{{Lo: -math.Pi, Hi: math.Pi}}
-}
+func (s *SliderRod) Range() []rigid.Interval { return wholeTurn(s.l) }
 
 // DeadCentres returns the rod's angles where B comes to rest, −π/2 and π/2, with
 // SlideB as Out and First = 0: the rod is square to A's guide there, and A cannot

@@ -153,18 +153,7 @@ func TestSliderRodRefuses(t *testing.T) {
 		{"B accelerated at the end of its reach", end(s.SolveB, 1, 0, 1, 1), rigid.ErrSingular},
 		{"B of a zero rod", end(zero.SolveB, 0, 0, 0, 1), rigid.ErrInput},
 	} {
-		before := slidercrank.RodState{Margin: 7}
-		st := before
-		err := row.run(&st)
-		if err != row.want {
-			t.Errorf("%s: %v, want %v", row.name, err, row.want)
-		}
-		if err != nil && st != before {
-			t.Errorf("%s: the state was touched: %+v", row.name, st)
-		}
-		if n := testing.AllocsPerRun(20, func() { _ = row.run(&st) }); n != 0 {
-			t.Errorf("%s: %v allocations", row.name, n)
-		}
+		outcome(t, row.name, slidercrank.RodState{Margin: 7}, row.run, row.want)
 	}
 	if _, err := zero.Coefficients(0); err != rigid.ErrInput || zero.Range() != nil || zero.DeadCentres() != nil {
 		t.Errorf("a law or range of no mechanism: %v", err)

@@ -218,3 +218,23 @@ func ramMaker(d slidercrank.QuickReturnDimensions) maker {
 		}
 	}
 }
+
+// outcome runs a solver on a state and checks that it returns the very error
+// wanted, that an error leaves the state as it was, and that it allocates nothing
+// either way. It returns the state.
+func outcome[S comparable](t *testing.T, name string, before S, run func(*S) error, want error) S {
+	t.Helper()
+	st := before
+	err := run(&st)
+	if err != want {
+		t.Errorf("%s: %v, want %v", name, err, want)
+	}
+	if (err != nil) != (st == before) {
+		t.Errorf("%s: %v, and the state is %+v", name, err, st)
+	}
+	again := st
+	if n := testing.AllocsPerRun(20, func() { _ = run(&again) }); n != 0 {
+		t.Errorf("%s: %v allocations", name, n)
+	}
+	return st
+}

@@ -17,7 +17,7 @@ import (
 // one, and changes over at the dead centres, where the lever cannot drive it.
 //
 // Turn.Pos is in (−π, π]; Margin is |sin| of the angle between the crank and the
-// normal of the slot... Errors: ErrUnreachable where the slot is farther from the
+// slot's normal, 0 at the dead centres. Errors: ErrUnreachable where the slot is farther from the
 // crank pivot than the crank reaches, or the pin would lie behind the lever pivot;
 // ErrSingular for rates where Margin is below rigid.LeastMargin; ErrNotFinite;
 // ErrInput for a zero SlottedLever or an unknown knee. An error leaves dst as it was.

@@ -164,24 +164,11 @@ func (y *ScotchYoke) write(dst *YokeState, axis r2.Vec, turn, slide, run rigid.C
 // Coefficients returns the yoke's slide and its derivatives by the crank's angle,
 // turn in rad: a rigid.Law. Errors as Solve.
 func (y *ScotchYoke) Coefficients(turn float64) (rigid.Coefficients, error) {
-	if turn*0 != 0 {
-		return rigid.Coefficients{}, rigid.ErrNotFinite
-	}
-	if y.r == 0 {
-		return rigid.Coefficients{}, rigid.ErrInput
-	}
-	sin, cos := math.Sincos(turn)
-	c := harmonic(y.r, y.r*y.sin/y.cos, sin, cos, 1, 0)
-	return rigid.Coefficients{In: turn, Out: c.Pos, First: c.Vel, Second: c.Acc}, nil
+	return harmonicLaw(y.r, y.r, y.r*y.sin/y.cos, turn)
 }
 
 // Range returns the crank's angles that have a position: all.
-func (y *ScotchYoke) Range() []rigid.Interval {
-	if y.r == 0 {
-		return nil
-	}
-	return []rigid.Interval{{Lo: -math.Pi, Hi: math.Pi}}
-}
+func (y *ScotchYoke) Range() []rigid.Interval { return wholeTurn(y.r) }
 
 // DeadCentres returns the crank's angles, in (−π, π] and rising, where the yoke
 // comes to rest, with the slide as Out and First = 0: the crank is square to the
@@ -206,4 +193,27 @@ func (y *ScotchYoke) Stroke() float64 {
 		return 0
 	}
 	return math.Abs(2 * y.r / y.cos)
+}
+
+// harmonicLaw returns the coefficients of a·cos φ + b·sin φ of a mechanism of the
+// given size, 0 if no constructor made it.
+func harmonicLaw(size, a, b, turn float64) (rigid.Coefficients, error) {
+	if turn*0 != 0 {
+		return rigid.Coefficients{}, rigid.ErrNotFinite
+	}
+	if size == 0 {
+		return rigid.Coefficients{}, rigid.ErrInput
+	}
+	sin, cos := math.Sincos(turn)
+	c := harmonic(a, b, sin, cos, 1, 0)
+	return rigid.Coefficients{In: turn, Out: c.Pos, First: c.Vel, Second: c.Acc}, nil
+}
+
+// wholeTurn returns the range of what turns without limit; nil for the size 0 of
+// a mechanism that no constructor made.
+func wholeTurn(size float64) []rigid.Interval {
+	if size == 0 {
+		return nil
+	}
+	return []rigid.Interval{{Lo: -math.Pi, Hi: math.Pi}}
 }

@@ -79,18 +79,7 @@ func TestScotchYokeRefuses(t *testing.T) {
 		{"zero yoke by its slide", slide(zero, 0, 0, 0, 0), rigid.ErrInput},
 		{"rate would overflow", slide(y, 0.05, 1e160, 0, 0), rigid.ErrNotFinite},
 	} {
-		before := slidercrank.YokeState{Margin: 7}
-		st := before
-		err := row.run(&st)
-		if err != row.want {
-			t.Errorf("%s: %v, want %v", row.name, err, row.want)
-		}
-		if err != nil && st != before {
-			t.Errorf("%s: the state was touched: %+v", row.name, st)
-		}
-		if n := testing.AllocsPerRun(20, func() { _ = row.run(&st) }); n != 0 {
-			t.Errorf("%s: %v allocations", row.name, n)
-		}
+		outcome(t, row.name, slidercrank.YokeState{Margin: 7}, row.run, row.want)
 	}
 	if zero.Range() != nil || zero.DeadCentres() != nil || zero.Stroke() != 0 {
 		t.Error("a range of no mechanism")
