@@ -88,3 +88,42 @@ func TestGap(t *testing.T) {
 		t.Errorf("of NaN: %v", g)
 	}
 }
+
+// TestDecimalChangePoint: 0.5 + 0.3 = 0.1 + 0.7 in decimals, but not in float64;
+// the crank passes the stretched position at π.
+func TestDecimalChangePoint(t *testing.T) {
+	l := mustNew(t, fourbar.Dimensions{Frame: 0.5, Crank: 0.3, Coupler: 0.1, Follower: 0.7})
+	if r := l.Range(); len(r) != 1 || !r[0].Contains(math.Pi) {
+		t.Errorf("range %v, want one interval about π", r)
+	}
+}
+
+// TestSwingPastChangePoint: a limited crank, longer than the frame, and a follower
+// that turns fully; the side of Open and Crossed is kept through the flattened
+// position in the middle of the range.
+func TestSwingPastChangePoint(t *testing.T) {
+	for branch := fourbar.Open; branch <= fourbar.Crossed; branch++ {
+		for _, d := range []fourbar.Dimensions{
+			{Frame: 3, Crank: 4, Coupler: 6, Follower: 1, Branch: branch}, // about π
+			{Frame: 3, Crank: 6, Coupler: 4, Follower: 1, Branch: branch}, // about 0
+		} {
+			l := mustNew(t, d)
+			over := l.Range()
+			if len(over) != 1 {
+				t.Fatalf("%+v: range %v", d, over)
+			}
+			last := math.NaN()
+			for k := range 1001 {
+				var st fourbar.State
+				turn := over[0].Lo + (over[0].Hi-over[0].Lo)*float64(k)/1000
+				if err := l.Solve(&st, rigid.Coordinate{Pos: turn}); err != nil {
+					t.Fatalf("%+v at %v: %v", d, turn, err)
+				}
+				if math.Abs(st.Swing.Pos-last) > 0.5 {
+					t.Fatalf("%+v: swing jumps from %v to %v at %v", d, last, st.Swing.Pos, turn)
+				}
+				last = st.Swing.Pos
+			}
+		}
+	}
+}
