@@ -171,14 +171,5 @@ func (p *Pair) place(dst *PairState, turnA, turnB rigid.Coordinate, a, b double)
 // and points become motions in the machine; TurnA and TurnB stay as the arm sees
 // them. ErrNotFinite as Solve; then the state is as before.
 func (s *PairState) On(arm *rigid.Motion) error {
-	st := PairState{
-		A: arm.Compose(&s.A), B: arm.Compose(&s.B),
-		PitchA: arm.Carry(s.PitchA), PitchB: arm.Carry(s.PitchB),
-		TurnA: s.TurnA, TurnB: s.TurnB,
-	}
-	if !finiteMotion(&st.A) || !finiteMotion(&st.B) || !finitePoint(st.PitchA) || !finitePoint(st.PitchB) {
-		return rigid.ErrNotFinite
-	}
-	*s = st
-	return nil
+	return carry(arm, &s.A, &s.B, &s.PitchA, &s.PitchB)
 }

@@ -52,6 +52,18 @@ func spin(pose rigid.Pose, turn rigid.Coordinate, angle double) rigid.Motion {
 	}
 }
 
+// carry puts two bodies and two points, given relative to a ground, into the frame in
+// which the ground moves as given; on error it leaves all as they were.
+func carry(ground, a, b *rigid.Motion, p, q *rigid.Point) error {
+	bodyA, bodyB := ground.Compose(a), ground.Compose(b)
+	pointP, pointQ := ground.Carry(*p), ground.Carry(*q)
+	if !finiteMotion(&bodyA) || !finiteMotion(&bodyB) || !finitePoint(pointP) || !finitePoint(pointQ) {
+		return rigid.ErrNotFinite
+	}
+	*a, *b, *p, *q = bodyA, bodyB, pointP, pointQ
+	return nil
+}
+
 func finiteMotion(m *rigid.Motion) bool {
 	return finite(m.Pose.Origin.X, m.Pose.Origin.Y, m.Pose.Axis.X, m.Pose.Axis.Y,
 		m.Vel.X, m.Vel.Y, m.Acc.X, m.Acc.Y, m.Omega, m.Alpha)

@@ -144,14 +144,5 @@ func (p *Rack) place(dst *RackState, turn, slide rigid.Coordinate, angle double)
 // guide and moves as given. Turn and Slide stay as the carriage sees them.
 // ErrNotFinite as Solve; then the state is as before.
 func (s *RackState) On(carriage *rigid.Motion) error {
-	st := RackState{
-		Pinion: carriage.Compose(&s.Pinion), Rack: carriage.Compose(&s.Rack),
-		PitchPinion: carriage.Carry(s.PitchPinion), PitchRack: carriage.Carry(s.PitchRack),
-		Turn: s.Turn, Slide: s.Slide,
-	}
-	if !finiteMotion(&st.Pinion) || !finiteMotion(&st.Rack) || !finitePoint(st.PitchPinion) || !finitePoint(st.PitchRack) {
-		return rigid.ErrNotFinite
-	}
-	*s = st
-	return nil
+	return carry(carriage, &s.Pinion, &s.Rack, &s.PitchPinion, &s.PitchRack)
 }

@@ -41,7 +41,7 @@ func TestSlipRatio(t *testing.T) {
 // measured, and its contact particle moves with it.
 func TestSlipRoundTrip(t *testing.T) {
 	rng := rand.New(rand.NewPCG(6, 3))
-	for range 1000 {
+	for range runs(1000) {
 		d := random(rng)
 		w := wheel(t, d)
 		turn, slide := coordinate(rng, 9), coordinate(rng, 1)

@@ -164,3 +164,11 @@ func TestTwoSincos(t *testing.T) {
 		t.Error("NaN gives numbers")
 	}
 }
+
+// runs returns how many random cases to try of n.
+func runs(n int) int {
+	if testing.Short() {
+		return n / 5
+	}
+	return n
+}

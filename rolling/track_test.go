@@ -38,6 +38,7 @@ func TestTrackTable(t *testing.T) {
 	if len(rows) != 28 {
 		t.Fatalf("%d lines", len(rows))
 	}
+	worst := 0.0
 	for _, row := range rows {
 		x := numbers(t, row)
 		p, err := track(x[0])
@@ -47,7 +48,9 @@ func TestTrackTable(t *testing.T) {
 		if !nearVec(p.Pos, r2.Vec{X: x[1], Y: x[2]}, 2e-14) || !near(p.Direction, x[3], 1e-14) {
 			t.Errorf("arc %v: %+v, want %v", x[0], p, x[1:])
 		}
+		worst = max(worst, math.Abs(p.Pos.X-x[1]), math.Abs(p.Pos.Y-x[2]))
 	}
+	t.Logf("worst place %.2g m of 41.5 m", worst)
 }
 
 // TestTrackFits: where bends meet, place and direction go on; beyond the ends is
@@ -100,13 +103,13 @@ func TestTrackIsCircle(t *testing.T) {
 	}
 }
 
-// wave is the track y = a·(1 − cos kx) by its arc, found by bisection of the length
+// wave is the track y = a·(1 − cos kx) by its arc, found by Newton's method on the length
 // integrated with Simpson's rule: a shape that no bend has.
 func wave(a, k float64) rolling.Track {
 	slope := func(x float64) float64 { return a * k * math.Sin(k*x) }
 	speed := func(x float64) float64 { return math.Hypot(1, slope(x)) }
 	length := func(x float64) float64 {
-		const n = 400
+		const n = 200
 		h, sum := x/n, speed(0)+speed(x)
 		for i := 1; i < n; i++ {
 			sum += float64(2+2*(i%2)) * speed(h*float64(i))
@@ -115,7 +118,7 @@ func wave(a, k float64) rolling.Track {
 	}
 	return func(arc float64) (rolling.TrackPoint, error) {
 		x := arc
-		for range 60 {
+		for range 8 {
 			x -= (length(x) - arc) / speed(x)
 		}
 		d1, d2, d3 := slope(x), a*k*k*math.Cos(k*x), -a*k*k*k*math.Sin(k*x)

@@ -184,7 +184,7 @@ func off(x float64, exact *big.Rat) float64 {
 // the float64 nearest to the exact one.
 func TestWillis(t *testing.T) {
 	rng := rand.New(rand.NewPCG(6, 7))
-	for range 500 {
+	for range runs(500) {
 		d := randomTrain(rng)
 		tr := train(t, d)
 		in := []rigid.Coordinate{coordinate(rng, 1e7), coordinate(rng, 1e7)}
@@ -433,7 +433,7 @@ func TestPlanet(t *testing.T) {
 	w := wheel(t, rolling.WheelDimensions{Radius: radius, Ground: sunRadius, Mount: rigid.Placement{Y: sunRadius}})
 	rng := rand.New(rand.NewPCG(6, 8))
 	turns := make([]rigid.Coordinate, 3)
-	for range 500 {
+	for range runs(500) {
 		in := coordinate(rng, 20)
 		if err := tr.Solve(turns, in); err != nil {
 			t.Fatal(err)

@@ -138,7 +138,7 @@ func coordinate(rng *rand.Rand, pos float64) rigid.Coordinate {
 // the four ways to drive agree, and rates are derivatives of places.
 func TestRolling(t *testing.T) {
 	rng := rand.New(rand.NewPCG(6, 1))
-	for i := range 2000 {
+	for i := range runs(2000) {
 		d := random(rng)
 		w := wheel(t, d)
 		turn := coordinate(rng, 20)
@@ -220,7 +220,7 @@ func checkRates(t *testing.T, w *rolling.Wheel, turn rigid.Coordinate, size floa
 // backwards in time, a wheel does the same.
 func TestSymmetry(t *testing.T) {
 	rng := rand.New(rand.NewPCG(6, 2))
-	for range 500 {
+	for range runs(500) {
 		d := random(rng)
 		d.Mount = rigid.Placement{}
 		turn := coordinate(rng, 9)
