@@ -5,7 +5,7 @@ import "example.com/twopoint/rigid"
 // A Design describes a linkage as plain data. A link needs no more than a name:
 // its axes are where its attachments and lines put them.
 type Design struct {
-	Links  []string // names; Links[0] is the frame's
+	Links  []string // names, no two alike; Links[0] is the frame's
 	Joints []Joint
 	Drives []Drive
 	// Guess is a rough position, one placement a link, of which Guess[0] is not

@@ -1,3 +1,60 @@
 // Package planar solves any planar linkage: links, joints and drives as plain
 // data, solved as Assur groups one after another.
+//
+// # Designs
+//
+// A [Design] names the links and lists joints and drives between them. Link 0 is the
+// frame. A link is no more than its index; l.At(x, y) is a point of link l, and
+// l.Line(x, y, angle) a directed line, in the link's own axes, which may lie anywhere
+// in it. Lengths are in m, angles in rad counter-clockwise.
+//
+// Joints:
+//
+//	Revolute    a pin                         takes 2 freedoms
+//	Prismatic   a straight guide              2
+//	SlidingPin  a pin in a straight slot      1
+//	Fixed       two links made one            3
+//	GearPair    gears or a belt, on an arm    1
+//	RackPair    a rack and pinion, or a wheel that rolls on a line   1
+//
+// Drives, in the order in which their inputs are given:
+//
+//	Turn   the angle of a link as seen from another        rad
+//	Slide  the displacement of a line along another        m
+//	Reach  the distance of two points: a cylinder          m, above 0
+//
+// [New] checks a design and returns an immutable [Linkage], which goroutines may
+// share. There must be as many drives as the linkage has freedoms, its Mobility: by
+// Grübler and Kutzbach 3·(links − 1) less what the joints take, and more where
+// constraints repeat others.
+//
+// # Groups
+//
+// New takes the linkage apart into driving links and Assur groups, which are solved
+// one after another; Groups gives them. A group of class II, a dyad, is solved in
+// closed form; its [Kind] tells its joints. Groups of higher class are solved by
+// Newton's method. So the time of a Move grows with the number of groups, and is
+// least when a linkage is driven where its groups are dyads.
+//
+// What is solved together is found exactly. Links that turn together by guides, gears
+// and drives share one unknown angle. The rank of the equations is taken at random
+// places modulo a prime, which no tolerance blurs: it tells links that hold each
+// other doubly while others are free, although their numbers agree.
+//
+// # Refusals
+//
+// A [DesignError] names links, joints and drives: those that are tied doubly, those
+// that stay free, those that contradict each other. Repeated constraints that hold by
+// the dimensions alone are no fault, but cannot be told from faults by counting:
+// with a Guess in the Design, a rough position, New finds what can be left out of
+// the solution and checks it on every Move. A linkage that is right by its count and
+// yet singular everywhere, by its dimensions, is found by Assemble.
+//
+// # States
+//
+// Assemble brings a Linkage to a position near a guess and gives a State, which one
+// goroutine owns. Move takes it along with the drives; Motion, Point, Turn and Slide
+// read it. Positions and motions are those of ideal rigid links without play: they
+// are no safety function, and where machinery can hurt someone local codes and
+// licensed practice decide.
 package planar

@@ -1,16 +1,18 @@
 package planar
 
-// A Joint ties links together. The joints are Revolute, Prismatic, SlidingPin,
-// Fixed, GearPair and RackPair.
+// A Joint ties links together. The joints are the values (not pointers) of Revolute,
+// Prismatic, SlidingPin, Fixed, GearPair and RackPair.
 type Joint interface{ joint() }
 
-// A Revolute is a pin: the two points coincide.
+// A Revolute is a pin: the two points coincide. Where one pin holds several links,
+// every link beyond the first takes one Revolute.
 type Revolute struct{ A, B Attachment }
 
-// A Prismatic is a straight guide: B's line stays on A's, in the same direction.
+// A Prismatic is a straight guide: B's line stays on A's, in the same direction. It
+// holds the angle between the two links.
 type Prismatic struct{ A, B Line }
 
-// A SlidingPin is a pin that slides in a straight slot.
+// A SlidingPin is a pin that slides in a straight slot, which may turn about it.
 type SlidingPin struct {
 	Pin  Attachment
 	Slot Line
@@ -24,9 +26,11 @@ type Fixed struct{ A, B Line }
 //	turn of B = ∓(A/B) × turn of A + Phase
 //
 // with the ratio of the teeth or of the radii, + when Internal. Where both are
-// given they must agree to 1e-9. The centres are held by other joints; their
-// distance is checked against the radii, where given. An open belt is Internal,
-// a crossed belt is not.
+// given they must agree to 1e-9. Other joints hold the centres; where both are pinned
+// to Arm, their distance must be that of the radii, RadiusA + RadiusB or, when
+// Internal, the difference, to 1e-9. An open belt is Internal, a crossed belt is not:
+// for belts and chains give teeth, which say nothing of the distance. Arm may be the
+// frame.
 type GearPair struct {
 	A, B, Arm        Link
 	TeethA, TeethB   int
@@ -42,7 +46,10 @@ type GearPair struct {
 //	−Radius × (turn of the pinion as seen from the rack) + Phase
 //
 // with the pinion left of the line; with Right set it lies right, and the sign is
-// +. Another joint holds the distance.
+// +. The displacement counts from the line's point; the line is the rack's pitch
+// line, or the track. Other joints hold the pinion's centre at a distance of Radius
+// from it: where its link is guided on the rack by a Prismatic, that is checked to
+// 1e-9.
 type RackPair struct {
 	Pinion      Attachment // its centre
 	Rack        Line
@@ -59,7 +66,8 @@ func (Fixed) joint()      {}
 func (GearPair) joint()   {}
 func (RackPair) joint()   {}
 
-// A Drive is a motion that is given. The drives are Turn, Slide and Reach.
+// A Drive is a motion that is given. The drives are the values (not pointers) of
+// Turn, Slide and Reach, between any two links.
 type Drive interface{ drive() }
 
 // A Turn is a driven angle: of one link as seen from another, in rad.
@@ -69,7 +77,8 @@ type Turn struct{ Of, From Link }
 // From, as seen from From's link.
 type Slide struct{ Of, From Line }
 
-// A Reach is a driven distance of two points, in m, greater than 0.
+// A Reach is a driven distance of two points, in m, greater than 0: a cylinder with
+// its piston, of which neither need be a link.
 type Reach struct{ A, B Attachment }
 
 func (Turn) drive()  {}

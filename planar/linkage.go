@@ -10,9 +10,18 @@ type Linkage struct {
 	program *program
 }
 
-// New checks a design and finds its groups. Its error is a *DesignError: of a wrong
-// reference or number, of joints and drives that hold each other doubly or leave
-// links free.
+// New checks a design and finds its groups. Its error is a *DesignError, caused by
+//
+//	ErrReference         a link that does not exist, or a joint or drive of no use
+//	rigid.ErrNotFinite   and its like, in a *rigid.DimensionError: a wrong number
+//	ErrOverconstrained   joints or drives that hold each other doubly
+//	ErrUnderconstrained  links that stay free with every drive held
+//	ErrInconsistent      joints that contradict each other, and by how much
+//
+// Lengths lie between 1e-60 and 1e60 m. Joints that repeat others and agree with them
+// by their dimensions, as the third crank of a double parallelogram, are checked on
+// each Move instead of solved: to see that they agree, New needs a Guess, of at most
+// 100 links.
 func New(d Design) (*Linkage, error) {
 	d = d.clone()
 	if err := d.validate(); err != nil {
