@@ -53,44 +53,59 @@ func (l *Linkage) SolveSlide(dst *State, slide rigid.Coordinate, knee rigid.Side
 }
 
 // triangle places crank and rod for the slider pin at pos, and reports whether
-// there is a pose on a branch that the mechanism can come to. A slide no farther
-// from a dead centre than the rounding of one that Solve gives there is at it.
+// there is a pose on a branch that the mechanism can come to. With D the distance
+// of the pin from the crank pivot and σo and σi the slide at the outer and the inner
+// dead centre, the pin is beyond one of them by
+//
+//	D − (r + l) = (σ² − σo²)/(D + (r + l)),  |r − l| − D = (σi² − σ²)/(|r − l| + D)
+//
+// and at it, with crank and rod in one line, where no more than the rounding of the
+// slide that Solve gives there is between them. That rounding, of ξ² = (l − η)(l + η),
+// may also take a slide over to the other branch where it and ξ are both next to 0.
 func (l *Linkage) triangle(t *dyad.Triangle, pos float64, knee rigid.Side) bool {
-	side, slack, s := 1-2*float64(knee), beyond*l.size, math.Abs(pos)
-	near := equal * (l.crank + l.rod)
-	if s-l.outer > slack || l.folds && l.inner-s > slack || l.full && -pos*l.side > slack {
-		return false
-	}
-	d, ahead := r2.Vec{X: pos, Y: l.guide}, pos
+	d, side, s := r2.Vec{X: pos, Y: l.guide}, 1-2*float64(knee), math.Abs(pos)
+	dist, far, near, slack := math.Hypot(pos, l.guide), l.crank+l.rod, math.Abs(l.crank-l.rod), beyond*l.size
+	over, under := (s-l.outer)*(s+l.outer), (l.inner-s)*(l.inner+s)
+	inner := math.Copysign(l.inner, pos)
 	if l.full {
-		ahead = l.side
+		inner = l.side * l.inner
 	}
 	switch {
-	case s >= l.outer-near:
-		d.X = math.Copysign(l.outer, ahead)
-	case l.folds && s <= l.inner+near || pos*ahead < 0:
-		d.X = math.Copysign(l.inner, ahead)
-	case l.bySlide.Place(t, d, side):
-		return true
+	case over > slack*(dist+far) || l.folds && under > slack*(near+dist):
+		return false
+	case over >= -equal*far*far:
+		l.flat(t, d, side)
+	case l.folds && under >= -equal*far*near:
+		if math.Abs(pos-inner) <= slack {
+			d.X = inner
+		}
+		l.flat(t, d, side)
+	case !l.bySlide.Place(t, d, side):
+		l.flat(t, d, side)
 	}
-	l.flat(t, d, side)
-	return true
+	xi := -t.Q.X
+	return !l.full || xi*l.side >= 0 || math.Abs(xi*pos) <= equal*far*far
 }
 
-// flat places crank and rod in one line, at a dead centre, for the slider pin at d.
-// Where it is in the crank pivot, which takes equal lengths, every line will do:
-// they stand square to d, as they do for the shortest d.
+// flat places crank and rod in one line for the slider pin at d, stretched or one
+// folded on the other. Equal lengths fold with the pin in the crank pivot, where any
+// line will do: they stand square to d, as they do for the shortest d.
 func (l *Linkage) flat(t *dyad.Triangle, d r2.Vec, side float64) {
-	if math.Abs(d.X)+math.Abs(d.Y) > equal*l.size {
-		l.bySlide.Flatten(t, d)
-		return
+	dist, u := math.Hypot(d.X, d.Y), r2.Vec{X: l.side}
+	if dist > 0 {
+		u = r2.Vec{X: d.X / dist, Y: d.Y / dist}
 	}
-	if d.X == 0 && d.Y == 0 {
-		d.X = l.side
+	r, q := 1.0, -1.0
+	switch {
+	case 2*dist > l.crank+l.rod+math.Abs(l.crank-l.rod):
+	case l.crank > l.rod:
+		q = 1
+	case l.crank < l.rod:
+		r = -1
+	default:
+		u, r, q = r2.Vec{X: -u.Y, Y: u.X}, side, side
 	}
-	u := r2.Scale(side, r2.Unit(d))
-	u.X, u.Y = -u.Y, u.X
-	t.R, t.Q, t.F = r2.Scale(l.crank, u), r2.Scale(l.rod, u), 0
+	t.R, t.Q, t.F = r2.Scale(r*l.crank, u), r2.Scale(q*l.rod, u), 0
 }
 
 // branch returns the branch of a pose whose rod goes xi along the guide.
