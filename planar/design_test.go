@@ -101,6 +101,7 @@ func refusals() []refusal {
 			return d
 		}(), err: ErrInconsistent, joints: []int{3, 4, 6, 7}, says: "AsAssembled"},
 
+		{name: "teeth and radii that differ", design: meshTwice(0.03, 0.11), err: ErrOverconstrained, joints: []int{2, 3}, drives: []int{0}},
 		{name: "missing drive", design: fourBar().Design, err: ErrUnderconstrained, links: "crank rod rocker", says: "1 drive or joint missing"},
 		{name: "isolated link", design: with(func(p *plan) { p.Link("loose") }), err: ErrUnderconstrained, links: "loose", says: "3 drives or joints missing"},
 		{name: "two drives of one freedom", design: with(func(p *plan) { p.turn(rocker, Frame) }),
@@ -292,11 +293,33 @@ func TestRepeats(t *testing.T) {
 		"ring of Fixed":     fixedRing(0),
 		"pins of one plate": with(func(p *plan) { l := p.Link("plate"); p.fix(2, l); p.pin(l.At(0.1, 0), Link(2).At(0.1, 0)) }),
 		"gears at distance": gearsApart(0.15),
+		"guides a turn off": turnOff(),
+		"radii for teeth":   meshTwice(0.03, 0.1),
 	} {
 		if _, err := New(d); err != nil {
 			t.Errorf("%s: %v", name, err)
 		}
 	}
+}
+
+// turnOff is a wedge drive whose angles add up to a whole turn.
+func turnOff() Design {
+	d := wedge(false)
+	d.Joints[2] = Prismatic{A: Frame.Line(0.3, 0, math.Pi/2), B: Link(2).Line(0, 0, math.Pi/2-2*math.Pi)}
+	return d
+}
+
+// meshTwice ties two wheels by teeth in the ratio of 3 to 10 and by radii as well.
+func meshTwice(a, b float64) Design {
+	var p plan
+	l := p.links("one", "two")
+	p.pin(Frame.At(0, 0), l[0].At(0, 0))
+	p.pin(Frame.At(a+b, 0), l[1].At(0, 0))
+	p.Joints = append(p.Joints,
+		GearPair{A: l[0], B: l[1], Arm: Frame, TeethA: 18, TeethB: 60},
+		GearPair{A: l[0], B: l[1], Arm: Frame, RadiusA: a, RadiusB: b})
+	p.turn(l[0], Frame)
+	return p.Design
 }
 
 func (p *plan) fix(a, b Link) {

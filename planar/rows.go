@@ -214,10 +214,8 @@ func (b *builder) slide(pins *pins, j SlidingPin, joint int) error {
 
 // ratio returns by how much B turns for one turn of A on the arm.
 func (g GearPair) ratio() coefficient {
-	k := rational(1)
-	if g.TeethA != 0 {
-		k = quotient(g.TeethA, g.TeethB)
-	} else {
+	k := quotient(g.TeethA, g.TeethB)
+	if g.TeethA == 0 {
 		k = rational(g.RadiusA / g.RadiusB)
 	}
 	if g.Internal {

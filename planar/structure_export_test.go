@@ -44,3 +44,12 @@ func Once(l *Linkage) error {
 	}
 	return nil
 }
+
+// Sizes returns the number of unknowns of every block, in the order of solution.
+func Sizes(l *Linkage) []int {
+	var sizes []int
+	for _, b := range l.system.blocks {
+		sizes = append(sizes, len(b.unknowns))
+	}
+	return sizes
+}

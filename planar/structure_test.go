@@ -433,3 +433,28 @@ func TestGroups(t *testing.T) {
 		})
 	}
 }
+
+// Blocks are as small as can be: driving links, wheels and planets take no
+// equations to be solved together, nor does a pinion turned by its rack.
+func TestBlocks(t *testing.T) {
+	rack := rackPress()
+	rack.Drives[0] = Slide{Of: Link(2).Line(0, 0, 0), From: Frame.Line(0, 0, 0)}
+	for _, test := range []struct {
+		name   string
+		design Design
+		want   string
+	}{
+		{"four-bar", driven(fourBar(), 1, 0), "[1 1 6]"},
+		{"slider-crank", driven(sliderCrank(), 1, 0), "[1 1 5]"},
+		{"epicyclic", epicyclic(3, true), "[1 1 1 1 1 1 1 1 1 1]"},
+		{"rack that drives its pinion", rack, "[1 1 2 1 6]"},
+	} {
+		l, err := New(test.design)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := fmt.Sprint(Sizes(l)); got != test.want {
+			t.Errorf("%s: blocks of %s, want %s", test.name, got, test.want)
+		}
+	}
+}
