@@ -59,7 +59,7 @@ func compile(s *system, names []string) (*program, error) {
 	c.turned[0] = true
 	for i := range c.stages {
 		if err := c.stage(&c.stages[i]); err != nil {
-			return nil, err
+			return nil, &DesignError{Err: err, Links: c.namesOf(c.stages[i].group, names)}
 		}
 	}
 	for b := range c.bodies {

@@ -26,13 +26,18 @@ type faults struct{ unreachable, singular error }
 
 // name makes the errors of the groups.
 func (c *compiler) name(names []string) {
-	for _, g := range c.groups {
-		var links []string
-		for _, l := range g.Links {
-			links = append(links, names[l])
-		}
+	for i := range c.groups {
+		links := c.namesOf(i, names)
 		c.faults = append(c.faults, faults{&groupError{links, rigid.ErrUnreachable}, &groupError{links, rigid.ErrSingular}})
 	}
+}
+
+// namesOf returns the names of a group's links.
+func (c *compiler) namesOf(group int, names []string) (links []string) {
+	for _, l := range c.groups[group].Links {
+		links = append(links, names[l])
+	}
+	return links
 }
 
 // fault returns the error of an op.
