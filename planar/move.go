@@ -258,8 +258,8 @@ func (w *walk) place() (status, int) {
 //
 //	h⁴/384 × the fourth derivative
 //
-// taken as four times the condition's size for h in rad, and by what it was off at
-// the last trial.
+// taken as four times the condition's size for h in rad, by what its bends tell, and
+// by what it was off at the last trial.
 func (w *walk) crossed(h float64, rated int) (op int, cut float64, ok bool) {
 	for _, i := range w.doubt {
 		if i > rated {
@@ -269,11 +269,12 @@ func (w *walk) crossed(h float64, rated int) (op int, cut float64, ok bool) {
 		a, n := o.rooms(w.from)
 		b, _ := o.rooms(w.to)
 		for k := range n {
-			at, value, dips := dip(a[k], b[k])
+			path := through(a[k], b[k])
+			at, value, dips := path.dip()
 			if !dips {
 				continue
 			}
-			off := h * h * h * h / 96 * a[k].size
+			off := math.Max(h*h*h*h/96*a[k].size, path.off(a[k], b[k]))
 			if w.suspect.op == i && w.suspect.room == k {
 				off = math.Max(off, 4*w.suspect.off)
 			}

@@ -103,18 +103,19 @@ func (o *fused) choose(sc *scene) status { return sc.nearest(o, o.i, o.seen, lef
 
 func (o *fused) rooms(sc *scene) (r [2]room, n int) {
 	g1, g2 := o.arm1.grow(sc), o.arm2.grow(sc)
-	b, c := g1.length, g2.length
-	bv, cv := b*g1.vel, c*g2.vel
-	v := r2.Sub(sc.vel(&o.c), sc.vel(&o.a))
+	b, c := r2.Vec{X: g1.length}, r2.Vec{X: g2.length}
+	bv, cv := r2.Scale(g1.vel, b), r2.Scale(g2.vel, c)
+	ba, ca := r2.Scale(g1.acc, b), r2.Scale(g2.acc, c)
+	far := square(r2.Add(b, c), r2.Add(bv, cv), r2.Add(ba, ca))
+	near := square(r2.Sub(b, c), r2.Sub(bv, cv), r2.Sub(ba, ca))
+	va, aa := sc.swing(&o.a)
+	vc, ac := sc.swing(&o.c)
+	v, a := r2.Sub(vc, va), r2.Sub(ac, aa)
 	if o.across >= 0 {
-		w := turned(sc.m[o.across].Pose.Axis, o.shift)
-		v = r2.Add(v, r2.Scale(sc.m[o.across].Omega, r2.Vec{X: w.Y, Y: -w.X}))
+		m := rigid.Motion{Pose: sc.m[o.across].Pose, Omega: sc.m[o.across].Omega, Alpha: sc.m[o.across].Alpha}
+		p := m.At(o.shift)
+		v, a = r2.Sub(v, p.Vel), r2.Sub(a, p.Acc)
 	}
-	d := sc.guard[o.i].d
-	d2, slope := r2.Dot(d, d), 2*r2.Dot(d, v)
-	far, near := (b+c)*(b+c), (b-c)*(b-c)
-	return [2]room{
-		{far - d2, 2*(b+c)*(bv+cv) - slope, far},
-		{d2 - near, slope - 2*(b-c)*(bv-cv), far},
-	}, 2
+	d2 := square(sc.guard[o.i].d, v, a)
+	return [2]room{far.less(d2, far.value), d2.less(near, far.value)}, 2
 }

@@ -84,8 +84,10 @@ func (o *rpr) choose(sc *scene) status { return sc.nearest(o, o.i, o.seen, left,
 
 func (o *rpr) rooms(sc *scene) (r [2]room, n int) {
 	g := &sc.guard[o.i]
-	slope := 2 * r2.Dot(g.d, r2.Sub(sc.vel(&o.a), sc.vel(&o.c)))
-	return [2]room{{g.room, slope, math.Max(r2.Dot(g.d, g.d), o.size*o.size)}}, 1
+	va, aa := sc.swing(&o.a)
+	vc, ac := sc.swing(&o.c)
+	d2 := square(g.d, r2.Sub(va, vc), r2.Sub(aa, ac))
+	return [2]room{d2.less(room{value: o.k.E * o.k.E}, math.Max(d2.value, o.size*o.size))}, 1
 }
 
 // A meet places bodies of known angle by a point that they share and that runs on

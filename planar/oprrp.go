@@ -122,9 +122,14 @@ func (o *rrp) gap(sc *scene) float64 {
 func (o *rrp) choose(sc *scene) status { return sc.nearest(o, o.i, o.seen, left, right) }
 
 func (o *rrp) rooms(sc *scene) (r [2]room, n int) {
-	l, g, v := o.guide.moving(sc), &sc.guard[o.i], sc.vel(&o.a)
-	k := o.rod.grow(sc)
-	// η = E − n·(A − G), so that η' = −n·(vA − drift of the guide's body at A's foot)
-	slope := -l.Axes(r2.Sub(v, l.Drift(g.d.X))).Y
-	return [2]room{{g.room, 2 * (k.length*k.length*k.vel - g.d.Y*slope), k.length * k.length}}, 1
+	l, g, k := o.guide.moving(sc), &sc.guard[o.i], o.rod.grow(sc)
+	vel, acc := sc.swing(&o.a)
+	// A as seen from the guide is at (x, y), and η = E − y
+	x := g.d.X
+	l.E -= g.d.Y
+	v := l.Axes(r2.Sub(vel, l.Drift(x)))
+	a := l.Axes(r2.Sub(acc, l.Bias(x, v.X)))
+	rod := square(r2.Vec{X: k.length}, r2.Vec{X: k.length * k.vel}, r2.Vec{X: k.length * k.acc})
+	eta := square(r2.Vec{Y: g.d.Y}, r2.Vec{Y: -v.Y}, r2.Vec{Y: -a.Y})
+	return [2]room{rod.less(eta, rod.value)}, 1
 }

@@ -168,7 +168,8 @@ func (o *rrr) rooms(sc *scene) (r [2]room, n int) {
 	}
 	most, least := o.k.Reach()
 	g := &sc.guard[o.i]
-	d2 := r2.Dot(g.d, g.d)
-	slope := 2 * r2.Dot(g.d, r2.Sub(sc.vel(&o.c), sc.vel(&o.a)))
-	return [2]room{{most - d2, -slope, most}, {d2 - least, slope, most}}, 2
+	va, aa := sc.swing(&o.a)
+	vc, ac := sc.swing(&o.c)
+	d2 := square(g.d, r2.Sub(vc, va), r2.Sub(ac, aa))
+	return [2]room{room{value: most}.less(d2, most), d2.less(room{value: least}, most)}, 2
 }

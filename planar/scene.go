@@ -160,11 +160,10 @@ func back(u, v r2.Vec) r2.Vec {
 	return r2.Vec{X: u.X*v.X + u.Y*v.Y, Y: u.X*v.Y - u.Y*v.X}
 }
 
-// vel returns the velocity of a spot.
-func (s *scene) vel(p *spot) r2.Vec {
+// swing returns the velocity and acceleration of a spot.
+func (s *scene) swing(p *spot) (vel, acc r2.Vec) {
 	m := &s.m[p.body]
-	r := turned(m.Pose.Axis, p.at)
-	return r2.Vec{X: m.Vel.X - m.Omega*r.Y, Y: m.Vel.Y + m.Omega*r.X}
+	return swing(m, turned(m.Pose.Axis, p.at))
 }
 
 // nearest solves an op on the branch that leaves the bodies nearest to where they
