@@ -143,7 +143,8 @@ func TestAngleBeyondFloat(t *testing.T) {
 }
 
 func TestNewPairErrors(t *testing.T) {
-	nan := math.NaN()
+	nan, sum := math.NaN(), 0.1 // a variable, for constants are added exactly
+	sum += 0.2
 	for _, row := range []struct {
 		d     rolling.PairDimensions
 		name  string
@@ -159,7 +160,7 @@ func TestNewPairErrors(t *testing.T) {
 		{rolling.PairDimensions{TeethA: 20, Centres: 1}, "TeethB", rigid.ErrNotPositive},
 		{rolling.PairDimensions{TeethA: -20, TeethB: 30, Centres: 1}, "TeethA", rigid.ErrNotPositive},
 		{rolling.PairDimensions{TeethA: 20, TeethB: 20, Centres: 1, Internal: true}, "TeethB", rigid.ErrSingular},
-		{rolling.PairDimensions{RadiusA: 0.3, RadiusB: 0.1 + 0.2, Internal: true}, "RadiusB", rigid.ErrSingular},
+		{rolling.PairDimensions{RadiusA: 0.3, RadiusB: sum, Internal: true}, "RadiusB", rigid.ErrSingular},
 		{rolling.PairDimensions{TeethA: 20, TeethB: 30, RadiusA: 0.2, RadiusB: 0.3001}, "RadiusB", rigid.ErrInput},
 		{rolling.PairDimensions{RadiusA: 0.2, RadiusB: 0.3, Centres: 0.5001}, "Centres", rigid.ErrInput},
 		{rolling.PairDimensions{RadiusA: 1, RadiusB: 1, Mount: rigid.Placement{Y: nan}}, "Mount.Y", rigid.ErrNotFinite},
@@ -220,20 +221,24 @@ func TestRack(t *testing.T) {
 	}
 }
 
-// TestRackTeeth: a million turns move the rack by a million times its teeth, but for
-// the rounding of the turn given.
+// TestRackTeeth: a million turns, rounded to a float64, move the rack by the float64
+// nearest to teeth·pitch/2π times that (mpmath, 60 digits).
 func TestRackTeeth(t *testing.T) {
 	p, err := rolling.NewRack(rolling.RackDimensions{Teeth: 19, Pitch: 0.0125})
 	if err != nil {
 		t.Fatal(err)
 	}
-	const turn = 1e6 * rigid.Revolution // rounds 2π·10⁶ by 4.06e-10 rad (mpmath)
-	var st rolling.RackState
-	if err := p.Solve(&st, rigid.Coordinate{Pos: turn}); err != nil {
-		t.Fatal(err)
-	}
-	if want := 19 * 0.0125 * 1e6; !near(st.Slide.Pos, want, 5e-10*19*0.0125/(2*math.Pi)+want*eps) {
-		t.Errorf("%v, want %v", st.Slide.Pos, want)
+	for _, row := range []struct{ turn, want float64 }{
+		{6283185.307179586, 237500.0},
+		{12345.678, 466.6579738862053},
+		{-0.7, -0.0264595092890276},
+		{3000000.0, 113397.89695297544},
+		{33333.333333333336, 1259.9766328108383},
+	} {
+		var st rolling.RackState
+		if err := p.Solve(&st, rigid.Coordinate{Pos: row.turn}); err != nil || st.Slide.Pos != row.want {
+			t.Errorf("turn %v: %v %v, want %v", row.turn, st.Slide.Pos, err, row.want)
+		}
 	}
 }
 

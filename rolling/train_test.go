@@ -301,6 +301,7 @@ func TestNewTrainErrors(t *testing.T) {
 	}{
 		{"one drive missing", rolling.TrainDesign{Members: members, Meshes: stage, Drives: drives(1)}, "carrier", rigid.ErrInput, "missing"},
 		{"one drive too many", rolling.TrainDesign{Members: members, Meshes: stage, Drives: drives(1, 3, 4)}, "carrier", rigid.ErrInput, "too many"},
+		{"both of a pair driven", rolling.TrainDesign{Members: []string{"frame", "a", "b"}, Drives: drives(1, 2), Meshes: []rolling.Mesh{mesh(1, 2, 0, 20, 30)}}, "b", rigid.ErrInput, "too many"},
 		{"a member in no mesh", rolling.TrainDesign{Members: append(members[:5:5], "idler"), Meshes: stage, Drives: drives(1, 4)}, "idler", rigid.ErrInput, "missing"},
 		{"locked: sun and ring fixed", rolling.TrainDesign{Members: []string{"frame", "planet", "carrier"}, Drives: drives(2),
 			Meshes: rolling.Planetary{Sun: 24, Planet: 18, Ring: 60}.Meshes(0, 1, 0, 2)}, "carrier", rigid.ErrInput, "locked"},

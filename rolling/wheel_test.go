@@ -301,6 +301,8 @@ func TestTurningGround(t *testing.T) {
 
 func TestNewWheelErrors(t *testing.T) {
 	nan, inf := math.NaN(), math.Inf(1)
+	sum := 0.1 // a variable, for constants are added exactly
+	sum += 0.2
 	for _, row := range []struct {
 		d     rolling.WheelDimensions
 		name  string
@@ -313,7 +315,7 @@ func TestNewWheelErrors(t *testing.T) {
 		{rolling.WheelDimensions{Radius: 1, Ground: inf}, "Ground", rigid.ErrNotFinite},
 		{rolling.WheelDimensions{Radius: 1, Ground: -1e-61}, "Ground", rigid.ErrInput},
 		{rolling.WheelDimensions{Radius: 0.3, Ground: -0.3}, "Ground", rigid.ErrSingular},
-		{rolling.WheelDimensions{Radius: 0.3, Ground: -(0.1 + 0.2)}, "Ground", rigid.ErrSingular},
+		{rolling.WheelDimensions{Radius: 0.3, Ground: -sum}, "Ground", rigid.ErrSingular},
 		{rolling.WheelDimensions{Radius: 1, Mount: rigid.Placement{X: nan}}, "Mount.X", rigid.ErrNotFinite},
 		{rolling.WheelDimensions{Radius: 1, Mount: rigid.Placement{Y: inf}}, "Mount.Y", rigid.ErrNotFinite},
 		{rolling.WheelDimensions{Radius: 1, Mount: rigid.Placement{Angle: nan}}, "Mount.Angle", rigid.ErrNotFinite},
