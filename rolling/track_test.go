@@ -66,7 +66,7 @@ func TestTrackFits(t *testing.T) {
 	}
 	for arc, want := range map[float64]error{
 		0: nil, 41.5: nil, -1e-13: nil, 41.5 + 4e-13: nil,
-		-1e-12: rigid.ErrUnreachable, 41.5 + 1e-12: rigid.ErrUnreachable, math.Inf(1): rigid.ErrNotFinite,
+		-5e-13: rigid.ErrUnreachable, 41.5 + 5e-13: rigid.ErrUnreachable, math.Inf(1): rigid.ErrNotFinite,
 	} {
 		if _, err := track(arc); err != want {
 			t.Errorf("at %v: %v, want %v", arc, err, want)
