@@ -120,7 +120,7 @@ func dip(a, b Coefficients) float64 {
 	t := -l / (2 * m)
 	side := math.Copysign(1, a.Second+b.Second)
 	least, end := side*(a.Second+l*t/2), min(side*a.Second, side*b.Second)
-	if 0 < t && t < 1 && least < min(end, end/2) {
+	if 0 < t && t < 1 && least < end/2 {
 		return a.In + t*h
 	}
 	return math.NaN()

@@ -85,8 +85,8 @@ func TestLawThen(t *testing.T) {
 }
 
 func TestLawSweep(t *testing.T) {
-	over := rigid.Interval{Lo: 0.1, Hi: 0.7}
 	for _, n := range []int{2, 3, 7, 1000} {
+		over := rigid.Interval{Lo: -1, Hi: 1e-17} // Lo + (Hi − Lo) is 0
 		var at []float64
 		for c, err := range rigid.Law(sineLaw).Sweep(over, n) {
 			if err != nil || c != sine(c.In) {
@@ -101,6 +101,27 @@ func TestLawSweep(t *testing.T) {
 			near(t, "step", at[i]-at[i-1], (over.Hi-over.Lo)/float64(n-1), 1e-15)
 		}
 	}
+}
+
+// A law that does not say where it is can be searched all the same.
+func TestLawWithoutIn(t *testing.T) {
+	law := rigid.Law(func(x float64) (rigid.Coefficients, error) {
+		c := sine(x)
+		c.In = 0
+		return c, nil
+	})
+	i := 0.0
+	for c := range law.Sweep(rigid.Interval{Lo: 0, Hi: 4}, 5) {
+		if c != sine(i) {
+			t.Errorf("%v: %+v", i, c)
+		}
+		i++
+	}
+	dead, err := law.Extremes(rigid.Interval{Lo: 1, Hi: 2})
+	if err != nil {
+		t.Fatal(err)
+	}
+	places(t, "dead centre", dead, 1e-15, math.Pi/2)
 }
 
 func TestLawSweepErrors(t *testing.T) {
