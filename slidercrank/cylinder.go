@@ -105,7 +105,9 @@ func (c *OscillatingCylinder) write(dst *CylinderState, m *slotMotion) {
 //
 //	4rc cos²(φ/2) = D² − (r − c)²,  4rc sin²(φ/2) = (r + c)² − D²,  D² = σ² + e²
 //
-// and with f' and f” the derivatives of σ by φ,  ω = σ̇/f',  α = (σ̈ − f”ω²)/f'.
+// and, derivatives by φ, for the speed v and the acceleration a along the line
+//
+//	ω = v/σ',  α = (a − σ''ω²)/σ'
 func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.Side) error {
 	if slide.Pos*0+slide.Vel*0+slide.Acc*0 != 0 {
 		return rigid.ErrNotFinite

@@ -126,9 +126,6 @@ func (l *SlottedLever) TimeRatio() (float64, error) {
 	if len(c) != 2 {
 		return 0, rigid.ErrUnreachable
 	}
-	there := c[1].In - c[0].In
-	if c[1].Out < c[0].Out {
-		there = rigid.Revolution - there
-	}
+	there := c[1].In - c[0].In // the lesser swing comes first
 	return there / (rigid.Revolution - there), nil
 }

@@ -1,9 +1,7 @@
 package slidercrank
 
 import (
-	"cmp"
 	"math"
-	"slices"
 
 	"example.com/twopoint/rigid"
 )
@@ -27,10 +25,10 @@ func (k *slotForm) turns() []rigid.Interval {
 // angles to the line: the pin is at ±r on the line's left normal through the crank
 // pivot, so that
 //
-//	e + c sin ψ = ±r,  φ = ψ ± π/2
+//	e + c sin ψ = ±r,  φ = ψ ± π/2,  ψ'' = ∓r/σ with σ = c cos ψ
 //
-// and there, ξ being 0 and σ = c cos ψ, ψ” = ∓r/σ, the limit of −φ”/φ'³ of the
-// way back.
+// of which the last is the limit of −φ” of the way back over φ' cubed, ξ going to
+// 0. The lower one comes first, at φ in (−π, 0); the upper one is in (0, π).
 func (k *slotForm) deadCentres() []rigid.Coefficients {
 	var found []rigid.Coefficients
 	for _, side := range [...]float64{-1, 1} {
@@ -40,9 +38,8 @@ func (k *slotForm) deadCentres() []rigid.Coefficients {
 		}
 		swing := math.Atan2(side*k.r-k.e, cos)
 		found = append(found, rigid.Coefficients{
-			In: rigid.Wrap(swing + side*math.Pi/2), Out: swing, Second: -side * k.r / cos,
+			In: swing + side*math.Pi/2, Out: swing, Second: -side * k.r / cos,
 		})
 	}
-	slices.SortFunc(found, func(a, b rigid.Coefficients) int { return cmp.Compare(a.In, b.In) })
 	return found
 }

@@ -38,7 +38,7 @@ func (l *SlottedLever) SolveSwing(dst *LeverState, swing rigid.Coordinate, knee 
 //
 //	h = e + c sin ψ,  ξ² = r² − h²,  σ = c cos ψ + ξ,  φ = ψ + atan2(h, ξ)
 //
-// whence, f' and f” standing for derivatives by ψ, h' = c cos ψ, ξξ' = −hh',
+// whence, the derivatives by ψ, with h' = c cos ψ and ξξ' = −hh',
 //
 //	φ' = σ/ξ        φ'' = −(c/ξ³)(ξy − hσ cos ψ)
 //	σ' = −cy/ξ      σ'' = −(c/ξ³)(r²σ cos ψ − hξy)
