@@ -27,8 +27,8 @@ func (k *slotForm) turns() []rigid.Interval {
 //
 //	e + c sin ψ = ±r,  φ = ψ ± π/2,  ψ'' = ∓r/σ with σ = c cos ψ
 //
-// of which the last is the limit of −φ” of the way back over φ' cubed, ξ going to
-// 0. The lower one comes first, at φ in (−π, 0); the upper one is in (0, π).
+// of which the last is the limit that the derivatives of the way back lead to, ξ
+// going to 0. The lower one comes first, at φ in (−π, 0); the upper one is in (0, π).
 func (k *slotForm) deadCentres() []rigid.Coefficients {
 	var found []rigid.Coefficients
 	for _, side := range [...]float64{-1, 1} {
