@@ -41,7 +41,9 @@ func (s *State) Mode() string {
 		}
 		switch o := o.(type) {
 		case *group:
-			mode[g] = '?'
+			if !o.linear {
+				mode[g] = '?'
+			}
 		case branched:
 			r := runes[s.now.branch[o.number()]]
 			if mode[g] != '.' {

@@ -10,6 +10,7 @@ type group struct {
 	n      *newton
 	at     int   // of its workspace in scene.desks
 	bodies []int // that it turns
+	linear bool  // whether it turns none, and so has one solution
 }
 
 func (o *group) place(was, to *scene) status {

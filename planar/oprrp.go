@@ -8,39 +8,38 @@ import (
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
-// A track is a line on a body that is known: the guide of a slider, or the line
-// square to a driven displacement.
+// A track is a line that is known: the guide of a slider, or the line square to a
+// driven displacement.
 type track struct {
-	on spot
-	u  r2.Vec    // unit vector along it, in the body's axes
-	e  float64   // how far left of it the point runs that is guided
-	by *angleSum // or nil: how far the line has moved to its right, in m
+	on   spot      // a point of it
+	with int       // the body that it turns with
+	u    r2.Vec    // unit vector along it, in that body's axes
+	e    float64   // how far left of it the point runs that is guided
+	by   *angleSum // or nil: how far the line has moved to its right, in m
 }
 
 // line returns the track at its place, without rates.
 func (k *track) line(sc *scene) dyad.Line {
-	at := k.on.at
+	l := dyad.Line{G: sc.place(&k.on), U: turned(sc.m[k.with].Pose.Axis, k.u), E: k.e}
 	if k.by != nil {
-		at = r2.Add(at, r2.Scale(k.by.value(sc), k.right()))
+		l.E -= k.by.value(sc)
 	}
-	return dyad.Line{
-		G: sc.place(&spot{k.on.body, at}), U: turned(sc.m[k.on.body].Pose.Axis, k.u), E: k.e,
-	}
+	return l
 }
 
-func (k *track) right() r2.Vec { return r2.Vec{X: k.u.Y, Y: -k.u.X} }
-
-// moving returns the track with its rates.
+// moving returns the track with its rates. A line that moves to its right by s has
+// its point G + s·right, right = −U⊥.
 func (k *track) moving(sc *scene) dyad.Line {
-	m := &sc.m[k.on.body]
-	p := rigid.Point{Pos: k.on.at}
+	p, m := sc.m[k.on.body].At(k.on.at), &sc.m[k.with]
+	l := dyad.Line{G: p.Pos, V: p.Vel, A: p.Acc, U: turned(m.Pose.Axis, k.u), Omega: m.Omega, Alpha: m.Alpha, E: k.e}
 	if k.by != nil {
+		s := k.by.value(sc)
 		vel, acc := k.by.rates(sc)
-		n := k.right()
-		p = rigid.Point{Pos: r2.Add(p.Pos, r2.Scale(k.by.value(sc), n)), Vel: r2.Scale(vel, n), Acc: r2.Scale(acc, n)}
+		right := rigid.Motion{Pose: rigid.Pose{Axis: r2.Vec{X: l.U.Y, Y: -l.U.X}}, Omega: m.Omega, Alpha: m.Alpha}
+		q := right.Carry(rigid.Point{Pos: r2.Vec{X: s}, Vel: r2.Vec{X: vel}, Acc: r2.Vec{X: acc}})
+		l.G, l.V, l.A = r2.Add(l.G, q.Pos), r2.Add(l.V, q.Vel), r2.Add(l.A, q.Acc)
 	}
-	p = m.Carry(p)
-	return dyad.Line{G: p.Pos, V: p.Vel, A: p.Acc, U: turned(m.Pose.Axis, k.u), Omega: m.Omega, Alpha: m.Alpha, E: k.e}
+	return l
 }
 
 // along returns the place of the guided point at distance s along a line.

@@ -169,57 +169,55 @@ func (c *compiler) meeting(p *puzzle, one, two tie, first, second spot) bool {
 	return true
 }
 
-// track returns the line on which a row keeps a point of a body, where the other
-// body of the row is known and the angle between them constant. With P the point,
-// a row whose line is fixed in the other body puts
+// track returns the line on which a row keeps a point P of a body of known angle,
+// the other body of the row being known. A row whose line is fixed in the other
+// body puts
 //
 //	n·(P − pa) = value + n·(P − pb)        (guide)
 //	u·(P − pa) = value + in + u·(P − pb)   (slide)
 //
-// and one whose line is fixed in the body itself the same with the signs turned.
+// which is a line there if the angle between the bodies is constant or P is pb. One
+// whose line is fixed in the body itself puts
+//
+//	n·(P − pb) = n·(P − pa) − value
+//	u·(P − pb) = u·(P − pa) − value − in
 func (c *compiler) track(r *row, p spot) (k track, ok bool) {
-	own := r.b == p.body
-	other := r.a
-	if !own {
-		other = r.b
-	}
-	a, b := form0(&c.angles[p.body]), form0(&c.angles[other])
-	turn := a.add(-1, &b) // of the body as seen from the other
-	if len(turn.psi)+len(turn.in)+len(turn.phase) > 0 {
-		return k, false
-	}
-	u := r.u
-	if own {
-		k.on = spot{r.a, r.pa}
-	} else {
-		k.on, u = spot{r.b, r.pb}, rotate(r.u, turn.c)
-	}
-	n := r2.Vec{X: -u.Y, Y: u.X}
-	var beside r2.Vec // from the row's point of the body to P, in the other's axes
-	value := r.value
-	if own {
-		beside = rotate(r2.Sub(p.at, r.pb), turn.c)
-	} else {
-		beside = rotate(r2.Sub(p.at, r.pa), turn.c)
-		value = -value
-	}
-	switch r.kind {
-	case rowGuide:
-		k.u, k.e = u, value+r2.Dot(n, beside)
-		return k, true
-	case rowSlide, rowRack:
-		k.by = c.displacement(r)
-		if k.by == nil {
+	if r.kind == rowSlide || r.kind == rowRack {
+		if k.by = c.displacement(r); k.by == nil {
 			return k, false
 		}
-		if own {
-			k.u, k.e = n, -value-r2.Dot(u, beside)
-		} else {
-			k.u, k.e = r2.Scale(-1, n), value+r2.Dot(u, beside)
-		}
-		return k, true
 	}
-	return k, false
+	var beside r2.Vec
+	if k.with = r.a; r.b == p.body {
+		k.on = spot{r.a, r.pa}
+		if beside, ok = c.besideOf(r, p); !ok {
+			return k, false
+		}
+	} else {
+		k.on, beside = spot{r.b, r.pb}, r2.Sub(p.at, r.pa)
+	}
+	u, n, sign := r.u, r2.Vec{X: -r.u.Y, Y: r.u.X}, 1.0
+	if r.a == p.body {
+		sign = -1
+	}
+	if r.kind == rowGuide {
+		k.u, k.e = u, sign*r.value+r2.Dot(n, beside)
+	} else { // the line is square to u, so that its right is u, or −u
+		k.u, k.e = r2.Scale(sign, n), -r.value-sign*r2.Dot(u, beside)
+	}
+	return k, true
+}
+
+// besideOf returns the vector from the row's point of its body b to another in the
+// axes of a, if it is fixed there.
+func (c *compiler) besideOf(r *row, p spot) (r2.Vec, bool) {
+	v := r2.Sub(p.at, r.pb)
+	if v == (r2.Vec{}) {
+		return v, true
+	}
+	a, b := form0(&c.angles[r.b]), form0(&c.angles[r.a])
+	turn := a.add(-1, &b)
+	return rotate(v, turn.c), len(turn.psi)+len(turn.in)+len(turn.phase) == 0
 }
 
 // displacement returns the part of a row's displacement along its line that
@@ -280,7 +278,7 @@ func (c *compiler) higher(u *stage) error {
 	if err != nil {
 		return err
 	}
-	g := &group{n: n, at: len(c.newtons)}
+	g := &group{n: n, at: len(c.newtons), linear: len(u.psi) == 0}
 	c.newtons = append(c.newtons, n)
 	c.emit(u.group, g)
 	for _, body := range c.turnedBy(u) {
@@ -474,7 +472,8 @@ func (c *compiler) beside(p *puzzle, body, first int, slots map[int]int) bool {
 		if !ok1 || !ok2 {
 			return false
 		}
-		k1.on.body, k2.on.body = slots[k1.on.body], slots[k2.on.body]
+		k1.relative(slots, body, slot)
+		k2.relative(slots, body, slot)
 		c.emit(p.group, turn)
 		c.emit(p.group, &meet{at: c.meets, one: k1, two: k2, of: []spot{{slot, own.at}}})
 		c.meets++
@@ -482,6 +481,16 @@ func (c *compiler) beside(p *puzzle, body, first int, slots map[int]int) bool {
 	c.motions++
 	slots[body] = slot
 	return true
+}
+
+// relative puts the slots of relative motions in place of bodies.
+func (k *track) relative(slots map[int]int, body, slot int) {
+	k.on.body = slots[k.on.body]
+	if k.with == body {
+		k.with = slot
+	} else {
+		k.with = slots[k.with]
+	}
 }
 
 // ride emits the motions of a cluster's bodies but for the first.
