@@ -52,3 +52,27 @@ func BenchmarkWheel(b *testing.B) {
 		})
 	}
 }
+
+func BenchmarkPair(b *testing.B) {
+	p := pair(b, rolling.PairDimensions{TeethA: 23, TeethB: 81, Centres: 0.26})
+	in := inputs()
+	var st rolling.PairState
+	b.ReportAllocs()
+	for i := 0; b.Loop(); i++ {
+		if err := p.Solve(&st, in[i&4095]); err != nil {
+			b.Fatal(err)
+		}
+	}
+}
+
+// BenchmarkTrain is a train of seven members and two drives.
+func BenchmarkTrain(b *testing.B) {
+	tr := train(b, coupledAnnuli())
+	in, dst := inputs(), make([]rigid.Coordinate, 7)
+	b.ReportAllocs()
+	for i := 0; b.Loop(); i++ {
+		if err := tr.Solve(dst, in[i&4095], in[(i+7)&4095]); err != nil {
+			b.Fatal(err)
+		}
+	}
+}

@@ -188,7 +188,7 @@ func TestTurnOn(t *testing.T) {
 	if err := w.SolveTrack(&st, track, rigid.Coordinate{Pos: 5, Vel: 2, Acc: 3}); err != nil {
 		t.Fatal(err)
 	}
-	if got := c.Output(2, 3); got != st.Turn || c.In != 5 {
+	if got := c.Output(2, 3); got.Pos != st.Turn.Pos || !near(got.Vel, st.Turn.Vel, 1e-14) || !near(got.Acc, st.Turn.Acc, 1e-14) || c.In != 5 {
 		t.Errorf("%+v, want %+v", got, st.Turn)
 	}
 	if _, err := law(50); err != rigid.ErrUnreachable {
