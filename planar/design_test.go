@@ -294,7 +294,14 @@ func TestRepeats(t *testing.T) {
 		"pins of one plate": with(func(p *plan) { l := p.Link("plate"); p.fix(2, l); p.pin(l.At(0.1, 0), Link(2).At(0.1, 0)) }),
 		"gears at distance": gearsApart(0.15),
 		"guides a turn off": turnOff(),
-		"radii for teeth":   meshTwice(0.03, 0.1),
+		"phase that is read": func() Design {
+			d := meshTwice(0.03, 0.1)
+			first, second := d.Joints[2].(GearPair), d.Joints[3].(GearPair)
+			first.Phase, second.AsAssembled = 0.3, true
+			d.Joints[2], d.Joints[3] = first, second
+			return d
+		}(),
+		"radii for teeth": meshTwice(0.03, 0.1),
 	} {
 		if _, err := New(d); err != nil {
 			t.Errorf("%s: %v", name, err)
