@@ -10,8 +10,8 @@ import (
 // rises all the way or falls, as Strokes gives it: its In is this law's output, its
 // Out this law's input. Together with l it gives back the output to rounding.
 //
-// Each call of it calls l a bounded number of times, 129 at most and mostly two to
-// five, and allocates nothing. Its errors are ErrUnreachable for a position that the
+// Each call of it calls l a bounded number of times, 129 at most and mostly three
+// to five, and allocates nothing. Its errors are ErrUnreachable for a position that the
 // stroke does not reach, by more than rounding; ErrSingular at a dead centre, where
 // |First| of l is below LeastMargin times its mean over the stroke (Solve answers
 // there, for the place alone); ErrNotFinite; and l's own. At an end of l's range,
