@@ -53,22 +53,37 @@ func value(s *State, d Drive) rigid.Coordinate {
 	return rigid.Coordinate{}
 }
 
+// sixBar is a six-bar of Stephenson's third kind, driven by its crank.
+func sixBar() Design {
+	var p plan
+	l := p.links("crank", "plate", "rocker", "rod", "far rocker")
+	p.pin(Frame.At(0, 0), l[0].At(0, 0))
+	p.pin(l[0].At(1.1, 0), l[1].At(0, 0))
+	p.pin(l[1].At(3.5, 0), l[2].At(2.7, 0))
+	p.pin(Frame.At(4, 0.3), l[2].At(0, 0))
+	p.pin(l[1].At(1.9, 1.2), l[3].At(0, 0))
+	p.pin(l[3].At(4.2, 0), l[4].At(2.6, 0))
+	p.pin(Frame.At(5.6, 3), l[4].At(0, 0))
+	p.turn(l[0], Frame)
+	return p.Design
+}
+
+// stephenson is the six-bar driven at a link: at the crank a chain of dyads, at the
+// far rocker a group of higher class of all other links.
+func stephenson(t testing.TB, drive Link) *Linkage {
+	t.Helper()
+	d := sixBar()
+	d.Drives = []Drive{Turn{Of: drive, From: Frame}}
+	l, err := New(d)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return l
+}
+
 func swaps() []swap {
 	deg := rigid.Degree
-	steph := Design{}
-	{
-		var p plan
-		l := p.links("crank", "plate", "rocker", "rod", "far rocker")
-		p.pin(Frame.At(0, 0), l[0].At(0, 0))
-		p.pin(l[0].At(1.1, 0), l[1].At(0, 0))
-		p.pin(l[1].At(3.5, 0), l[2].At(2.7, 0))
-		p.pin(Frame.At(4, 0.3), l[2].At(0, 0))
-		p.pin(l[1].At(1.9, 1.2), l[3].At(0, 0))
-		p.pin(l[3].At(4.2, 0), l[4].At(2.6, 0))
-		p.pin(Frame.At(5.6, 3), l[4].At(0, 0))
-		p.turn(l[0], Frame)
-		steph = p.Design
-	}
+	steph := sixBar()
 	stephGuess := []rigid.Placement{{}, {Angle: 1}, {X: 0.59, Y: 0.93, Angle: 0.5}, {X: 4, Y: 0.3, Angle: 1.7}, {X: 1.7, Y: 2.9, Angle: 0.3}, {X: 5.6, Y: 3, Angle: 1.5}}
 
 	lift := scissor(3)
