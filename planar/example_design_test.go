@@ -98,8 +98,8 @@ func ExampleGroup() {
 		return
 	}
 	g := l.Groups()[1]
-	fmt.Println(g.Links, g.Class, g.Kind == planar.RPR)
-	// Output: [2] 2 true
+	fmt.Println(g.Links, g.Class, g.Kind)
+	// Output: [link 2] 2 RPR
 }
 
 // The lever that trims the tiles' edges is a dyad of kind RPR: pinned to the frame,
@@ -111,11 +111,11 @@ func ExampleKind() {
 		return
 	}
 	for _, g := range l.Groups() {
-		fmt.Println(g.Links, g.Kind == planar.NoDyad, g.Kind == planar.RPR)
+		fmt.Println(g.Links, g.Kind)
 	}
 	// Output:
-	// [1] true false
-	// [2] false true
+	// [link 1] no dyad
+	// [link 2] RPR
 }
 
 // trimmer is a crank whose pin slides in a lever.
@@ -152,12 +152,12 @@ func ExampleLinkage() {
 	// Output: [frame crank lever] 1
 }
 
-// Links are indices into the design.
+// Links are indices into the design, which has their names.
 func ExampleLink() {
 	var d planar.Design
 	tray := d.Link("tray")
-	fmt.Println(tray, d.Links)
-	// Output: 1 [frame tray]
+	fmt.Println(tray, d.Links[tray])
+	// Output: link 1 tray
 }
 
 func ExampleAttachment() {
@@ -294,20 +294,23 @@ func ExampleReach() {
 	// Output: class 2: flap
 }
 
-// Joints are plain values of several types.
+// Joints are plain values of several types. Each prints as one line, or the design
+// as many, with names.
 func ExampleJoint() {
 	for _, j := range trimmer().Joints {
-		switch j := j.(type) {
-		case planar.Revolute:
-			fmt.Println("pin at", j.A.X, j.A.Y, "of link", j.A.Link)
-		case planar.SlidingPin:
-			fmt.Println("pin of link", j.Pin.Link, "in a slot of link", j.Slot.Link)
+		if pin, ok := j.(planar.Revolute); ok {
+			fmt.Println("pin at", pin.A.X, pin.A.Y, "of the", pin.A.Link)
 		}
 	}
+	fmt.Println(trimmer())
 	// Output:
-	// pin at 0 0.24 of link 0
-	// pin at 0 0 of link 0
-	// pin of link 1 in a slot of link 2
+	// pin at 0 0.24 of the frame
+	// pin at 0 0 of the frame
+	// links: frame, crank, lever
+	// joint 0: revolute: frame (0, 0.24), crank (0, 0)
+	// joint 1: revolute: frame (0, 0), lever (0, 0)
+	// joint 2: sliding pin: crank (0.12, 0) in lever (0, 0) at 0 rad
+	// drive 0: turn: crank from frame
 }
 
 // A motor between two moving links turns a gripper on its arm.
