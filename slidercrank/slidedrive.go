@@ -16,7 +16,8 @@ import (
 // pivot to the slider pin. Turn.Pos is in (−π, π].
 //
 // Margin is |sin| of the angle between crank and rod: it is 0 at the dead centres,
-// where the slide cannot drive the crank. Errors: ErrUnreachable out of reach, and
+// where the slide cannot drive the crank, and for a slide that no more than rounding,
+// some 2ε of its greatest, keeps from one. Errors: ErrUnreachable out of reach, and
 // where the pose is that of the other Branch but the crank turns fully, so that the
 // two are different assemblies; ErrSingular for rates where Margin is below
 // rigid.LeastMargin; ErrNotFinite; ErrInput for a zero Linkage or an unknown knee.
