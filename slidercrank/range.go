@@ -80,5 +80,5 @@ func (l *Linkage) PressureAngles() (least, greatest float64) {
 // higher or lower than the crank pin by eta, or a right angle where it never is.
 func (l *Linkage) tilt(eta float64) float64 {
 	xi, _ := leg(l.rod, eta, l.size)
-	return math.Atan2(min(eta, l.rod), xi)
+	return math.Atan2(eta, xi)
 }

@@ -22,6 +22,7 @@ func TestRangeByHand(t *testing.T) {
 		{"offset", d{Crank: 1, Rod: 3, Offset: -1.9}, whole},
 		{"change point, in line", d{Crank: 1, Rod: 1}, whole},
 		{"change point, offset", d{Crank: 0.1, Rod: 0.3, Offset: 0.2}, whole},
+		{"change point, whose sum rounds down", d{Crank: 0.1, Rod: 0.8, Offset: 0.7}, whole},
 		{"change point, offset down", d{Crank: 0.1, Rod: 0.3, Offset: -0.2, Branch: slidercrank.Behind}, whole},
 		{"offset up", d{Crank: 1, Rod: 3, Offset: 2.5}, []rigid.Interval{{Lo: a(-0.5), Hi: pi - a(-0.5)}}},
 		{"offset down", d{Crank: 1, Rod: 3, Offset: -2.5}, []rigid.Interval{{Lo: pi - a(0.5), Hi: 2*pi + a(0.5)}}},

@@ -161,6 +161,7 @@ func TestChangePoints(t *testing.T) {
 		{"in line", slidercrank.Dimensions{Crank: 0.2, Rod: 0.2}, math.Pi / 2, slidercrank.DeadCentre{Turn: math.Pi}},
 		{"in line, behind", slidercrank.Dimensions{Crank: 0.2, Rod: 0.2, Branch: slidercrank.Behind}, -math.Pi / 2, slidercrank.DeadCentre{}},
 		{"rod = crank + offset", slidercrank.Dimensions{Crank: 0.1, Rod: 0.3, Offset: 0.2}, -math.Pi / 2, slidercrank.DeadCentre{Turn: -math.Pi / 2}},
+		{"rod = crank + offset, whose sum rounds down", slidercrank.Dimensions{Crank: 0.3, Rod: 0.9, Offset: 0.6}, -math.Pi / 2, slidercrank.DeadCentre{Turn: -math.Pi / 2}},
 		{"rod = crank − offset", slidercrank.Dimensions{Crank: 0.1, Rod: 0.3, Offset: -0.2}, math.Pi / 2, slidercrank.DeadCentre{Turn: math.Pi / 2}},
 		{"crank = rod + offset", slidercrank.Dimensions{Crank: 0.3, Rod: 0.1, Offset: 0.2}, math.Pi / 2, slidercrank.DeadCentre{Turn: math.Pi / 2}},
 		{"crank = rod − offset", slidercrank.Dimensions{Crank: 0.3, Rod: 0.1, Offset: -0.2}, -math.Pi / 2, slidercrank.DeadCentre{Turn: -math.Pi / 2}},
@@ -190,7 +191,7 @@ func TestChangePoints(t *testing.T) {
 			}
 		}
 		_, inner, err := l.DeadCentres()
-		if err != nil || math.Abs(inner.Turn-row.dead.Turn) > 1e-7 || math.Abs(inner.Slide-row.dead.Slide) > 1e-8 {
+		if err != nil || inner != row.dead {
 			t.Errorf("%s: inner dead centre %+v, %v", row.name, inner, err)
 		}
 	}
