@@ -11,8 +11,3 @@
 // cross product of the two links, twice the area, is never formed again from
 // their vectors.
 package dyad
-
-import "gonum.org/v1/gonum/spatial/r2"
-
-// perp returns v turned a quarter left.
-func perp(v r2.Vec) r2.Vec { return r2.Vec{X: -v.Y, Y: v.X} }
