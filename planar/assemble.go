@@ -235,7 +235,40 @@ func (s *State) begin() error {
 	for b := range s.start {
 		s.start[b] = p.whole[b].value(s.now)
 	}
-	return s.check()
+	if err := s.check(); err != nil {
+		return err
+	}
+	return s.lively()
+}
+
+// lively refuses a linkage that is singular wherever it goes, by its dimensions.
+func (s *State) lively() error {
+	const flat = 1e-7
+	if s.Margin() >= flat {
+		return nil
+	}
+	c, moved := s.Clone(), false
+	for _, part := range []float64{0.01, -0.01, 0.02, -0.02} { // of a step
+		in := s.Inputs()
+		for i := range in {
+			in[i] = rigid.Coordinate{Pos: in[i].Pos + part/s.l.program.perStep[i]}
+		}
+		if c.Move(in...) != nil {
+			continue
+		}
+		if moved = true; c.Margin() >= flat {
+			return nil
+		}
+	}
+	if !moved {
+		return nil
+	}
+	for i, o := range s.l.program.ops {
+		if o, ok := o.(solver); ok && o.margin(s.now) < flat {
+			return fmt.Errorf("%w, here and on", s.l.program.fault(i, singular))
+		}
+	}
+	return nil
 }
 
 // unread returns which phases are to be read from the position.

@@ -84,8 +84,13 @@ func (p *program) solve(was, to *scene, moving bool) (status, int) {
 	return solved, 0
 }
 
-// accept makes a scene the State's place, if the redundant constraints hold there.
+// accept makes a scene the State's place, if its numbers are finite and the redundant
+// constraints hold there.
 func (s *State) accept(to *scene) error {
+	if !to.finite() {
+		s.stop = stop{err: rigid.ErrNotFinite, op: -1, done: 1, blocked: 1}
+		return s.stop.err
+	}
 	for i := range s.l.program.checks {
 		if miss := s.l.program.miss(i, to); !(miss <= s.most[i]) {
 			s.stop = stop{err: s.l.program.breaches[i], op: -1, gap: miss, done: 1, blocked: 1}
@@ -108,7 +113,7 @@ type walk struct {
 	legs     [mostHalvings + 2]leg
 	top      int
 	suspect  suspect
-	paced    int // the first op without path rates at the end of the last step, in a linkage with higher groups
+	paced    int // the first op without path rates at the end of the last step, −1 where none were solved
 }
 
 // A leg is a step that lies ahead: its end, and how often it has been halved.
@@ -148,7 +153,7 @@ func (s *State) walk(n int, moving bool) error {
 				w.top--
 			case tooLong:
 				if l.depth == mostHalvings {
-					return s.fail(op, tooLong, w.t, l.t, w.to)
+					return s.fail(op, s.l.program.stuck(op, w.from), w.t, l.t, w.to)
 				}
 				l.depth++
 				w.top++
@@ -193,6 +198,7 @@ func (p *program) rate(sc *scene) int {
 func (w *walk) step(t float64) (st status, op int, cut float64) {
 	p := w.l.program
 	size := 0.0
+	w.paced = -1
 	for i := range w.to.in {
 		a, b := w.now.in[i].Pos, w.State.to[i].Pos
 		pos := a + t*(b-a)

@@ -46,6 +46,17 @@ func (o *group) margin(sc *scene) float64 { return sc.desks[o.at].margin() }
 func (o *group) gap(sc *scene) float64    { return sc.desks[o.at].open() }
 func (o *group) choose(sc *scene) status  { return o.n.assemble(sc, &sc.desks[o.at]) }
 
+// stuck says what it means that an op can't take the least step: a group of higher
+// class of which the margin is nearly used up is at a limit, which it nears as the
+// root of the distance.
+func (p *program) stuck(op int, at *scene) status {
+	const low = 0.05
+	if g, ok := p.ops[op].(*group); ok && g.margin(at) < low {
+		return unreachable
+	}
+	return tooLong
+}
+
 // foresee reports whether the path rates of all groups at a place are known for a
 // single drive that moves on so far: they grow with its speed.
 func (s *scene) foresee(speed float64) bool {

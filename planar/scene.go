@@ -92,6 +92,16 @@ func (s *scene) rest() {
 	}
 }
 
+// finite reports whether the accelerations are finite, and so all before them.
+func (s *scene) finite() bool {
+	sum := 0.0
+	for i := range s.m {
+		m := &s.m[i]
+		sum += m.Alpha*0 + (m.Acc.X*0 + m.Acc.Y*0)
+	}
+	return sum == 0
+}
+
 // A spot is a point fixed in a body, in the body's axes.
 type spot struct {
 	body int
