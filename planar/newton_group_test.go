@@ -68,19 +68,6 @@ func sixBar() Design {
 	return p.Design
 }
 
-// stephenson is the six-bar driven at a link: at the crank a chain of dyads, at the
-// far rocker a group of higher class of all other links.
-func stephenson(t testing.TB, drive Link) *Linkage {
-	t.Helper()
-	d := sixBar()
-	d.Drives = []Drive{Turn{Of: drive, From: Frame}}
-	l, err := New(d)
-	if err != nil {
-		t.Fatal(err)
-	}
-	return l
-}
-
 func swaps() []swap {
 	deg := rigid.Degree
 	steph := sixBar()
@@ -90,7 +77,7 @@ func swaps() []swap {
 	liftGuess := scissorGuess(3, 0.6)
 
 	line := peaucellier("QB")
-	lineGuess := make([]rigid.Placement, 8)
+	var lineGuess []rigid.Placement
 	{
 		// O = (0, 0), Q = (1.2, 0); A and C mirror each other in the line O–B
 		th := 0.9

@@ -73,9 +73,6 @@ func (a *angleSum) follows() bool {
 	return len(a.bodies) == 1 && a.bodies[0].Coef == 1 && len(a.in) == 0 && len(a.phase) == 0
 }
 
-// constant reports whether the angle doesn't change once the linkage is assembled.
-func (a *angleSum) constant() bool { return len(a.bodies) == 0 && len(a.in) == 0 }
-
 // most is the largest number of times that a unit vector is multiplied with
 // itself rather than its angle taken.
 const most = 4
