@@ -222,7 +222,7 @@ func (c *compiler) refer(own, on spot, joint int) {
 		if r.joint == joint {
 			continue
 		}
-		if r.b == own.body && c.one(r.pb, own.at) {
+		if r.b == own.body && c.one(r.pb, own.at) && r.kind != rowRack {
 			r.b, r.pb = on.body, on.at
 		} else if r.a == own.body && c.one(r.pa, own.at) && (r.kind == rowX || r.kind == rowY) {
 			r.a, r.pa = on.body, on.at

@@ -102,3 +102,34 @@ func TestNoGapIsCrossed(t *testing.T) {
 	}
 	t.Logf("%d moves passed, %d gaps refused, %d of below 1e-5 crossed", passed, gaps, small)
 }
+
+// TestPartingMotions drives four-bars to and over flattened positions in which two
+// motions part, for lengths that make them exact: a kite, and a change point that is
+// no parallelogram. The position itself is given, no way leads over it.
+func TestPartingMotions(t *testing.T) {
+	for _, bar := range [][4]float64{{1, 1.5, 1.5, 2}, {2, 1.5, 1.5, 1}, {1, 2, 1, 2.5}, {1, 2.5, 1.5, 2}} {
+		a, b, c, d := bar[0], bar[1], bar[2], bar[3]
+		flat := math.Pi
+		if math.Abs(a-d) == math.Abs(b-c) {
+			flat = 0
+		}
+		if got := blocked(a, b, c, d, flat, flat); got > 1e-15 || a+d != b+c && math.Abs(a-d) != math.Abs(b-c) {
+			continue
+		}
+		l := fourBarOf(t, a, b, c, d)
+		for _, way := range []float64{-1, 1} {
+			s, err := l.AssembleMode(".+", at(flat-0.5*way))
+			if err != nil {
+				t.Fatal(err)
+			}
+			for _, step := range []float64{0.6, 0.51, 1.5, 0.5 + 1e-3} {
+				if err := s.Move(at(flat + way*(step-0.5))); !errors.Is(err, rigid.ErrSingular) {
+					t.Errorf("%v over %v by %v: %v", bar, flat, step*way, err)
+				}
+			}
+			if err := s.Move(at(flat - 0.3*way)); err != nil {
+				t.Errorf("%v: %v", bar, err)
+			}
+		}
+	}
+}

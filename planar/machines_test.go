@@ -109,13 +109,12 @@ func (g *grower) grow(kind int) {
 		g.hinge(two, c, g.spot())
 		from, of := g.line(one, p, angle), g.line(rod, q, angle)
 		g.drive(Slide{Of: of, From: from}, r2.Dot(rigid.NewPose(0, 0, angle).Axis, r2.Sub(q, p)))
-	case 8: // a driven distance
+	case 8: // a driven distance, and a link on what it moves
 		p, q := g.spot(), g.spot()
-		g.hinge(a, one, p)
-		g.hinge(c, two, g.spot())
-		r := g.spot()
-		g.hinge(one, two, q)
-		_ = r
+		g.hinge(c, one, g.spot())
+		g.drive(Reach{A: g.on(a, p), B: g.on(one, q)}, r2.Norm(r2.Sub(q, p)))
+		g.hinge(one, two, g.spot())
+		g.drive(Turn{Of: two, From: a}, rigid.Wrap(g.at[two].Angle()-g.at[a].Angle()))
 	case 9: // driven at the middle pin
 		p := g.spot()
 		three := g.body()
@@ -151,10 +150,33 @@ func (g *grower) grow(kind int) {
 		g.drive(Slide{Of: g.line(one, q, angle), From: g.line(a, p, angle)}, r2.Dot(rigid.NewPose(0, 0, angle).Axis, r2.Sub(q, p)))
 		g.hinge(one, two, g.spot())
 		g.drive(Turn{Of: two, From: c}, rigid.Wrap(g.at[two].Angle()-g.at[c].Angle()))
+	case 14: // a pinion that is driven, and its rack
+		p := g.spot()
+		g.hinge(a, one, p)
+		g.drive(Turn{Of: one, From: a}, rigid.Wrap(g.at[one].Angle()-g.at[a].Angle()))
+		g.rail(a, two, g.spot(), angle)
+		g.rack(one, two, p, angle, angle > 0)
+	case 15: // a rack that is driven, and its pinion
+		p, q := g.spot(), g.spot()
+		g.rail(a, one, q, angle)
+		g.drive(Slide{Of: g.line(one, q, angle), From: g.line(a, p, angle)}, r2.Dot(rigid.NewPose(0, 0, angle).Axis, r2.Sub(q, p)))
+		g.hinge(a, two, p)
+		g.rack(two, one, p, angle, angle > 0)
 	}
 }
 
-const growths = 14
+// rack adds a rack for a pinion with its centre at p.
+func (g *grower) rack(pinion, rack Link, p r2.Vec, angle float64, right bool) {
+	const radius = 0.3
+	side := -radius
+	if right {
+		side = radius
+	}
+	q := rigid.NewPose(p.X, p.Y, angle).Point(r2.Vec{X: g.spread(1), Y: side})
+	g.Joints = append(g.Joints, RackPair{Pinion: g.on(pinion, p), Rack: g.line(rack, q, angle), Radius: radius, Right: right, AsAssembled: true})
+}
+
+const growths = 16
 
 func grow(seed uint64, kinds ...int) *grower {
 	g := &grower{random: rand.New(rand.NewPCG(seed, 3)), at: []rigid.Pose{rigid.NewPose(0, 0, 0)}}

@@ -219,9 +219,10 @@ func (w *walk) step(t float64) (st status, op int, cut float64) {
 		return st, op, 0.5
 	}
 	if w.suspect.pending {
-		if !w.judge() {
-			return singular, w.suspect.op, 0
-		}
+		w.judge()
+	}
+	if op, ok := w.parting(t); ok {
+		return singular, op, 0
 	}
 	if len(w.doubt) == 0 && len(p.newtons) == 0 {
 		return solved, 0, 0
@@ -294,14 +295,24 @@ func (w *walk) crossed(h float64, rated int) (op int, cut float64, ok bool) {
 	return 0, 0, false
 }
 
-// judge compares the condition that had the step cut with what it was expected to
-// be, and reports false where two motions part.
-func (w *walk) judge() bool {
-	const flat = 1e-7
+// judge compares the condition that had the step cut with what it was expected to be.
+func (w *walk) judge() {
 	s := &w.suspect
 	s.pending = false
-	o := w.l.program.ops[s.op].(crosser)
-	r, _ := o.rooms(w.to)
+	r, _ := w.l.program.ops[s.op].(crosser).rooms(w.to)
 	s.off = math.Abs(r[s.room].value - s.predicted)
-	return o.margin(w.to) > flat
+}
+
+// parting looks for a dyad that is flattened on the way, where two motions part.
+func (w *walk) parting(t float64) (op int, ok bool) {
+	const flat = 1e-7
+	if t == 1 {
+		return 0, false
+	}
+	for _, i := range w.doubt {
+		if w.l.program.ops[i].(crosser).margin(w.to) < flat {
+			return i, true
+		}
+	}
+	return 0, false
 }
