@@ -1,0 +1,139 @@
+package main
+
+import (
+	"bufio"
+	"encoding/csv"
+	"fmt"
+	"io"
+	"iter"
+	"os"
+	"path/filepath"
+	"strconv"
+
+	"example.com/twopoint/rigid"
+)
+
+// A record is one tick.
+type record struct {
+	tick               int64
+	commanded, stopped bool
+	rate, margin       float64          // of the clock along the path; of the command
+	ram, motor         rigid.Coordinate // as commanded for the next tick
+	count              int64
+	measured           float64 // motor, rad, looked ahead to the tick
+	following          float64 // measured less commanded, rad
+}
+
+// A recorder keeps the last records; it allocates when made, not when used.
+type recorder struct {
+	ring []record
+	n    int64 // records given so far
+}
+
+func newRecorder(size int64) *recorder { return &recorder{ring: make([]record, size)} }
+
+func (r *recorder) add(x record) {
+	r.ring[r.n%int64(len(r.ring))] = x
+	r.n++
+}
+
+// all gives the records kept, oldest first.
+func (r *recorder) all() iter.Seq[*record] {
+	return func(yield func(*record) bool) {
+		size := int64(len(r.ring))
+		for i := max(0, r.n-size); i < r.n; i++ {
+			if !yield(&r.ring[i%size]) {
+				return
+			}
+		}
+	}
+}
+
+var columns = []string{"time_s", "state", "clock_rate", "ram_m", "ram_speed", "ram_acc", "motor_rad", "motor_speed", "motor_acc",
+	"margin", "count", "measured_rad", "following_rad", "stop_reason"}
+
+// writeCSV writes the records: what was commanded at a tick is for the next one.
+func writeCSV(w io.Writer, r *recorder, dt float64, why halt) error {
+	buf := bufio.NewWriter(w)
+	out := csv.NewWriter(buf)
+	out.Write(columns)
+	num := func(x float64) string { return strconv.FormatFloat(x, 'g', -1, 64) }
+	row := make([]string, len(columns))
+	for x := range r.all() {
+		clear(row)
+		row[0], row[1] = strconv.FormatFloat(float64(x.tick)*dt, 'g', 12, 64), x.state()
+		if x.commanded {
+			for i, v := range []float64{x.rate, x.ram.Pos, x.ram.Vel, x.ram.Acc, x.motor.Pos, x.motor.Vel, x.motor.Acc, x.margin} {
+				row[2+i] = num(v)
+			}
+		}
+		row[10] = strconv.FormatInt(x.count, 10)
+		if x.measured != 0 || x.commanded {
+			row[11], row[12] = num(x.measured), num(x.following)
+		}
+		if x.stopped && x.tick == why.tick {
+			row[13] = why.String()
+		}
+		out.Write(row)
+	}
+	out.Flush() // keeps the first error
+	return firstError(out.Error(), buf.Flush())
+}
+
+func (x *record) state() string {
+	switch {
+	case x.stopped:
+		return "stop"
+	case x.commanded:
+		return "run"
+	}
+	return "wait"
+}
+
+func firstError(errs ...error) error {
+	for _, err := range errs {
+		if err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// A wholeFile comes to be under its name when it is complete, or not at all: it
+// is written beside and renamed.
+type wholeFile struct {
+	*os.File
+	name string
+}
+
+// createWhole makes the file beside name at once, so that an unwritable folder is
+// found before the work and not after it.
+func createWhole(name string) (*wholeFile, error) {
+	if i, err := os.Stat(name); err == nil && !i.Mode().IsRegular() {
+		return nil, fmt.Errorf("can't write %s: not a file", name)
+	}
+	f, err := os.CreateTemp(filepath.Dir(name), "."+filepath.Base(name)+".part*")
+	if err != nil {
+		return nil, fmt.Errorf("can't write %s: %w", name, err)
+	}
+	return &wholeFile{f, name}, nil
+}
+
+// finish gives the file its name, or removes it where err or its own end is bad.
+func (f *wholeFile) finish(err error) error {
+	if err == nil {
+		err = f.Chmod(0o644)
+	}
+	if err == nil {
+		err = f.Sync()
+	}
+	err = firstError(err, f.Close())
+	if err == nil {
+		err = os.Rename(f.Name(), f.name)
+	}
+	if err != nil {
+		os.Remove(f.Name())
+		return fmt.Errorf("can't write %s: %w", f.name, err)
+	}
+	return nil
+}
