@@ -126,12 +126,12 @@ func (s *State) rough(guess []rigid.Placement) {
 		return guess[a.Link].Pose().Point(r2.Vec{X: a.X, Y: a.Y})
 	}
 	for i, h := range p.hidden {
-		m := &sc.m[p.seats[p.system.links+i].body]
+		body := p.seats[p.system.links+i].body
 		if h.part == slotBlock {
-			j := s.l.design.Joints[h.joint].(SlidingPin)
-			m.Pose = rigid.Pose{Origin: at(j.Pin), Axis: s.guessed(guess, j.Slot.Link).Compose(rigid.NewPose(0, 0, j.Slot.Angle)).Axis}
+			p.roughBlock(sc, body)
 			continue
 		}
+		m := &sc.m[body]
 		j := s.l.design.Drives[h.joint-len(s.l.design.Joints)].(Reach)
 		a, b := at(j.A), at(j.B)
 		m.Pose = rigid.NewPose(a.X, a.Y, math.Atan2(b.Y-a.Y, b.X-a.X))
@@ -141,6 +141,25 @@ func (s *State) rough(guess []rigid.Placement) {
 	}
 	for k, b := range p.free {
 		sc.psi[k] = rigid.Coordinate{Pos: sc.m[b].Pose.Angle()}
+	}
+}
+
+// roughBlock puts the hidden block of a slot at its pin, along the slot.
+func (p *program) roughBlock(sc *scene, block int) {
+	for i := range p.rows {
+		r := &p.rows[i]
+		own, other := spot{r.b, r.pb}, spot{r.a, r.pa}
+		if r.a == block {
+			own, other = other, own
+		}
+		switch {
+		case own.body != block:
+		case r.kind == rowX:
+			sc.hang(&own, sc.place(&other))
+		case r.kind == rowGuide:
+			turn := p.angles[block].Const - p.angles[other.body].Const
+			sc.m[block].Pose.Axis = rotate(sc.m[other.body].Pose.Axis, turn)
+		}
 	}
 }
 

@@ -41,7 +41,11 @@ func (p *program) residual(r *row, sc *scene) float64 {
 	case rowGuide:
 		return cross(u, d) - r.value
 	case rowSlide:
-		return r2.Dot(u, d) - r.value - sc.in[r.drive].Pos
+		off := r2.Dot(u, d) - r.value
+		if r.drive >= 0 { // a length that is checked has none
+			off -= sc.in[r.drive].Pos
+		}
+		return off
 	}
 	off := r2.Dot(u, d) + r.rate*(p.whole[r.b].value(sc)-p.whole[r.a].value(sc)) - r.value
 	if r.phased {

@@ -110,7 +110,7 @@ func (c *compiler) steps() {
 		c.perStep[i] = 1 / longestTurn
 	}
 	for _, r := range c.rows {
-		if r.kind == rowSlide {
+		if r.kind == rowSlide && r.drive >= 0 {
 			c.perStep[r.drive] = 1 / (longestSlide * c.length)
 		}
 	}

@@ -223,6 +223,9 @@ func (c *compiler) besideOf(r *row, p spot) (r2.Vec, bool) {
 // displacement returns the part of a row's displacement along its line that
 // changes: an input, or the turn of a pinion that is known.
 func (c *compiler) displacement(r *row) *angleSum {
+	if r.kind == rowSlide && r.drive < 0 {
+		return &angleSum{}
+	}
 	if r.kind == rowSlide {
 		return &angleSum{in: []term{{r.drive, 1}}}
 	}

@@ -27,6 +27,10 @@ type State struct {
 func newState(l *Linkage) *State {
 	p := l.program
 	c := &choice{branch: make([]branch, p.dyads), phase: make([]float64, len(l.design.Joints))}
+	most := make([]float64, len(p.checks))
+	for i := range most {
+		most[i] = math.Inf(1) // until check sets it
+	}
 	for i := range c.branch {
 		c.branch[i] = left
 	}
@@ -34,7 +38,7 @@ func newState(l *Linkage) *State {
 	v := r2.Vec{X: nan, Y: nan}
 	return &State{
 		l: l, now: p.newScene(c), next: p.newScene(c), spare: p.newScene(c),
-		start: make([]float64, p.bodies), most: make([]float64, len(p.checks)),
+		start: make([]float64, p.bodies), most: most,
 		to: make([]rigid.Coordinate, p.drives), doubt: make([]int, 0, p.dyads),
 		void: rigid.Motion{Pose: rigid.Pose{Origin: v, Axis: v}, Vel: v, Acc: v, Omega: nan, Alpha: nan},
 	}
