@@ -22,6 +22,8 @@ type State struct {
 	doubt []int              // ops that may have crossed a gap
 	stop  stop
 	void  rigid.Motion // NaN
+	// of Sensitivity, once it has been asked for
+	variation *variation
 }
 
 func newState(l *Linkage) *State {

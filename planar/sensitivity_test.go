@@ -1,0 +1,398 @@
+package planar_test
+
+import (
+	"errors"
+	"fmt"
+	"math"
+	"testing"
+
+	"example.com/twopoint/fourbar"
+	. "example.com/twopoint/planar"
+	"example.com/twopoint/rigid"
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+// entries returns every entry of a design, found by asking for the impossible too.
+func entries(d Design) (all []Entry) {
+	for i := range len(d.Joints) + len(d.Drives) {
+		for end := A; end <= Arm; end++ {
+			for part := X; part <= Phase; part++ {
+				e := Entry{i, end, part}
+				_, err := d.With(Dimension{[]Entry{e}}, 0)
+				if part > Angle && end > A || errors.Is(err, ErrReference) {
+					continue
+				}
+				all = append(all, e)
+			}
+		}
+	}
+	return all
+}
+
+// written returns the design with phases as numbers, those that were read.
+func written(d Design, st *State) Design {
+	l, _ := New(d)
+	d = l.Design()
+	for i, j := range d.Joints {
+		if r, ok := j.(RackPair); ok && r.AsAssembled {
+			rolled := r.Radius * st.Turn(r.Pinion.Link, r.Rack.Link).Pos
+			if r.Right {
+				rolled = -rolled
+			}
+			r.AsAssembled = false
+			r.Phase = st.Slide(r.Pinion.Link.Line(r.Pinion.X, r.Pinion.Y, 0), r.Rack).Pos + rolled
+			d.Joints[i] = r
+		}
+		if g, ok := j.(GearPair); ok && g.AsAssembled {
+			k := float64(g.TeethA) / float64(g.TeethB)
+			if g.TeethA == 0 {
+				k = g.RadiusA / g.RadiusB
+			}
+			if !g.Internal {
+				k = -k
+			}
+			g.AsAssembled = false
+			g.Phase = st.Turn(g.B, g.Arm).Pos - k*st.Turn(g.A, g.Arm).Pos
+			d.Joints[i] = g
+		}
+	}
+	return d
+}
+
+// other returns the machine with a dimension changed, put together anew where st is.
+func other(t testing.TB, d Design, st *State, m Dimension, by float64) *State {
+	t.Helper()
+	in := st.Inputs()
+	fields := Dimension{}
+	for _, e := range m.Of {
+		if i := e.Joint - len(d.Joints); i >= 0 {
+			_, turn := d.Drives[i].(Turn)
+			switch {
+			case e.Part == Phase:
+				in[i].Pos += by
+				continue
+			case turn && e.End == A:
+				in[i].Pos -= by
+				continue
+			case turn:
+				in[i].Pos += by
+				continue
+			}
+		}
+		fields.Of = append(fields.Of, e)
+	}
+	changed, err := d.With(fields, by)
+	if err != nil {
+		t.Fatal(err)
+	}
+	l, err := New(changed)
+	if err != nil {
+		t.Fatal(err)
+	}
+	s, err := l.Assemble(poses(st, Link(len(d.Links))), in...)
+	if err != nil {
+		t.Fatalf("%v by %g: %v", m, by, err)
+	}
+	return s
+}
+
+// slope is the difference quotient of sixth order of what of gives for the machine
+// with a dimension changed.
+func slope(t testing.TB, d Design, st *State, m Dimension, h float64, of func(*State) []float64) []float64 {
+	t.Helper()
+	var sum []float64
+	for i, k := range []float64{0, 45, -9, 1} {
+		if i == 0 {
+			continue
+		}
+		up, down := of(other(t, d, st, m, float64(i)*h)), of(other(t, d, st, m, -float64(i)*h))
+		if sum == nil {
+			sum = make([]float64, len(up))
+		}
+		for j := range up {
+			sum[j] += k * (up[j] - down[j]) / (60 * h)
+		}
+	}
+	return sum
+}
+
+func numbers(p rigid.Point) []float64 {
+	return []float64{p.Pos.X, p.Pos.Y, p.Vel.X, p.Vel.Y, p.Acc.X, p.Acc.Y}
+}
+
+func coordinate(c rigid.Coordinate) []float64 { return []float64{c.Pos, c.Vel, c.Acc} }
+
+// agree compares derivatives with differences to 1e-7 of the largest.
+func agree(t *testing.T, what string, got, want []float64) bool {
+	t.Helper()
+	size := 1.0
+	for _, w := range want {
+		size = math.Max(size, math.Abs(w))
+	}
+	for i := range got {
+		if !(math.Abs(got[i]-want[i]) <= 1e-7*size) {
+			t.Errorf("%s: %d is %.12g, differences give %.12g", what, i, got[i], want[i])
+			return false
+		}
+	}
+	return true
+}
+
+// compare checks the sensitivities of points of links and of turns by dimensions
+// against differences of machines put together anew.
+func compare(t *testing.T, name string, d Design, st *State, by []Dimension, h float64) {
+	t.Helper()
+	d = written(d, st)
+	last := Link(len(d.Links) - 1)
+	at := last.At(0.3, -0.2)
+	of, from := last.Line(0.1, 0.2, 0), Link(1).Line(-0.1, 0.3, 0.4)
+	if last == 1 {
+		from = Frame.Line(-0.1, 0.3, 0.4)
+	}
+	points, turns, slides := make([]rigid.Point, len(by)), make([]rigid.Coordinate, len(by)), make([]rigid.Coordinate, len(by))
+	for _, err := range []error{
+		st.Sensitivity(points, at, by...),
+		st.TurnSensitivity(turns, last, from.Link, by...),
+		st.SlideSensitivity(slides, of, from, by...),
+	} {
+		if err != nil {
+			t.Errorf("%s: %v", name, err)
+			return
+		}
+	}
+	for i, m := range by {
+		if apart(d, m, h) {
+			continue // gears or a rack would no longer mesh
+		}
+		want := slope(t, d, st, m, h, func(s *State) []float64 {
+			all := append(numbers(s.Point(at)), coordinate(s.Turn(last, from.Link))...)
+			return append(all, coordinate(s.Slide(of, from))...)
+		})
+		got := append(append(numbers(points[i]), coordinate(turns[i])...), coordinate(slides[i])...)
+		if !agree(t, fmt.Sprint(name, " by ", m), got, want) {
+			return
+		}
+	}
+}
+
+// apart reports whether New finds joints that contradict each other once the
+// dimension is changed.
+func apart(d Design, m Dimension, by float64) bool {
+	changed, err := d.With(m, by)
+	if err != nil {
+		return false
+	}
+	_, err = New(changed)
+	return errors.Is(err, ErrInconsistent)
+}
+
+func each(d Design) (all []Dimension) {
+	for _, e := range entries(d) {
+		all = append(all, Dimension{[]Entry{e}})
+	}
+	return all
+}
+
+func TestSensitivityGrown(t *testing.T) {
+	seeds := uint64(4)
+	if testing.Short() {
+		seeds = 1
+	}
+	for kind := range growths {
+		compared := 0
+		for seed := range seeds {
+			g := grow(seed*100+uint64(kind), kind, int(seed*5)%growths)
+			l, err := New(g.Design)
+			if err != nil {
+				t.Fatal(err)
+			}
+			st, err := l.Assemble(g.guess(), g.in...)
+			if err != nil || st.Margin() < 0.15 {
+				continue
+			}
+			compared++
+			all := each(g.Design)
+			g.random.Shuffle(len(all), func(i, j int) { all[i], all[j] = all[j], all[i] })
+			compare(t, fmt.Sprintf("kind %d, seed %d", kind, seed), g.Design, st, all[:min(12, len(all))], 2e-4)
+		}
+		if compared == 0 && !testing.Short() {
+			t.Errorf("kind %d: none compared", kind)
+		}
+	}
+}
+
+// TestSensitivityFourBar compares with package fourbar, which differentiates its own
+// closure.
+func TestSensitivityFourBar(t *testing.T) {
+	const a, b, c, f = 0.08, 0.26, 0.18, 0.24
+	ref, err := fourbar.New(fourbar.Dimensions{Frame: f, Crank: a, Coupler: b, Follower: c})
+	if err != nil {
+		t.Fatal(err)
+	}
+	var p plan
+	l := p.links("crank", "coupler", "rocker")
+	p.pin(Frame.At(0, 0), l[0].At(0, 0))
+	p.pin(l[0].At(a, 0), l[1].At(0, 0))
+	p.pin(l[1].At(b, 0), l[2].At(c, 0))
+	p.pin(Frame.At(f, 0), l[2].At(0, 0))
+	p.turn(l[0], Frame)
+	by := []Dimension{
+		p.Hole(Frame.At(f, 0), X), p.Hole(l[0].At(a, 0), X), p.Hole(l[1].At(b, 0), X), p.Hole(l[2].At(c, 0), X),
+	}
+	point := r2.Vec{X: 0.1, Y: 0.05}
+	for turn := 0.2; turn < 6; turn += 0.7 {
+		in := rigid.Coordinate{Pos: turn, Vel: 3, Acc: -2}
+		var at fourbar.State
+		var want fourbar.Sensitivity
+		if err := ref.Solve(&at, in); err != nil {
+			t.Fatal(err)
+		}
+		if err := ref.Sensitivity(&want, in, point); err != nil {
+			t.Fatal(err)
+		}
+		guess := make([]rigid.Placement, 4)
+		for i, m := range []rigid.Motion{at.Crank, at.Coupler, at.Follower} {
+			guess[i+1] = rigid.Placement{X: m.Pose.Origin.X, Y: m.Pose.Origin.Y, Angle: m.Pose.Angle()}
+		}
+		_, st := assemble(t, p.Design, guess, in)
+		points, swings := make([]rigid.Point, 4), make([]rigid.Coordinate, 4)
+		if err := errors.Join(st.Sensitivity(points, l[1].At(point.X, point.Y), by...), st.TurnSensitivity(swings, l[2], Frame, by...)); err != nil {
+			t.Fatal(err)
+		}
+		for i, w := range []fourbar.LengthSensitivity{want.Frame, want.Crank, want.Coupler, want.Follower} {
+			got := append(numbers(points[i]), coordinate(swings[i])...)
+			for k, w := range append(numbers(w.Point), coordinate(w.Swing)...) {
+				if math.Abs(got[k]-w) > 1e-12*(1+math.Abs(w))/st.Margin() {
+					t.Errorf("at %g by %d: %d is %.15g, fourbar gives %.15g", turn, i, k, got[k], w)
+				}
+			}
+		}
+	}
+}
+
+// machine is a design with a place to compare at.
+type machine struct {
+	name  string
+	d     Design
+	guess []rigid.Placement
+	in    []rigid.Coordinate
+	by    []Dimension // or each entry
+}
+
+// meshed returns the entries but for those that would part the gears, whose pins are
+// at two entries along x; with the radii goes the second.
+func meshed(d Design, one, two Entry) (by []Dimension) {
+	for _, m := range each(d) {
+		e := m.Of[0]
+		if e.Part == RadiusA || e.Part == RadiusB {
+			m.Of = append(m.Of, two)
+		} else if e.Part <= Y && (e.Joint == one.Joint && e.End == one.End || e.Joint == two.Joint && e.End == two.End) {
+			continue
+		}
+		by = append(by, m)
+	}
+	return by
+}
+
+func gearedFiveBar() machine {
+	var p plan
+	l := p.links("crank", "rod", "far rod", "far crank")
+	p.pin(Frame.At(0, 0), l[0].At(0, 0))
+	p.pin(l[0].At(0.4, 0), l[1].At(0, 0))
+	p.pin(l[1].At(1.5, 0), l[2].At(1.5, 0))
+	p.pin(l[2].At(0, 0), l[3].At(0.5, 0))
+	p.pin(l[3].At(0, 0), Frame.At(1.7, 0))
+	p.Joints = append(p.Joints, GearPair{A: l[0], B: l[3], RadiusA: 1, RadiusB: 0.7, Phase: 0.3})
+	p.turn(l[0], Frame)
+	by := meshed(p.Design, Entry{0, A, X}, Entry{4, B, X})
+	return machine{"geared five-bar", p.Design,
+		[]rigid.Placement{{}, {Angle: 0.5}, {X: 0.35, Y: 0.2, Angle: 0.9}, {X: 2.1, Y: -0.1, Angle: 2.2}, {X: 1.7, Angle: -0.4}},
+		[]rigid.Coordinate{{Pos: 0.5, Vel: 2, Acc: -1}}, by}
+}
+
+func machines() []machine {
+	five := epicyclicFiveBar(20, 13, false)
+	five.Joints[5] = GearPair{A: 1, B: 3, Arm: 2, RadiusA: 1.9, RadiusB: 1.1, Phase: 0.3}
+
+	// A pinion on a fixed bracket rolls a rack that two pins in slots guide.
+	var rack plan
+	l := rack.links("bracket", "pinion", "rack", "lever")
+	rack.Joints = append(rack.Joints,
+		Fixed{A: Frame.Line(0.2, 0.1, 0.4), B: l[0].Line(0, 0.1, -0.1)},
+		Revolute{A: l[0].At(0.3, 0.2), B: l[1].At(0, 0)},
+		Fixed{A: l[1].Line(0.1, 0, 0), B: l[3].Line(0.2, 0, 0.3)},
+		SlidingPin{Pin: l[2].At(0, 0.1), Slot: Frame.Line(0, 0, 0.3)},
+		SlidingPin{Pin: l[2].At(0.5, 0.2), Slot: Frame.Line(0.1, 0, 0.4)},
+		RackPair{Pinion: l[1].At(0, 0), Rack: l[2].Line(0.1, 0, 0.1), Radius: 0.2, Right: true, Phase: 0.1},
+	)
+	rack.turn(l[1], Frame)
+
+	// A lever on a cylinder, with a pin of three links.
+	var lift plan
+	k := lift.links("lever", "rod", "slider", "stay")
+	lift.pin(Frame.At(0, 0), k[0].At(0, 0))
+	lift.pin(k[0].At(0.5, 0.1), k[1].At(0, 0))
+	lift.pin(k[1].At(0.7, 0), k[2].At(0, 0))
+	lift.guide(Frame.Line(0, -0.2, 0), k[2].Line(0, 0, 0))
+	lift.pin(k[1].At(0, 0), k[3].At(0, 0))
+	lift.slot(k[3].At(0.4, 0), Frame.Line(0.2, 0.5, 0.3))
+	lift.reach(Frame.At(0.4, -0.3), k[0].At(0.45, 0))
+	return []machine{
+		gearedFiveBar(),
+		{"gears on the coupler", five.Design,
+			[]rigid.Placement{{}, {Angle: 0.6}, {X: 0.33, Y: 0.2, Angle: 0.5}, {X: 2.9, Y: 1.7, Angle: 0.9}, {X: 3, Angle: 1.5}},
+			[]rigid.Coordinate{{Pos: 0.6, Vel: 2, Acc: -1}}, meshed(five.Design, Entry{1, B, X}, Entry{2, A, X})},
+		{"rack", rack.Design, []rigid.Placement{{}, {X: 0.2, Y: 0.1, Angle: 0.5}, {X: 0.4, Y: 0.4, Angle: 0.7}, {Angle: 0.2}, {}},
+			[]rigid.Coordinate{{Pos: 0.7, Vel: 2, Acc: -1}}, nil},
+		{"lift", lift.Design, []rigid.Placement{{}, {Angle: 0.5}, {X: 0.4, Y: 0.3, Angle: -0.8}, {X: 0.9, Y: -0.2}, {X: 0.4, Y: 0.3, Angle: 1}},
+			[]rigid.Coordinate{{Pos: 0.52, Vel: 0.2, Acc: -0.1}}, nil},
+		{"parallelogram", parallelogram(0.1, 0.3), []rigid.Placement{{}, {Angle: 0.9}, {X: 0.06, Y: 0.08}, {X: 0.3, Angle: 0.9}},
+			[]rigid.Coordinate{{Pos: 0.9, Vel: 2, Acc: 1}}, nil},
+	}
+}
+
+func TestSensitivityMachines(t *testing.T) {
+	for _, m := range machines() {
+		_, st := assemble(t, m.d, m.guess, m.in...)
+		if m.by == nil {
+			m.by = each(m.d)
+		}
+		compare(t, m.name, m.d, st, m.by, 1e-4*size(m.d))
+		if m.name == "geared five-bar" { // radii act over all turns made
+			m.in[0].Pos += 6 * math.Pi
+			if err := st.Move(m.in...); err != nil {
+				t.Fatal(err)
+			}
+			compare(t, m.name+", three turns on", m.d, st, m.by, 1e-5*size(m.d))
+		}
+	}
+	for _, w := range swaps() {
+		easy, hard := w.linkages(t)
+		guess := w.guess
+		if w.from == w.to { // as it was drawn
+			drive := easy.Design().Drives[0].(Turn)
+			w.from = guess[drive.Of].Angle - guess[drive.From].Angle
+			w.to = w.from + 0.4
+		}
+		st, err := easy.Assemble(guess, rigid.Coordinate{Pos: w.from + 0.3*(w.to-w.from), Vel: 1, Acc: 0.5})
+		if err != nil {
+			t.Fatal(err)
+		}
+		d := hard.Design()
+		st, err = hard.Assemble(poses(st, Link(len(d.Links))), value(st, w.hard))
+		if err != nil {
+			t.Fatal(w.name, err)
+		}
+		compare(t, w.name, d, st, each(d), 1e-4)
+	}
+}
+
+func size(d Design) float64 {
+	most := 0.0
+	for _, j := range d.Joints {
+		if j, ok := j.(Revolute); ok {
+			most = max(most, math.Abs(j.A.X), math.Abs(j.B.X))
+		}
+	}
+	return most
+}
