@@ -8,6 +8,7 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/examples/internal/presslog"
 	"example.com/twopoint/rigid"
 	"example.com/twopoint/rigid/encoder"
 	"example.com/twopoint/slidercrank"
@@ -77,8 +78,8 @@ func follow(o options, m *machine, log io.Reader, stdout, stderr io.Writer) erro
 	if f.outer, f.inner, err = m.press.DeadCentres(); err != nil {
 		return err
 	}
-	for s, err := range samples(log) {
-		var bad *lineError
+	for s, err := range presslog.Samples(log, "crank_counts") {
+		var bad *presslog.LineError
 		if err == nil {
 			err = f.take(s)
 		}
@@ -98,25 +99,25 @@ func follow(o options, m *machine, log io.Reader, stdout, stderr io.Writer) erro
 	return f.out.flush()
 }
 
-// take takes one sample. What the sample itself is to blame for is a *lineError.
-func (f *follower) take(s sample) error {
-	turns, angle, err := f.encoder.Angle(s.counts)
+// take takes one sample. What the sample itself is to blame for is a *presslog.LineError.
+func (f *follower) take(s presslog.Sample) error {
+	turns, angle, err := f.encoder.Angle(s.Counts)
 	if err != nil {
-		return &lineError{s.line, fmt.Errorf("crank_counts %d: %w", s.counts, err)}
+		return &presslog.LineError{Line: s.Line, Err: fmt.Errorf("crank_counts %d: %w", s.Counts, err)}
 	}
 	turn := float64(turns)*rigid.Revolution + angle
 	if err := f.press.Solve(&f.st, rigid.Coordinate{Pos: turn}); err != nil {
-		return &lineError{s.line, err}
+		return &presslog.LineError{Line: s.Line, Err: err}
 	}
 	f.compare(s, turn)
-	if err := f.watch(s.time, turn); err != nil {
-		return &lineError{s.line, err}
+	if err := f.watch(s.Time, turn); err != nil {
+		return &presslog.LineError{Line: s.Line, Err: err}
 	}
-	crank, at, ok := f.rates.Add(s.time, turn)
+	crank, at, ok := f.rates.Add(s.Time, turn)
 	if ok && f.sum.Samples%f.every == 0 {
 		t, err := f.tick(at, crank)
 		if err != nil {
-			return &lineError{s.line, err}
+			return &presslog.LineError{Line: s.Line, Err: err}
 		}
 		f.out.tick(t)
 	}
@@ -125,9 +126,9 @@ func (f *follower) take(s sample) error {
 }
 
 // compare keeps the worst difference of the measured ram and the ideal one.
-func (f *follower) compare(s sample, turn float64) {
+func (f *follower) compare(s presslog.Sample, turn float64) {
 	ideal := f.st.Slide.Pos
-	d := difference{Time: s.time, Crank: rigid.Wrap(turn), Measured: s.ram, Ideal: ideal, Difference: s.ram - ideal}
+	d := difference{Time: s.Time, Crank: rigid.Wrap(turn), Measured: s.Ram, Ideal: ideal, Difference: s.Ram - ideal}
 	if f.sum.Samples == 0 || math.Abs(d.Difference) > math.Abs(f.sum.Worst.Difference) {
 		f.sum.Worst = d
 	}

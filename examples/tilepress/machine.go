@@ -1,12 +1,9 @@
 package main
 
 import (
-	"bytes"
-	"encoding/json"
 	"fmt"
-	"io"
-	"os"
 
+	"example.com/twopoint/examples/internal/files"
 	"example.com/twopoint/rigid/encoder"
 	"example.com/twopoint/slidercrank"
 )
@@ -20,14 +17,6 @@ type machine struct {
 // readMachine reads the dimensions from a file, or the sample's; an unknown field
 // is refused by its name.
 func readMachine(path string) (*machine, error) {
-	data, name := sampleMachine, "machine.json"
-	if path != "" {
-		var err error
-		if data, err = os.ReadFile(path); err != nil {
-			return nil, err
-		}
-		name = path
-	}
 	var file struct {
 		Press   slidercrank.Dimensions `json:"press"`
 		Encoder struct {
@@ -36,13 +25,9 @@ func readMachine(path string) (*machine, error) {
 			Reverse bool  `json:"reverse"`
 		} `json:"encoder"`
 	}
-	d := json.NewDecoder(bytes.NewReader(data))
-	d.DisallowUnknownFields()
-	if err := d.Decode(&file); err != nil {
-		return nil, fmt.Errorf("%s: %w", name, err)
-	}
-	if _, err := d.Token(); err != io.EOF {
-		return nil, fmt.Errorf("%s: more than one value", name)
+	name, err := files.ReadJSON(path, sampleMachine, "machine.json", &file)
+	if err != nil {
+		return nil, err
 	}
 	press, err := slidercrank.New(file.Press)
 	if err != nil {

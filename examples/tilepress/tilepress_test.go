@@ -12,6 +12,8 @@ import (
 	"path/filepath"
 	"strings"
 	"testing"
+
+	"example.com/twopoint/examples/internal/presslog"
 )
 
 func press(t *testing.T, stdin string, args ...string) (stdout, stderr string, err error) {
@@ -111,8 +113,8 @@ func TestTable(t *testing.T) {
 
 func TestStrictStops(t *testing.T) {
 	_, _, err := press(t, "", "-strict")
-	var bad *lineError
-	if !errors.As(err, &bad) || bad.line != 402 {
+	var bad *presslog.LineError
+	if !errors.As(err, &bad) || bad.Line != 402 {
 		t.Errorf("%v, want line 402", err)
 	}
 }
