@@ -77,6 +77,7 @@ type loop struct {
 	from, to int // known members
 	// of newton.chords: those fixed in known bodies, then those that the unknowns move
 	still, moved, end int
+	mixed             bool // one of them is
 }
 
 // A chord is a vector fixed in a member; with a slide, so many times the vector.
@@ -87,6 +88,7 @@ type chord struct {
 	col    int     // of the free angle that turns the member, where it is one; else −1
 	coef   float64 // of that
 	mixed  bool    // more than one does
+	first  bool    // of its loop in col
 }
 
 // largestGroup is the number of unknowns up to which the dense factors of a group

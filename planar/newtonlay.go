@@ -21,29 +21,39 @@ func (n *newton) lay(sc *scene, d *desk) {
 	}
 }
 
-// sum writes C of a loop and its slopes.
+// sum writes C of a loop and its slopes. Into a pin's rows of d.j, which have no other
+// slopes, the first chord that a column has writes and the others add.
 func (n *newton) sum(d *desk, i int, x, y []float64) {
 	l := &n.loops[i]
-	clear(x)
-	clear(y)
+	if l.kind != rowX || l.mixed {
+		clear(x)
+		clear(y)
+	}
+	axis, chords := d.axis, d.chords[2*l.moved:2*l.end]
 	cx, cy := d.fixed[2*i], d.fixed[2*i+1]
-	for k := l.moved; k < l.end; k++ {
-		a, r := &n.chords[k], n.turnChord(d, k)
+	for k, all := 0, n.chords[l.moved:l.end]; k < len(all); k++ {
+		a := &all[k]
+		ux, uy := axis[2*a.member], axis[2*a.member+1]
+		rx, ry := ux*a.v.X-uy*a.v.Y, ux*a.v.Y+uy*a.v.X
+		chords[2*k], chords[2*k+1] = rx, ry
 		if a.slide >= 0 {
 			col, s := n.free+a.slide, d.slide[a.slide]
-			x[col] += n.length * r.X
-			y[col] += n.length * r.Y
-			r.X, r.Y = s*r.X, s*r.Y
+			x[col], y[col] = n.length*rx, n.length*ry
+			rx, ry = s*rx, s*ry
 		}
-		cx, cy = cx+r.X, cy+r.Y
-		if a.col >= 0 {
-			x[a.col] -= a.coef * r.Y
-			y[a.col] += a.coef * r.X
-		} else if a.mixed {
+		cx, cy = cx+rx, cy+ry
+		switch {
+		case a.mixed:
 			for _, t := range n.members[a.member].own {
-				x[t.Index] -= t.Coef * r.Y
-				y[t.Index] += t.Coef * r.X
+				x[t.Index] -= t.Coef * ry
+				y[t.Index] += t.Coef * rx
 			}
+		case a.col < 0:
+		case a.first:
+			x[a.col], y[a.col] = -a.coef*ry, a.coef*rx
+		default:
+			x[a.col] -= a.coef * ry
+			y[a.col] += a.coef * rx
 		}
 	}
 	d.gap[2*i], d.gap[2*i+1] = cx, cy

@@ -17,7 +17,7 @@ const (
 	contracts = 0.25
 	settled   = 1e-9  // the square of a correction so small is rounding
 	reused    = 1e-5  // after a correction so small the factors are good for one more
-	rounding  = 1e-17 // what the next correction would be, to end with
+	rounding  = 1e-16 // what the next correction would be, to end with
 	mostTurns = 16
 )
 
@@ -25,7 +25,9 @@ const (
 // before. Its rates, times pathScale, are path rates: in one unit of time the inputs
 // there go to those of to, at constant speed, so that the predictor is
 //
-//	q = q₀ + q̇₀ + q̈₀/2
+//	q = q₀ + q̇₀ + q̈₀/2 + q⃛₀/6
+//
+// with the third derivative 0 where no step before tells it.
 //
 // It returns solved, or tooLong where the first correction is over 0.1, the second
 // over a quarter of the first, or the determinant changes its sign.
@@ -72,14 +74,18 @@ func (n *newton) slopes(to *scene, d *desk, sign float64) bool {
 
 func (n *newton) predict(p, d *desk) {
 	k := p.last[pathScale]
-	half := k * k / 2
+	half, sixth := k*k/2, k*k*k/6
+	if math.Abs(k) > 8 {
+		sixth = 0 // a step so short before tells too little
+	}
 	for i := range n.free {
-		h := k*p.vel[i] + half*p.acc[i]
+		h := k*p.vel[i] + half*p.acc[i] + sixth*p.jerk[i]
 		turnBy(d.dir[2*i:2*i+2], p.dir[2*i:2*i+2], h/2*(1+h*h/12)) // tan(h/2)
 		d.angle[i] = p.angle[i] + h
 	}
 	for i := range n.slides {
-		d.slide[i] = p.slide[i] + (k*p.vel[n.free+i]+half*p.acc[n.free+i])*n.length
+		c := n.free + i
+		d.slide[i] = p.slide[i] + (k*p.vel[c]+half*p.acc[c]+sixth*p.jerk[c])*n.length
 	}
 	n.rewind(d)
 }
@@ -95,7 +101,10 @@ func (n *newton) fail(d *desk) status {
 // turnBy writes into to the unit vector from turned by 2·atan(t): with t the
 // tangent of half an angle the rotation is rational in it.
 func turnBy(to, from []float64, t float64) {
-	k := 1 / (1 + t*t)
+	k := 1 - t*t // 1/(1 + t²) but for t⁴
+	if k < 1-1e-8 {
+		k = 1 / (1 + t*t)
+	}
 	c, s := (1-t*t)*k, 2*t*k
 	x, y := from[0]*c-from[1]*s, from[0]*s+from[1]*c
 	unit := 1.5 - 0.5*(x*x+y*y)

@@ -40,6 +40,7 @@ func (n *newton) rates(sc *scene, d *desk) {
 func (d *desk) still() {
 	clear(d.vel)
 	clear(d.acc)
+	clear(d.jerk)
 	d.last[pathSpeed], d.last[pathScale] = 0, 0
 }
 
@@ -196,12 +197,16 @@ func (n *newton) spread(sc *scene, d *desk) {
 
 // agrees reports whether path rates at both ends of a step fit each other:
 // |v₁ − v₀ − a₀| ≤ 0.1 of every unknown, with the rates by the same unit of time as
-// in place, those of the start in p.
+// in place, those of the start in p. It notes how the accelerations grew.
 func (d *desk) agrees(p *desk) bool {
 	k := p.last[pathScale]
+	known := d.last[pathSpeed] != 0
 	for i, v := range d.vel {
 		if !(math.Abs(v-k*(p.vel[i]+k*p.acc[i])) <= widest) {
 			return false
+		}
+		if known {
+			d.jerk[i] = d.acc[i] - k*k*p.acc[i]
 		}
 	}
 	return true

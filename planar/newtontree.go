@@ -89,7 +89,20 @@ func (n *newton) close(s *system, r *row) {
 		}
 	}
 	l.end = len(n.chords)
+	n.firsts(&l)
 	n.loops = append(n.loops, l)
+}
+
+// firsts marks the first chord of a loop in every column, where each chord has one.
+func (n *newton) firsts(l *loop) {
+	chords, seen := n.chords[l.moved:l.end], make([]bool, n.free)
+	l.mixed = slices.ContainsFunc(chords, func(c chord) bool { return c.mixed })
+	for i := range chords {
+		if c := &chords[i]; c.col >= 0 {
+			c.first = !l.mixed && !seen[c.col]
+			seen[c.col] = true
+		}
+	}
 }
 
 // trace adds sign times the chords of the limbs from a known member, which it

@@ -19,6 +19,7 @@ type desk struct {
 	gap    []float64 // of every loop: C
 	vel    []float64 // of the unknowns; slides in units of the group's length
 	acc    []float64
+	jerk   []float64 // by how much acc grew in the last step, for a single drive
 	miss   []float64 // of the equations
 	j      []float64 // slopes of the equations, by rows
 	lu     []float64 // factors; of the pivots the inverses
@@ -29,11 +30,11 @@ type desk struct {
 }
 
 // sizes of the parts of a desk, in their order.
-func (n *newton) sizes() [18]int {
+func (n *newton) sizes() [19]int {
 	m := len(n.members)
 	return [...]int{
 		2 * n.free, n.free, n.slides, 3 * m, 2 * m, 3 * m, 2 * len(n.chords), 2 * len(n.loops), 2 * len(n.loops),
-		n.n, n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, lasts,
+		n.n, n.n, n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, lasts,
 	}
 }
 
@@ -66,7 +67,7 @@ func (n *newton) desk(w []float64) (d desk) {
 	sizes := n.sizes()
 	for i, part := range [...]*[]float64{
 		&d.dir, &d.angle, &d.slide, &d.rest, &d.axis, &d.turn, &d.chords, &d.fixed, &d.gap,
-		&d.vel, &d.acc, &d.miss, &d.j, &d.lu, &d.perm, &d.square, &d.temp, &d.last,
+		&d.vel, &d.acc, &d.jerk, &d.miss, &d.j, &d.lu, &d.perm, &d.square, &d.temp, &d.last,
 	} {
 		*part, w = w[:sizes[i]:sizes[i]], w[sizes[i]:]
 	}
@@ -151,18 +152,21 @@ func (d *desk) solve(x []float64) {
 	}
 	lu := d.lu
 	for i := 1; i < n; i++ {
-		sum := x[i]
-		for c, v := range lu[i*n : i*n+i] {
-			sum -= v * x[c]
+		row, sum := lu[i*n:i*n+i], x[i]
+		known := x[:len(row)]
+		for c, v := range row {
+			sum -= v * known[c]
 		}
 		x[i] = sum
 	}
 	for i := n - 1; i >= 0; i-- {
-		row, sum := lu[i*n+i:i*n+n], x[i]
-		for c, v := range row[1:] {
-			sum -= v * x[i+1+c]
+		row := lu[i*n+i : i*n+n]
+		known := x[i:][:len(row)]
+		sum := known[0]
+		for c := 1; c < len(row); c++ {
+			sum -= row[c] * known[c]
 		}
-		x[i] = sum * row[0]
+		known[0] = sum * row[0]
 	}
 }
 

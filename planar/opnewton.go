@@ -35,6 +35,7 @@ func (o *group) rates(sc *scene) bool {
 		return false
 	}
 	o.n.rates(sc, d)
+	clear(d.jerk)
 	d.last[pathSpeed], d.last[pathScale] = 0, 1
 	if len(sc.in) == 1 && sc.in[0].Acc == 0 {
 		d.last[pathSpeed] = sc.in[0].Vel
