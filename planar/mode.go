@@ -75,9 +75,7 @@ func (l *Linkage) AssembleMode(mode string, in ...rigid.Coordinate) (*State, err
 		}
 		s.now.in[i].Pos = c.Pos
 	}
-	if l.design.Guess != nil {
-		s.readPhases(l.design.Guess)
-	}
+	s.build()
 	for i, o := range l.program.ops {
 		if st := o.place(s.now, s.now); st != solved && st != doubtful {
 			return nil, l.program.fault(i, st)

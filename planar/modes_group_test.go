@@ -1,0 +1,349 @@
+package planar_test
+
+import (
+	_ "embed"
+	"encoding/json"
+	"errors"
+	"fmt"
+	"math"
+	"math/rand/v2"
+	"testing"
+
+	. "example.com/twopoint/planar"
+	"example.com/twopoint/rigid"
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+//go:embed testdata/modes.json
+var modesTable []byte
+
+// A platformCase is a platform on three legs with all places in which it closes, by
+// polynomials with 60 digits: testdata/modes.py.
+type platformCase struct {
+	Legs []struct {
+		Kind     string
+		P, G     [2]float64
+		R, Angle float64
+	}
+	Roots  int          // degree of the polynomial: complex solutions
+	Places [][3]float64 // x, y and angle of the platform
+}
+
+func platformCases(t testing.TB) (cases []platformCase) {
+	t.Helper()
+	if err := json.Unmarshal(modesTable, &cases); err != nil {
+		t.Fatal(err)
+	}
+	return cases
+}
+
+func (c *platformCase) kinds() (kinds string) {
+	for _, l := range c.Legs {
+		kinds += l.Kind
+	}
+	return kinds
+}
+
+// linkage is the platform as link 1, everything in units of size.
+func (c *platformCase) linkage(t testing.TB, size float64, at rigid.Pose) *Linkage {
+	t.Helper()
+	var p plan
+	platform := p.links("platform")[0]
+	fixed := func(g [2]float64, angle float64) Line {
+		q := at.Point(r2.Vec{X: size * g[0], Y: size * g[1]})
+		return Frame.Line(q.X, q.Y, angle+at.Angle())
+	}
+	for i, l := range c.Legs {
+		g, own := fixed(l.G, l.Angle), platform.Line(size*l.P[0], size*l.P[1], l.Angle)
+		switch l.Kind {
+		case "c":
+			leg := p.links(fmt.Sprintf("leg %d", i+1))[0]
+			p.pin(Frame.At(g.X, g.Y), leg.At(0, 0))
+			p.pin(leg.At(size*l.R, 0), platform.At(own.X, own.Y))
+		case "l":
+			p.slot(platform.At(own.X, own.Y), g)
+		case "m":
+			p.slot(Frame.At(g.X, g.Y), own)
+		}
+	}
+	l, err := New(p.Design)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return l
+}
+
+// TestModesOfPlatforms finds the modes of platforms on three legs of all ten
+// combinations: as many as the table has, and in the same places, at any size and
+// wherever the machine stands. The number of complex solutions, regular ends of paths,
+// is the degree of the polynomial: 6 at most (Gosselin, Sefrioui and Richard 1992, from
+// memory).
+func TestModesOfPlatforms(t *testing.T) {
+	reals := map[int]int{}
+	for i, c := range platformCases(t) {
+		size := []float64{1, 1e-6, 1e3}[i%3]
+		at := rigid.NewPose(0, 0, 0)
+		if i%2 == 1 {
+			at = rigid.NewPose(20*size, -50*size, 2)
+		}
+		l := c.linkage(t, size, at)
+		name := fmt.Sprintf("%d, %s", i, c.kinds())
+		modes, errs := all(l)
+		if len(errs) > 0 || len(modes) != len(c.Places) {
+			t.Errorf("%s: %d modes of %d, %v", name, len(modes), len(c.Places), errs)
+			continue
+		}
+		reals[len(modes)]++
+		if simple := Ends(l); simple != c.Roots {
+			t.Errorf("%s: %d complex solutions, the polynomial has %d", name, simple, c.Roots)
+		}
+		for _, p := range c.Places {
+			want := at.Compose(rigid.NewPose(size*p[0], size*p[1], p[2]))
+			off, margin := math.Inf(1), 1.0
+			for _, s := range modes {
+				got := s.Motion(1).Pose
+				d := max(r2.Norm(r2.Sub(got.Origin, want.Origin))/size, r2.Norm(r2.Sub(got.Axis, want.Axis)))
+				if d < off {
+					off, margin = d, s.Margin()
+				}
+			}
+			if !(off < 1e-12/margin) {
+				t.Errorf("%s: %v is off by %.2g, margin %.2g", name, p, off, margin)
+			}
+		}
+		for k, s := range modes {
+			if o := open(l, s, nil); !(o.pos < 1e-13) {
+				t.Errorf("%s: %+v", name, o)
+			}
+			if among(l, s, modes[:k], 1e-6*size) {
+				t.Errorf("%s: one place twice", name)
+			}
+		}
+	}
+	if reals[2] == 0 || reals[4] == 0 || reals[6] == 0 {
+		t.Errorf("numbers of modes %v", reals)
+	}
+}
+
+// TestModesBySwaps counts the places in which a linkage, moved dyad by dyad through a
+// whole turn of its crank in every mode, passes a value of another drive: so many modes
+// it has when driven there, as a group of higher class.
+func TestModesBySwaps(t *testing.T) {
+	cases, _ := peers(t)
+	for _, name := range []string{"sixbar_watt", "sixbar_steph"} {
+		p := cases[name]
+		l, guess := p.linkage(t)
+		start, err := l.Assemble(guess, at(0.8))
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, driven := range []Link{2, 3, 4, 5} {
+			d := l.Design()
+			d.Drives = []Drive{Turn{Of: driven, From: Frame}}
+			other, err := New(d)
+			if err != nil {
+				t.Fatal(err)
+			}
+			value := start.Turn(driven, Frame).Pos
+			modes, errs := all(other, at(value))
+			if want := passes(t, l, start.Mode(), driven, value); len(modes) != want || len(errs) > 0 {
+				t.Errorf("%s by %d: %d modes, passed %d times, %v", name, driven, len(modes), want, errs)
+			} else {
+				t.Logf("%s by %d, %s: %d modes", name, driven, groups(other), len(modes))
+			}
+			if !among(l, start, modes, 1e-9) {
+				t.Errorf("%s by %d: not as it was", name, driven)
+			}
+		}
+	}
+}
+
+// passes counts how often a link passes an angle while the crank turns once, in all
+// modes.
+func passes(t *testing.T, l *Linkage, mode string, link Link, angle float64) (n int) {
+	t.Helper()
+	const steps = 4000
+	for _, m := range products(mode) {
+		var last float64
+		had := false
+		for k := range steps + 1 {
+			s, err := l.AssembleMode(m, at(0.8e-3+2*math.Pi*float64(k)/steps))
+			if err != nil {
+				had = false
+				continue
+			}
+			off := rigid.Wrap(s.Turn(link, Frame).Pos - angle)
+			if had && off*last < 0 && math.Abs(off)+math.Abs(last) < 1 {
+				n++
+			}
+			last, had = off, true
+		}
+	}
+	return n
+}
+
+// chained is a group of n closed loops in the place in which it was drawn, with no
+// drive: n platforms, each pinned to the next, the first and the last on the frame by a
+// bar more.
+func chained(random *rand.Rand, n int) (Design, []rigid.Placement) {
+	var p plan
+	at := []rigid.Pose{rigid.NewPose(0, 0, 0)}
+	spot := func() r2.Vec { return r2.Vec{X: 2 * random.NormFloat64(), Y: 2 * random.NormFloat64()} }
+	link := func() Link {
+		q := spot()
+		at = append(at, rigid.NewPose(q.X, q.Y, 6*random.Float64()))
+		return p.links(fmt.Sprint(len(at)))[0]
+	}
+	pin := func(a, b Link, q r2.Vec) {
+		u, v := at[a].Local(q), at[b].Local(q)
+		p.pin(a.At(u.X, u.Y), b.At(v.X, v.Y))
+	}
+	bar := func(a Link) {
+		l := link()
+		pin(a, l, spot())
+		pin(l, Frame, spot())
+	}
+	last := Frame
+	for i := range n {
+		l := link()
+		if i > 0 {
+			pin(last, l, spot())
+		} else {
+			bar(l)
+		}
+		bar(l)
+		if i == n-1 {
+			bar(l)
+		}
+		last = l
+	}
+	guess := make([]rigid.Placement, len(at))
+	for i, q := range at {
+		guess[i] = rigid.Placement{X: q.Origin.X, Y: q.Origin.Y, Angle: q.Angle()}
+	}
+	return p.Design, guess
+}
+
+// TestModesOfGroups holds the modes of groups of two to four closed loops, with pins,
+// guides and slots, against what assembling from many places at random finds: none of
+// that may be missing, and the place in which the group was drawn must be there.
+func TestModesOfGroups(t *testing.T) {
+	random := rand.New(rand.NewPCG(6, 2))
+	for _, c := range []struct{ platforms, groups, starts int }{{1, 12, 60}, {2, 8, 60}, {3, 3, 100}} {
+		if testing.Short() {
+			c.groups = 2
+		}
+		found, total, worst := 0, 0, 0
+		for k := range c.groups {
+			d, guess := chained(random, c.platforms)
+			l, err := New(d)
+			if err != nil {
+				t.Fatal(err)
+			}
+			drawn, err := l.Assemble(guess)
+			if err != nil {
+				t.Fatal(err)
+			}
+			modes, errs := all(l)
+			if len(errs) > 0 || !among(l, drawn, modes, 1e-9/drawn.Margin()) {
+				t.Errorf("%d platforms, %d: not as drawn among %d, %v", c.platforms, k, len(modes), errs)
+			}
+			for _, s := range modes {
+				if o := open(l, s, nil); !(o.pos < 1e-12) {
+					t.Errorf("%d platforms, %d: %+v", c.platforms, k, o)
+				}
+			}
+			var seen []*State
+			for range c.starts {
+				for i := range guess {
+					guess[i] = rigid.Placement{X: 3 * random.NormFloat64(), Y: 3 * random.NormFloat64(), Angle: 6 * random.Float64()}
+				}
+				s, err := l.Assemble(guess)
+				if err != nil || s.Margin() < 1e-6 {
+					continue
+				}
+				if !among(l, s, modes, 1e-8/s.Margin()) {
+					t.Errorf("%d platforms, %d: a mode from a guess alone, margin %.2g", c.platforms, k, s.Margin())
+				}
+				if !among(l, s, seen, 1e-6) {
+					seen = append(seen, s)
+				}
+			}
+			found, total, worst = found+len(seen), total+len(modes), max(worst, len(modes))
+		}
+		t.Logf("%d platforms: %d modes, of which starts at random find %d; at most %d", c.platforms, total, found, worst)
+	}
+}
+
+// TestModesIncomplete asks for modes where their number has no bound, and where links
+// can move with the drives held.
+func TestModesIncomplete(t *testing.T) {
+	geared := epicyclicFiveBar(17, 23, false)
+	line := peaucellier("QB")
+	line.Drives = []Drive{Slide{Of: Link(6).Line(3, 0, 0), From: Frame.Line(0, 0, math.Pi/2)}}
+	for name, c := range map[string]struct {
+		d    Design
+		in   float64
+		some int
+	}{
+		"gears on a coupler":                 {geared.Design, 1, 2},
+		"Peaucellier's driven at the output": {line, 0.3, 1},
+		"loops for more than 5 000 modes":    {scissorOn(8), scissorReach(8, 0.6, 0).Pos, 0},
+	} {
+		l, err := New(c.d)
+		if err != nil {
+			t.Fatalf("%s: %v", name, err)
+		}
+		modes, errs := all(l, at(c.in))
+		if len(errs) != 1 || !errors.Is(errs[0], ErrIncomplete) || len(modes) < c.some {
+			t.Errorf("%s: %d modes, %v", name, len(modes), errs)
+		}
+		for _, s := range modes {
+			if o := open(l, s, []rigid.Coordinate{{Pos: c.in}}); !(o.pos < 1e-11) {
+				t.Errorf("%s: %+v", name, o)
+			}
+		}
+		t.Logf("%s: %d modes, %v", name, len(modes), errs)
+	}
+}
+
+// scissorOn is a lift on a cylinder from its lowest bar to its highest.
+func scissorOn(stages int) Design {
+	d := scissor(stages)
+	d.Drives = []Drive{Reach{A: Link(1).At(-0.3, 0), B: Link(2*stages).At(0.2, 0)}}
+	return d
+}
+
+// BenchmarkModes finds the modes of a platform on three legs, and of two and three
+// platforms pinned to each other.
+func BenchmarkModes(b *testing.B) {
+	cases := platformCases(b)
+	b.Run("2 loops", func(b *testing.B) {
+		b.ReportAllocs()
+		k := 0
+		var linkages []*Linkage
+		for _, c := range cases {
+			linkages = append(linkages, c.linkage(b, 1, rigid.NewPose(0, 0, 0)))
+		}
+		for b.Loop() {
+			all(linkages[k%len(linkages)])
+			k++
+		}
+	})
+	for _, n := range []int{2, 3, 4, 5} {
+		b.Run(fmt.Sprintf("%d loops", n+1), func(b *testing.B) {
+			random := rand.New(rand.NewPCG(6, 2))
+			b.ReportAllocs()
+			for b.Loop() {
+				d, _ := chained(random, n)
+				l, err := New(d)
+				if err != nil {
+					b.Fatal(err)
+				}
+				if _, errs := all(l); len(errs) > 0 {
+					b.Fatal(errs)
+				}
+			}
+		})
+	}
+}
