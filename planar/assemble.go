@@ -93,7 +93,10 @@ func (s *State) choose(guess []rigid.Placement) error {
 			st = o.place(sc, sc)
 		}
 		if st != solved {
-			err := s.l.program.fault(i, st)
+			err, own := s.l.program.faultAt(i, st, sc)
+			if own != nil {
+				return fmt.Errorf("%w: %w", err, own)
+			}
 			if v, ok := o.(solver); ok && st == unreachable {
 				err = fmt.Errorf("%w: they stay %.3g m apart", err, v.gap(sc))
 			}
@@ -255,6 +258,9 @@ func (s *State) begin() error {
 		s.start[b] = p.whole[b].value(s.now)
 	}
 	if err := s.check(); err != nil {
+		return err
+	}
+	if err := s.tied(); err != nil {
 		return err
 	}
 	return s.lively()

@@ -33,7 +33,9 @@ func (b *builder) group() {
 	for i := range b.blocks {
 		for _, row := range b.blocks[i].rows {
 			r := b.rows[row]
-			b.blocks[i].group = max(b.blocks[i].group, groupOf[r.a], groupOf[r.b])
+			for body := range r.bodies {
+				b.blocks[i].group = max(b.blocks[i].group, groupOf[body])
+			}
 		}
 	}
 }
@@ -130,7 +132,7 @@ func (b *builder) fused(bodies []int) map[int]int {
 		for _, r := range b.rows {
 			i, okA := root[r.a]
 			j, okB := root[r.b]
-			if !okA || !okB || i == j || b.class[r.a] != b.class[r.b] {
+			if !okA || !okB || i == j || b.class[r.a] != b.class[r.b] || r.kind == rowCustom {
 				continue
 			}
 			pair := [2]int{min(i, j), max(i, j)}

@@ -219,6 +219,8 @@ func (d *Design) linksOf(i int) []Link {
 		return []Link{j.A, j.B, j.Arm}
 	case RackPair:
 		return []Link{j.Pinion.Link, j.Rack.Link}
+	case Custom:
+		return linksOfConstraint(j.By)
 	}
 	return nil
 }

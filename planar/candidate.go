@@ -193,6 +193,10 @@ func (r *relaxation) candidates() []candidate {
 			}
 		case RackPair:
 			add(candidate{joint: row.joint, setting: setting{unit: meshUnit}, rows: []int{i}})
+		case Custom:
+			if len(row.custom.on) == 1 && row.custom.memory == 0 {
+				add(candidate{joint: row.joint, setting: setting{unit: meshUnit}, rows: []int{i}})
+			}
 		case Prismatic:
 			add(candidate{joint: row.joint, setting: setting{unit: guideUnit}, rows: []int{i}})
 		case Revolute:

@@ -15,6 +15,9 @@ const agreed = 1e-9
 // miss returns by how much a redundant constraint doesn't hold, in m or rad.
 func (p *program) miss(i int, sc *scene) float64 {
 	c := &p.checks[i]
+	if c.row.custom != nil {
+		return math.Abs(p.miscustom(i, sc))
+	}
 	if c.angle == nil {
 		return math.Abs(p.residual(&c.row, sc))
 	}

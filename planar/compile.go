@@ -162,6 +162,7 @@ func (c *compiler) unite() {
 	for b := 1; b < c.bodies; b++ {
 		root[find(of[c.xy(b)])] = find(of[c.xy(b)+1])
 	}
+	c.together(root, find)
 	for b := 1; b < c.bodies; b++ {
 		c.unseat(b, of, root, find)
 	}
@@ -199,7 +200,7 @@ func (c *compiler) unseat(body int, of, root []int, find func(int) int) {
 			on, own = own, on
 		}
 		for _, i := range c.blocks[later].rows {
-			if o := &c.rows[i]; o.a == body || o.b == body {
+			if c.rows[i].touches(body) {
 				root[at] = later
 			}
 		}
@@ -219,7 +220,7 @@ func (c *compiler) pinnedBy(body, block int) bool {
 func (c *compiler) refer(own, on spot, joint int) {
 	for i := range c.rows {
 		r := &c.rows[i]
-		if r.joint == joint {
+		if r.joint == joint || r.custom != nil {
 			continue
 		}
 		if r.b == own.body && c.one(r.pb, own.at) && r.kind != rowRack {
@@ -261,8 +262,9 @@ func (c *compiler) sort(unitOf []int) {
 			}
 		}
 		for _, i := range u.rows {
-			see(c.rows[i].a)
-			see(c.rows[i].b)
+			for body := range c.rows[i].bodies {
+				see(body)
+			}
 		}
 		for _, b := range u.bodies {
 			see(b)

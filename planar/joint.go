@@ -1,7 +1,7 @@
 package planar
 
 // A Joint ties links together. The joints are the values (not pointers) of Revolute,
-// Prismatic, SlidingPin, Fixed, GearPair and RackPair.
+// Prismatic, SlidingPin, Fixed, GearPair, RackPair and Custom.
 type Joint interface{ joint() }
 
 // A Revolute is a pin: the two points coincide. Where one pin holds several links,

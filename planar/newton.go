@@ -27,6 +27,9 @@ type newton struct {
 	tree            []limb
 	loops           []loop
 	chords          []chord // of all loops, in their order
+	customs         []ruled // the equations of Constraints, after those of the loops
+	parts           customParts
+	closed          int // loops that are equations; those after them are the arms of customs
 }
 
 // A member is a body of the group's equations.
@@ -110,22 +113,28 @@ func newNewton(s *system, b *block) (*newton, error) {
 	n.free = len(n.psi)
 	for _, i := range b.rows {
 		r := &s.rows[i]
-		n.member(s, r.a, placed)
-		n.member(s, r.b, placed)
+		for body := range r.bodies {
+			n.member(s, body, placed)
+		}
 		n.length = math.Max(n.length, math.Max(r2.Norm(r.pa), math.Max(r2.Norm(r.pb), math.Abs(r.rate))))
 	}
 	if n.length == 0 {
 		n.length = s.length
 	}
 	n.span(s, b.rows)
+	n.closed = len(n.loops)
+	n.rule(s, b.rows)
 	n.n = n.free + n.slides
 	n.count()
 	rows := 0
-	for i := range n.loops {
+	for _, l := range n.loops[:n.closed] {
 		rows++
-		if n.loops[i].kind == rowX {
+		if l.kind == rowX {
 			rows++
 		}
+	}
+	for i := range n.customs {
+		rows += len(n.customs[i].nth)
 	}
 	if rows != n.n {
 		return nil, errors.New("twopoint: a group of higher class whose equations do not match its unknowns")
@@ -150,6 +159,11 @@ func (n *newton) count() {
 		if l := &n.loops[i]; l.kind == rowRack {
 			see(l.a)
 			see(l.b)
+		}
+	}
+	for i := range n.customs {
+		for _, r := range n.customs[i].riders {
+			see(r.member)
 		}
 	}
 	for i := range n.members {

@@ -17,6 +17,7 @@ import (
 func (n *newton) assemble(sc *scene, d *desk) status {
 	d.still()
 	n.rough(sc, d)
+	n.weigh(sc, d)
 	start := n.save(d, nil)
 	if !n.lead(sc, d) {
 		n.restore(d, start)
@@ -167,7 +168,7 @@ func (n *newton) damped(sc *scene, d *desk) bool {
 
 // save copies the unknowns.
 func (n *newton) save(d *desk, to []float64) []float64 {
-	return append(append(append(to[:0], d.dir...), d.angle...), d.slide...)
+	return append(append(append(append(to[:0], d.dir...), d.angle...), d.slide...), d.memory...)
 }
 
 // restore puts copied unknowns back.
@@ -175,4 +176,5 @@ func (n *newton) restore(d *desk, from []float64) {
 	copy(d.dir, from)
 	copy(d.angle, from[2*n.free:])
 	copy(d.slide, from[3*n.free:])
+	copy(d.memory, from[3*n.free+n.slides:])
 }

@@ -6,7 +6,7 @@ import "gonum.org/v1/gonum/spatial/r2"
 func (n *newton) lay(sc *scene, d *desk) {
 	n.turn(sc, d)
 	row := 0
-	for i := range n.loops {
+	for i := range n.closed {
 		l := &n.loops[i]
 		if l.kind == rowX {
 			x, y := d.j[row*n.n:(row+1)*n.n], d.j[(row+1)*n.n:(row+2)*n.n]
@@ -19,6 +19,7 @@ func (n *newton) lay(sc *scene, d *desk) {
 		n.layLine(sc, d, i, row)
 		row++
 	}
+	n.layCustoms(sc, d, row)
 }
 
 // sum writes C of a loop and its slopes. Into a pin's rows of d.j, which have no other

@@ -73,6 +73,7 @@ func (n *newton) slopes(to *scene, d *desk, sign float64) bool {
 }
 
 func (n *newton) predict(p, d *desk) {
+	n.remember(p, d)
 	k := p.last[pathScale]
 	half, sixth := k*k/2, k*k*k/6
 	if math.Abs(k) > 8 {

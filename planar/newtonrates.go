@@ -17,9 +17,10 @@ import (
 func (n *newton) rates(sc *scene, d *desk) {
 	n.knownRates(sc, d)
 	row := 0
-	for i := range n.loops {
+	for i := range n.closed {
 		row += n.driftVel(sc, d, i, row)
 	}
+	n.customVel(sc, d, row)
 	d.solve(d.vel)
 	for i := range n.members {
 		w := d.turn[3*i]
@@ -29,9 +30,10 @@ func (n *newton) rates(sc *scene, d *desk) {
 		d.turn[3*i+2] = w
 	}
 	row = 0
-	for i := range n.loops {
+	for i := range n.closed {
 		row += n.driftAcc(sc, d, i, row)
 	}
+	n.customAcc(sc, d, row)
 	d.solve(d.acc)
 	n.spread(sc, d)
 }
@@ -74,10 +76,8 @@ func (n *newton) chord(d *desk, k int) r2.Vec {
 	return r
 }
 
-// driftVel writes the negative of the velocity that a loop has without the unknown
-// ones, and returns its number of equations.
-func (n *newton) driftVel(sc *scene, d *desk, i, row int) int {
-	l := &n.loops[i]
+// loopVel returns the velocity of C of a loop without the unknown ones.
+func (n *newton) loopVel(sc *scene, d *desk, l *loop) r2.Vec {
 	to, from := &sc.m[n.members[l.to].body], &sc.m[n.members[l.from].body]
 	c := r2.Vec{X: to.Vel.X - from.Vel.X, Y: to.Vel.Y - from.Vel.Y}
 	for k := l.still; k < l.end; k++ {
@@ -87,6 +87,14 @@ func (n *newton) driftVel(sc *scene, d *desk, i, row int) int {
 			c.Y += w * r.X
 		}
 	}
+	return c
+}
+
+// driftVel writes the negative of the velocity that a loop has without the unknown
+// ones, and returns its number of equations.
+func (n *newton) driftVel(sc *scene, d *desk, i, row int) int {
+	l := &n.loops[i]
+	c := n.loopVel(sc, d, l)
 	if l.kind == rowX {
 		d.vel[row], d.vel[row+1] = -c.X, -c.Y
 		return 2
@@ -107,16 +115,12 @@ func (n *newton) driftVel(sc *scene, d *desk, i, row int) int {
 	return 1
 }
 
-// driftAcc writes the negative of the acceleration that a loop has without the
-// unknown ones. With ω turning u and n = u⊥,
-//
-//	(n·C)″ = n·C″ − 2ω u·C′ − α u·C − ω² n·C
-//	(u·C)″ = u·C″ + 2ω n·C′ + α n·C − ω² u·C
-func (n *newton) driftAcc(sc *scene, d *desk, i, row int) int {
-	l := &n.loops[i]
+// loopAcc returns the velocity of C of a loop, and its acceleration without the
+// unknown ones.
+func (n *newton) loopAcc(sc *scene, d *desk, l *loop) (v, c r2.Vec) {
 	to, from := &sc.m[n.members[l.to].body], &sc.m[n.members[l.from].body]
-	v := r2.Vec{X: to.Vel.X - from.Vel.X, Y: to.Vel.Y - from.Vel.Y}
-	c := r2.Vec{X: to.Acc.X - from.Acc.X, Y: to.Acc.Y - from.Acc.Y}
+	v = r2.Vec{X: to.Vel.X - from.Vel.X, Y: to.Vel.Y - from.Vel.Y}
+	c = r2.Vec{X: to.Acc.X - from.Acc.X, Y: to.Acc.Y - from.Acc.Y}
 	for k := l.still; k < l.end; k++ {
 		a, r := &n.chords[k], n.chord(d, k)
 		w, al := d.turn[3*a.member+2], d.turn[3*a.member+1]
@@ -131,6 +135,17 @@ func (n *newton) driftAcc(sc *scene, d *desk, i, row int) int {
 			c.X, c.Y = c.X-2*w*y, c.Y+2*w*x
 		}
 	}
+	return v, c
+}
+
+// driftAcc writes the negative of the acceleration that a loop has without the
+// unknown ones. With ω turning u and n = u⊥,
+//
+//	(n·C)″ = n·C″ − 2ω u·C′ − α u·C − ω² n·C
+//	(u·C)″ = u·C″ + 2ω n·C′ + α n·C − ω² u·C
+func (n *newton) driftAcc(sc *scene, d *desk, i, row int) int {
+	l := &n.loops[i]
+	v, c := n.loopAcc(sc, d, l)
 	if l.kind == rowX {
 		d.acc[row], d.acc[row+1] = -c.X, -c.Y
 		return 2

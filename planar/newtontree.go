@@ -40,7 +40,7 @@ func (n *newton) span(s *system, rows []int) {
 		n.tree = append(n.tree, limb{base: -1, member: i, slide: n.slide(2)})
 	}
 	for k, i := range rows {
-		if r := &s.rows[i]; !used[k] && r.kind != rowY {
+		if r := &s.rows[i]; !used[k] && r.kind != rowY && r.custom == nil {
 			n.close(s, r)
 		}
 	}
@@ -71,9 +71,14 @@ func (n *newton) close(s *system, r *row) {
 	if r.phased {
 		l.phase = r.joint
 	}
+	n.connect(s, l, r.pa, r.pb)
+}
+
+// connect enters a loop with the chords from point pa of its a to pb of its b.
+func (n *newton) connect(s *system, l loop, pa, pb r2.Vec) {
 	var all []chord
-	all = n.add(all, l.b, -1, r.pb, 1)
-	all = n.add(all, l.a, -1, r.pa, -1)
+	all = n.add(all, l.b, -1, pb, 1)
+	all = n.add(all, l.a, -1, pa, -1)
 	l.to, all = n.trace(s, all, l.b, 1)
 	l.from, all = n.trace(s, all, l.a, -1)
 	all = slices.DeleteFunc(all, func(a chord) bool { return r2.Norm(a.v) <= 1e-16*n.length })

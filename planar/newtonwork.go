@@ -27,14 +27,23 @@ type desk struct {
 	square []float64 // of the lengths of the columns of j
 	temp   []float64 // two of every unknown
 	last   []float64
+
+	// of customs
+	memory  []float64    // what they keep
+	weight  []float64    // of every equation: what it is multiplied by
+	natural []float64    // of every equation: the length of its slopes, over what moves
+	slopes  []float64    // of every equation and link, weighted: by x, y and the angle
+	arms    []float64    // of every link: slopes of x and y by the unknowns
+	asked   []evaluation // of every custom
 }
 
 // sizes of the parts of a desk, in their order.
-func (n *newton) sizes() [19]int {
-	m := len(n.members)
+func (n *newton) sizes() [24]int {
+	m, c := len(n.members), n.parts
 	return [...]int{
 		2 * n.free, n.free, n.slides, 3 * m, 2 * m, 3 * m, 2 * len(n.chords), 2 * len(n.loops), 2 * len(n.loops),
 		n.n, n.n, n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, lasts,
+		c.memory, c.rows, c.rows, c.slopes, c.arms,
 	}
 }
 
@@ -68,9 +77,11 @@ func (n *newton) desk(w []float64) (d desk) {
 	for i, part := range [...]*[]float64{
 		&d.dir, &d.angle, &d.slide, &d.rest, &d.axis, &d.turn, &d.chords, &d.fixed, &d.gap,
 		&d.vel, &d.acc, &d.jerk, &d.miss, &d.j, &d.lu, &d.perm, &d.square, &d.temp, &d.last,
+		&d.memory, &d.weight, &d.natural, &d.slopes, &d.arms,
 	} {
 		*part, w = w[:sizes[i]:sizes[i]], w[sizes[i]:]
 	}
+	n.ask(&d)
 	return d
 }
 
@@ -80,6 +91,7 @@ const (
 	lastGap
 	pathSpeed // of a single drive, to which vel and acc belong with no acceleration of it; 0 if they do not
 	pathScale // by which the next step takes vel
+	broken    // of the custom that gave no equations: (its number + 1)·faultKinds + kind; else 0
 	lasts
 )
 

@@ -30,11 +30,14 @@ func (o *group) place(was, to *scene) status {
 
 func (o *group) rates(sc *scene) bool {
 	d := &sc.desks[o.at]
-	if !d.regular() {
+	if !o.n.regular(d) {
 		d.still()
 		return false
 	}
-	o.n.rates(sc, d)
+	if o.n.rates(sc, d); d.last[broken] != 0 {
+		d.still()
+		return false
+	}
 	clear(d.jerk)
 	d.last[pathSpeed], d.last[pathScale] = 0, 1
 	if len(sc.in) == 1 && sc.in[0].Acc == 0 {
@@ -43,7 +46,7 @@ func (o *group) rates(sc *scene) bool {
 	return true
 }
 
-func (o *group) margin(sc *scene) float64 { return sc.desks[o.at].margin() }
+func (o *group) margin(sc *scene) float64 { return o.n.margin(&sc.desks[o.at]) }
 func (o *group) gap(sc *scene) float64    { return sc.desks[o.at].open() }
 func (o *group) choose(sc *scene) status  { return o.n.assemble(sc, &sc.desks[o.at]) }
 

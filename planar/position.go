@@ -125,6 +125,9 @@ func (p *position) raw(i int, slopes []float64) float64 {
 // place writes the slopes of a row and returns by how much it misses, in m. The
 // slopes are those of builder.slopes.
 func (p *position) place(r *row, slopes []float64) float64 {
+	if r.custom != nil {
+		return p.custom(r, slopes)
+	}
 	a, b := p.pose(r.a), p.pose(r.b)
 	pa, pb := a.Point(r.pa), b.Point(r.pb)
 	d, v, w := r2.Sub(pb, pa), r2.Sub(pb, b.Origin), r2.Sub(pb, a.Origin)

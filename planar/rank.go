@@ -93,6 +93,8 @@ func (b *builder) slopes(s *scatter, r row) form {
 		return b.slope(s, r, [2]residue{1, 0}, v[1].negative(), oa[1].minus(pa[1]))
 	case rowY:
 		return b.slope(s, r, [2]residue{0, 1}, v[0], pa[0].minus(oa[0]))
+	case rowCustom:
+		return b.customSlopes(s, r, false)
 	}
 	u := b.direction(s, r)
 	n := [2]residue{u[1].negative(), u[0]}

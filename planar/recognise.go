@@ -30,12 +30,15 @@ func (c *compiler) stage(u *stage) error {
 	for _, b := range u.bodies {
 		c.turn(b)
 	}
-	p := c.puzzle(u)
 	defer func() {
 		for _, b := range u.bodies {
 			c.done[b] = true
 		}
 	}()
+	if c.customary(u) {
+		return c.higher(u)
+	}
+	p := c.puzzle(u)
 	for _, form := range []func(*puzzle) bool{c.explicit, c.rolling, c.dyad} {
 		if form(p) {
 			return nil
@@ -281,8 +284,9 @@ func (c *compiler) higher(u *stage) error {
 	if err != nil {
 		return err
 	}
-	g := &group{n: n, at: len(c.newtons), linear: len(u.psi) == 0}
+	g := &group{n: n, at: len(c.newtons), linear: len(u.psi)+len(n.customs) == 0}
 	c.newtons = append(c.newtons, n)
+	c.geared = c.geared || len(n.customs) > 0 // a Constraint may read whole turns
 	c.emit(u.group, g)
 	for _, body := range c.turnedBy(u) {
 		if !c.known(body) {
@@ -298,7 +302,7 @@ func (c *compiler) higher(u *stage) error {
 func (c *compiler) turnedBy(u *stage) []int {
 	var bodies []int
 	for _, i := range u.rows {
-		for _, b := range []int{c.rows[i].a, c.rows[i].b} {
+		for b := range c.rows[i].bodies {
 			turns := slices.ContainsFunc(c.angles[b].psi, func(t term) bool { return slices.Contains(u.psi, t.Index) })
 			if turns && !slices.Contains(bodies, b) {
 				bodies = append(bodies, b)
@@ -312,7 +316,7 @@ func (c *compiler) turnedBy(u *stage) []int {
 // readAngles notes the free angles of earlier units for a Newton group.
 func (c *compiler) readAngles(u *stage) {
 	for _, i := range u.rows {
-		for _, b := range []int{c.rows[i].a, c.rows[i].b} {
+		for b := range c.rows[i].bodies {
 			for _, t := range c.angles[b].psi {
 				if slices.Contains(u.psi, t.Index) {
 					continue

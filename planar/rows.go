@@ -14,10 +14,12 @@ func (b *builder) joints() error {
 	joints := map[Joint]int{}
 	for i, j := range b.d.Joints {
 		j = tidied(j)
-		if first, ok := joints[j]; ok {
-			return b.refuse(fmt.Errorf("%w: two joints say the same", ErrOverconstrained), first, i)
+		if _, own := j.(Custom); !own { // a Constraint may not be comparable
+			if first, ok := joints[j]; ok {
+				return b.refuse(fmt.Errorf("%w: two joints say the same", ErrOverconstrained), first, i)
+			}
+			joints[j] = i
 		}
-		joints[j] = i
 		if err := b.joint(pins, i, j); err != nil {
 			return err
 		}
@@ -69,6 +71,8 @@ func (b *builder) joint(pins *pins, i int, j Joint) error {
 		b.gears(j, i)
 	case RackPair:
 		return b.rack(j, i)
+	case Custom:
+		return b.custom(j, i)
 	}
 	return nil
 }

@@ -24,6 +24,8 @@ type scene struct {
 	work  []float64          // of the groups of higher class
 	desks []desk             // the same, laid out
 
+	asides []evaluation // of the redundant equations of Constraints
+
 	*choice
 }
 
@@ -63,6 +65,7 @@ func (p *program) newScene(c *choice) *scene {
 		choice: c,
 	}
 	s.desks, s.work = desks(p.newtons)
+	s.asides = p.asides()
 	s.m[0].Pose.Axis.X = 1
 	return s
 }

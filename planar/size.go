@@ -44,6 +44,9 @@ func (d *Design) size() float64 {
 	return size
 }
 
+// A marked Constraint tells of points of its links.
+type marked interface{ marks() []Attachment }
+
 // points yields every point of the design, those of lines included.
 func (d *Design) points() func(yield func(Attachment) bool) {
 	start := func(l Line) Attachment { return l.Link.At(l.X, l.Y) }
@@ -61,6 +64,15 @@ func (d *Design) points() func(yield func(Attachment) bool) {
 				a, b = start(j.A), start(j.B)
 			case RackPair:
 				a, b = j.Pinion, start(j.Rack)
+			case Custom:
+				if m, ok := j.By.(marked); ok {
+					for _, a := range m.marks() {
+						if !yield(a) {
+							return
+						}
+					}
+				}
+				continue
 			default:
 				continue
 			}

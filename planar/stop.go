@@ -25,7 +25,8 @@ type stop struct {
 
 // fail notes why the linkage can't go from done to blocked, and returns the error.
 func (s *State) fail(op int, st status, done, blocked float64, tried *scene) error {
-	s.stop = stop{err: s.l.program.fault(op, st), op: op, done: done, blocked: blocked}
+	err, _ := s.l.program.faultAt(op, st, tried)
+	s.stop = stop{err: err, op: op, done: done, blocked: blocked}
 	if o, ok := s.l.program.ops[op].(solver); ok && st == unreachable {
 		s.stop.gap = o.gap(tried)
 	}

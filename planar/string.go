@@ -78,6 +78,13 @@ func (n naming) joint(j Joint) string {
 		}
 		return text + phase(j.Phase, j.AsAssembled)
 	}
+	if j, ok := j.(Custom); ok && j.By != nil {
+		names := make([]string, 0, 2)
+		for _, l := range j.By.Links() {
+			names = append(names, n(l))
+		}
+		return "custom: " + strings.Join(names, ", ") + " by " + calledItself(j.By)
+	}
 	return fmt.Sprintf("no joint: %T", j)
 }
 

@@ -73,11 +73,12 @@ func (s *system) psi(k int) int   { return 2*(len(s.angles)-1) + k }
 type rowKind uint8
 
 const (
-	rowX     rowKind = iota // x of the point on a = x of the point on b
-	rowY                    // y, likewise; always the row after its rowX
-	rowGuide                // n·(pb − pa) = value, n = u⊥, u turning with a
-	rowSlide                // u·(pb − pa) = value + in[drive]
-	rowRack                 // u·(pb − pa) + rate·(θb − θa) = value (+ phase), a the rack's body, b the pinion's
+	rowX      rowKind = iota // x of the point on a = x of the point on b
+	rowY                     // y, likewise; always the row after its rowX
+	rowGuide                 // n·(pb − pa) = value, n = u⊥, u turning with a
+	rowSlide                 // u·(pb − pa) = value + in[drive]
+	rowRack                  // u·(pb − pa) + rate·(θb − θa) = value (+ phase), a the rack's body, b the pinion's
+	rowCustom                // an equation of a Constraint, between any number of bodies
 )
 
 // A row is a scalar equation between two bodies. A row between two bodies counts
@@ -95,6 +96,8 @@ type row struct {
 	joint  int     // index into Design.Joints, or len(Joints) + index of the drive
 	phased bool    // value is read at Assemble (AsAssembled)
 	at, bt int     // indices of the points pa and pb: one point of one body has one index
+	custom *custom // rowCustom: the joint; a and b are the first and the last of its bodies
+	nth    int     // which of its equations
 }
 
 // A block is a square set of unknowns and rows that must be solved together, all

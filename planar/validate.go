@@ -97,8 +97,10 @@ func (c *checker) joint(i int, j Joint) {
 		c.line(at+".Rack", j.Rack)
 		c.length(at+".Radius", j.Radius)
 		c.phase(at, j.Phase, j.AsAssembled)
+	case Custom:
+		c.custom(at, j)
 	default:
-		c.wrong("%s is no joint but %T: a joint is a value of Revolute, Prismatic, SlidingPin, Fixed, GearPair or RackPair", at, j)
+		c.wrong("%s is no joint but %T: a joint is a value of Revolute, Prismatic, SlidingPin, Fixed, GearPair, RackPair or Custom", at, j)
 	}
 	if len(c.errs) > before {
 		c.joints = append(c.joints, i)

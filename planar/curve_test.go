@@ -1,0 +1,191 @@
+package planar_test
+
+import (
+	"errors"
+	"math"
+	"testing"
+
+	. "example.com/twopoint/planar"
+	"example.com/twopoint/planar/planartest"
+	"example.com/twopoint/rigid"
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+func (p *plan) by(c Constraint) { p.Joints = append(p.Joints, Custom{By: c}) }
+
+func mustNew(t testing.TB, d Design) *Linkage {
+	t.Helper()
+	l, err := New(d)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return l
+}
+
+func mustAssemble(t testing.TB, l *Linkage, guess []rigid.Placement, in ...rigid.Coordinate) *State {
+	t.Helper()
+	s, err := l.Assemble(guess, in...)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return s
+}
+
+var round = rigid.Interval{Hi: 2 * math.Pi}
+
+// slotted is a crank whose coupler carries a curved slot, in which runs the pin of a
+// rocker; straight is the same with a bar between slot centre and pin.
+func slotted(t testing.TB) (slot, bar *Linkage, guess []rigid.Placement) {
+	const crank, coupler, rocker, radius = 0.1, 0.3, 0.25, 0.12
+	make := func(curved bool) Design {
+		var p plan
+		l := p.links("crank", "rocker", "coupler")
+		p.pin(Frame.At(0, 0), l[0].At(0, 0))
+		p.pin(Frame.At(0.4, 0.05), l[1].At(0, 0))
+		if curved {
+			// The slot is in the crank, about its end.
+			p.Design = Design{}
+			l = p.links("crank", "rocker")
+			p.pin(Frame.At(0, 0), l[0].At(0, 0))
+			p.pin(Frame.At(0.4, 0.05), l[1].At(0, 0))
+			p.by(Roller{Centre: l[1].At(rocker, 0.02), On: Profile{On: l[0].Line(crank, 0.01, 0.7), Curve: Circle(coupler), Over: round, Closed: true}})
+		} else {
+			p.pin(l[0].At(crank, 0.01), l[2].At(0, 0))
+			p.pin(l[1].At(rocker, 0.02), l[2].At(coupler, 0))
+		}
+		p.turn(l[0], Frame)
+		return p.Design
+	}
+	guess = []rigid.Placement{{}, {}, {X: 0.4, Y: 0.05, Angle: 1.9}, {X: 0.1, Y: 0.01, Angle: 1}}
+	return mustNew(t, make(true)), mustNew(t, make(false)), guess
+}
+
+// TestCircularSlot runs a pin in a circular slot beside the four-bar with a bar of
+// the slot's radius in its place, over three turns both ways.
+func TestCircularSlot(t *testing.T) {
+	slot, bar, guess := slotted(t)
+	a := mustAssemble(t, slot, guess[:3], at(0))
+	b := mustAssemble(t, bar, guess, at(0))
+	worst, turns := [3]float64{}, 0.0
+	for k := range 600 {
+		phi := 6 * math.Pi * math.Sin(float64(k)/100)
+		in := rigid.Coordinate{Pos: phi, Vel: 2, Acc: -3}
+		if err := errors.Join(a.Move(in), b.Move(in)); err != nil {
+			t.Fatal(phi, err)
+		}
+		c, d := a.Turn(2, Frame), b.Turn(2, Frame)
+		for i, off := range [3]float64{c.Pos - d.Pos, c.Vel - d.Vel, c.Acc - d.Acc} {
+			worst[i] = max(worst[i], math.Abs(off))
+		}
+		turns = max(turns, math.Abs(phi))
+	}
+	t.Logf("worst %.2g over %.1f rad", worst, turns)
+	if worst[0] > 1e-14 || worst[1] > 1e-13 || worst[2] > 1e-12 {
+		t.Errorf("off by %.2g", worst)
+	}
+}
+
+// TestEllipticSlot runs a pin in an elliptic slot, driven by a rod, beside the trammel that
+// draws the ellipse: of a rod whose two pins slide on the axes, the point at a and b
+// from them goes along x = a cos φ, y = b sin φ.
+func TestEllipticSlot(t *testing.T) {
+	const a, b = 0.5, 0.2
+	var p plan
+	rod := p.links("rod")[0]
+	p.slot(rod.At(a-b, 0), Frame.Line(0, 0, 0))
+	p.by(Roller{Centre: rod.At(a, 0), On: Profile{On: Frame.Line(0, 0, 0), Curve: Ellipse(a, b), Over: round, Closed: true}})
+	p.turn(rod, Frame)
+	s := mustAssemble(t, mustNew(t, p.Design), []rigid.Placement{{}, {X: 0.01, Y: -0.11, Angle: 0.6}}, at(35*rigid.Degree))
+	for k := range 400 {
+		// Where the rod is upright, the pin goes along both slots, and two motions part.
+		phi := 35*rigid.Degree + 0.9*math.Sin(0.02*float64(k))
+		if err := s.Move(rigid.Coordinate{Pos: phi, Vel: 2}); err != nil {
+			t.Fatal(phi, err)
+		}
+		end := s.Point(rod.At(a, 0))
+		sin, cos := math.Sincos(phi)
+		want := rigid.Point{Pos: r2.Vec{X: a * cos, Y: b * sin}, Vel: r2.Vec{X: -2 * a * sin, Y: 2 * b * cos}, Acc: r2.Vec{X: -4 * a * cos, Y: -4 * b * sin}}
+		tol := 1e-13 / min(1, s.Margin())
+		if r2.Norm(r2.Sub(end.Pos, want.Pos)) > tol || r2.Norm(r2.Sub(end.Vel, want.Vel)) > 10*tol || r2.Norm(r2.Sub(end.Acc, want.Acc)) > 100*tol/s.Margin() {
+			t.Fatalf("at %v: %v, want %v, margin %v", phi, end, want, s.Margin())
+		}
+	}
+}
+
+// TestEccentric runs followers on a round cam beside what the trade takes for them:
+// with a flat face, harmonic motion; with a roller, a slider-crank whose rod is as
+// long as both radii.
+func TestEccentric(t *testing.T) {
+	const e, radius, roller = 0.02, 0.05, 0.015
+	for _, left := range []bool{false, true} {
+		var p plan
+		l := p.links("cam", "flat", "arm", "rod", "slider")
+		cam := Profile{On: l[0].Line(e, 0, 0.3), Curve: Circle(radius), Over: round, Closed: true}
+		p.pin(Frame.At(0, 0), l[0].At(0, 0))
+		up := math.Pi / 2
+		p.guide(Frame.Line(0, 0, up), l[1].Line(0, 0, up))
+		face := l[1].Line(0.01, 0, 0)
+		if left {
+			face = l[1].Line(0.01, 0, math.Pi)
+		}
+		p.by(FlatFace{Face: face, On: cam, Left: left})
+		p.guide(Frame.Line(0.01, 0, up), l[2].Line(0, 0, up))
+		p.by(Roller{Centre: l[2].At(0, 0), Radius: roller, On: cam})
+		p.pin(l[0].At(e, 0), l[3].At(0, 0))
+		p.pin(l[3].At(radius+roller, 0), l[4].At(0, 0))
+		p.guide(Frame.Line(0.01, 0, up), l[4].Line(0, 0, up))
+		p.turn(l[0], Frame)
+		link := mustNew(t, p.Design)
+		s := mustAssemble(t, link, []rigid.Placement{{}, {}, {Y: 0.05}, {X: 0.01, Y: 0.06}, {X: 0.02, Angle: up}, {X: 0.01, Y: 0.06}}, at(0))
+		for k := range 300 {
+			phi := float64(k) * 0.1
+			in := rigid.Coordinate{Pos: phi, Vel: 3, Acc: 5}
+			if err := s.Move(in); err != nil {
+				t.Fatal(err)
+			}
+			sin, cos := math.Sincos(phi)
+			want := rigid.Coordinate{Pos: e*sin + radius, Vel: 3 * e * cos, Acc: e * (5*cos - 9*sin)}
+			got := s.Slide(l[1].Line(0, 0, 0), Frame.Line(0, 0, up))
+			follows(t, "flat", got, want, 1e-15, 1e-14, 1e-13)
+			follows(t, "roller", s.Slide(l[2].Line(0, 0, 0), Frame.Line(0, 0, up)), s.Slide(l[4].Line(0, 0, 0), Frame.Line(0, 0, up)), 1e-15, 1e-14, 1e-13)
+		}
+	}
+}
+
+func follows(t *testing.T, what string, got, want rigid.Coordinate, pos, vel, acc float64) {
+	t.Helper()
+	if !(math.Abs(got.Pos-want.Pos) <= pos) || !(math.Abs(got.Vel-want.Vel) <= vel) || !(math.Abs(got.Acc-want.Acc) <= acc) {
+		t.Errorf("%s: %v, want %v, off by %.2g %.2g %.2g", what, got, want, got.Pos-want.Pos, got.Vel-want.Vel, got.Acc-want.Acc)
+	}
+}
+
+// TestOwnConstraints checks the package's own Constraints as their authors should.
+func TestOwnConstraints(t *testing.T) {
+	egg := Polar(func(in float64) (rigid.Coefficients, error) {
+		sin, cos := math.Sincos(in)
+		return rigid.Coefficients{In: in, Out: 0.1 + 0.01*cos + 0.004*math.Sin(2*in), First: -0.01*sin + 0.008*math.Cos(2*in), Second: -0.01*cos - 0.016*math.Sin(2*in)}, nil
+	})
+	cam := Profile{On: Link(3).Line(0.02, -0.01, 0.4), Curve: egg, Over: round, Closed: true}
+	wavy := rigid.Law(func(in float64) (rigid.Coefficients, error) {
+		return rigid.Coefficients{In: in, Out: math.Sin(in) + in*in, First: math.Cos(in) + 2*in, Second: 2 - math.Sin(in)}, nil
+	})
+	near := []rigid.Placement{{X: 0.3, Y: 0.1, Angle: 1}, {X: 0.5, Y: 0.1, Angle: -1}}
+	for name, k := range map[string]struct {
+		c Constraint
+		s planartest.Settings
+	}{
+		"pin":          {Roller{Centre: Link(2).At(0.03, 0.04), On: cam}, planartest.Settings{Near: []rigid.Placement{near[0], {X: 0.4, Y: 0.14, Angle: 2}}, Length: 0.1, Spread: 0.1}},
+		"roller":       {Roller{Centre: Link(2).At(0.03, 0.04), Radius: 0.02, On: cam}, planartest.Settings{Near: near, Length: 0.1}},
+		"roller, left": {Roller{Centre: Link(2).At(0.03, 0.04), Radius: 0.02, On: cam, Left: true}, planartest.Settings{Near: []rigid.Placement{near[0], {X: 0.35, Y: 0.15}}, Length: 0.1, Spread: 0.02}},
+		"flat":         {FlatFace{Face: Link(1).Line(0.03, 0.04, 0.8), On: cam}, planartest.Settings{Near: near, Length: 0.1}},
+		"flat, left":   {FlatFace{Face: Link(1).Line(0.03, 0.04, 0.8), On: cam, Left: true}, planartest.Settings{Near: near, Length: 0.1}},
+		"turns":        {Follower{Of: Turn{1, 2}, Cam: Turn{3, 2}, By: wavy}, planartest.Settings{Near: make([]rigid.Placement, 3), Spread: 0.4}},
+		"slide":        {Follower{Of: Slide{Link(1).Line(0.1, 0.2, 0.3), Link(4).Line(-0.1, 0, 2)}, Cam: Turn{3, 4}, By: wavy}, planartest.Settings{}},
+		"reach":        {Follower{Of: Turn{1, 2}, Cam: Reach{Link(3).At(1, 0), Link(1).At(0, 2)}, By: wavy}, planartest.Settings{Near: []rigid.Placement{{}, {}, {X: 3}}}},
+		"frame":        {Follower{Of: Slide{Link(1).Line(0.1, 0.2, 0.3), Frame.Line(-0.1, 0, 2)}, Cam: Turn{3, Frame}, By: wavy}, planartest.Settings{}},
+	} {
+		if err := planartest.Check(k.c, k.s); err != nil {
+			t.Errorf("%s: %v", name, err)
+		}
+	}
+}
