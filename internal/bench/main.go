@@ -21,9 +21,9 @@ import (
 )
 
 func main() {
-	rounds := flag.Int("rounds", 5, "rounds; the median counts")
+	rounds := flag.Int("rounds", 15, "rounds; the least time of each case counts, since noise only adds")
 	general := flag.Bool("general", false, "also time the general nonlinear solver")
-	slice := flag.Duration("slice", 200*time.Millisecond, "time spent on each case of the library in a round")
+	slice := flag.Duration("slice", 30*time.Millisecond, "time spent on each case in a round")
 	flag.Parse()
 	if err := run(*rounds, *general, *slice); err != nil {
 		fmt.Fprintln(os.Stderr, "bench:", err)
@@ -36,7 +36,7 @@ func run(rounds int, general bool, slice time.Duration) error {
 	if err != nil {
 		return err
 	}
-	peers, done, err := buildPeers(set, general)
+	peers, done, err := buildPeers(set, general, slice)
 	if err != nil {
 		return err
 	}
@@ -55,7 +55,7 @@ func run(rounds int, general bool, slice time.Duration) error {
 			all = append(all, r...)
 		}
 		for _, c := range ours {
-			r, err := c.run(slice)
+			r, err := c.time(slice)
 			if err != nil {
 				return err
 			}

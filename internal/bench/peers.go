@@ -8,7 +8,9 @@ import (
 	"os"
 	"os/exec"
 	"path/filepath"
+	"strconv"
 	"strings"
+	"time"
 )
 
 // A result is one timing of one case: nanoseconds a step, and the outputs at some
@@ -44,7 +46,7 @@ func (p peer) run() ([]result, error) {
 }
 
 // buildPeers compiles what can be compiled here in a folder that done removes.
-func buildPeers(set *cases, general bool) (peers []peer, done func(), err error) {
+func buildPeers(set *cases, general bool, slice time.Duration) (peers []peer, done func(), err error) {
 	cc := compiler()
 	if cc == "" {
 		fmt.Println("no C compiler found (cc, gcc, clang): the library runs alone, without ratios")
@@ -71,20 +73,20 @@ func buildPeers(set *cases, general bool) (peers []peer, done func(), err error)
 		return nil, nil, err
 	}
 	for _, name := range []string{"closed", "lever"} {
-		if err := compile(cc, dir, name, "-lm"); err != nil {
+		if err := compile(cc, dir, name, slice, "-lm"); err != nil {
 			return nil, nil, err
 		}
 		peers = append(peers, peer{dir, []string{"./" + name}})
 	}
 	if general {
-		peers = append(peers, buildGeneral(cc, dir)...)
+		peers = append(peers, buildGeneral(cc, dir, slice)...)
 	}
 	return peers, done, nil
 }
 
 // buildGeneral compiles the general solver, or says why it can't.
-func buildGeneral(cc, dir string) []peer {
-	err := compile(cc, dir, "kin", "-I/usr/include/suitesparse", "-lsundials_kinsol", "-lsundials_sunlinsolklu",
+func buildGeneral(cc, dir string, slice time.Duration) []peer {
+	err := compile(cc, dir, "kin", slice, "-I/usr/include/suitesparse", "-lsundials_kinsol", "-lsundials_sunlinsolklu",
 		"-lsundials_sunlinsolband", "-lsundials_sunlinsoldense", "-lsundials_sunmatrixsparse", "-lsundials_nvecserial", "-lklu", "-lm")
 	if err != nil {
 		fmt.Println("the general solver is left out (it needs the development files of SUNDIALS and SuiteSparse):", err)
@@ -108,10 +110,10 @@ func compiler() string {
 
 // compile builds one peer. -march=native is the best case of C; where a compiler
 // does not know it, it goes without.
-func compile(cc, dir, name string, libs ...string) error {
+func compile(cc, dir, name string, slice time.Duration, libs ...string) error {
 	var err error
 	for _, native := range []string{"-march=native", "-O3"} {
-		args := append([]string{"-O3", native, "-D_GNU_SOURCE", "-o", filepath.Join(dir, name), filepath.Join(dir, name+".c")}, libs...)
+		args := append([]string{"-O3", native, "-D_GNU_SOURCE", "-DSLICE=" + strconv.FormatFloat(slice.Seconds(), 'g', -1, 64), "-o", filepath.Join(dir, name), filepath.Join(dir, name+".c")}, libs...)
 		var out []byte
 		if out, err = exec.Command(cc, args...).CombinedOutput(); err == nil {
 			return nil

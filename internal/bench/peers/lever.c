@@ -39,12 +39,13 @@ static void bench(const char *peer, Fn *f) {
     for (int j = 0; j < 8; j++) acc[j] += o[j];
     for (int i = 0; i < s.nchk; i++) if (s.chk[i] == k) memcpy(chk[i], o, sizeof o);
   }
+  double before = 0, best = INFINITY; // the quickest sweep: noise only adds
   t0 = now();
   do {
     for (int k = 0; k < s.steps; k++) { f(&lever, phi[k], w[k], al[k], o); for (int j = 0; j < 8; j++) sink[j] += o[j]; }
-    n += s.steps; t = now() - t0;
-  } while (t < 0.2);
+    n += s.steps; t = now() - t0; best = fmin(best, t - before); before = t;
+  } while (t < SLICE);
   if (!isfinite(sink[0] + sink[7])) res = INFINITY;
-  report(peer, "lever", t, n, s.steps, res, 0, acc, s, chk);
+  report(peer, "lever", best, s.steps, s.steps, res, 0, acc, s, chk);
 }
 int main(void) { bench("c-textbook", lever_text); bench("c-vector", lever_vec); }
