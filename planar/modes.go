@@ -33,12 +33,15 @@ var ErrIncomplete = errors.New("twopoint: assembly modes not complete")
 //
 // An error stands in the place of a mode, and the modes go on after it:
 //
-//	rigid.ErrSingular   rates are asked for, and the drives don't determine them there
+//	rigid.ErrSingular   rates are asked for, and the drives don't determine them
+//	                    there, or nowhere near
 //	ErrIncomplete       there may be modes that are not among those yielded: a
-//	                    group of higher class has a gear or a rack in it, or more than
-//	                    5 000 possible solutions, or places that are not isolated; or
-//	                    the search was given up, after a million branches without a mode
-//	rigid.ErrInput      a wrong number of inputs, or a Linkage that no New made
+//	                    group of higher class has a gear, a rack or a Constraint in it,
+//	                    or more than 5 000 possible solutions, or places in which links
+//	                    move with the drives held; or the search was given up, after a
+//	                    million branches without a mode
+//	rigid.ErrInput      a wrong number of inputs, a Linkage that no New made, or a wrong
+//	                    Constraint
 //	rigid.ErrNotFinite
 //
 // ErrIncomplete comes last. The number of modes may double with every dyad: who
@@ -191,8 +194,11 @@ func together(p, q []rigid.Pose) bool {
 func (q *search) found() bool {
 	s := q.s.Clone()
 	s.settle()
-	if s.begin() != nil {
+	switch err := s.begin(); {
+	case errors.Is(err, ErrInconsistent):
 		return true
+	case err != nil:
+		return q.yield(nil, err)
 	}
 	q.tries = 0
 	if q.moving {

@@ -347,3 +347,28 @@ func BenchmarkModes(b *testing.B) {
 		})
 	}
 }
+
+// TestModesOfConstraint finds both sides of a rocker whose pin runs in a circular slot
+// of the crank: those of a four-bar with a bar in its place. Constraints have no bound.
+func TestModesOfConstraint(t *testing.T) {
+	slot, bar, _ := slotted(t)
+	in := rigid.Coordinate{Pos: 0.4, Vel: 2, Acc: 1}
+	want, errs := all(bar, in)
+	if len(want) != 2 || len(errs) > 0 {
+		t.Fatalf("%d modes of the four-bar, %v", len(want), errs)
+	}
+	got, errs := all(slot, in)
+	if len(got) != 2 || len(errs) != 1 || !errors.Is(errs[0], ErrIncomplete) {
+		t.Errorf("%d modes, %v", len(got), errs)
+	}
+	for _, s := range want {
+		a, near := s.Turn(2, Frame), false
+		for _, o := range got {
+			b := o.Turn(2, Frame)
+			near = near || math.Abs(a.Pos-b.Pos)+math.Abs(a.Vel-b.Vel)+math.Abs(a.Acc-b.Acc) < 1e-11
+		}
+		if !near {
+			t.Errorf("no mode with the rocker at %+v", a)
+		}
+	}
+}

@@ -31,7 +31,7 @@ type closure struct {
 func (n *newton) equations(sc *scene, d *desk) (*closure, bool) {
 	clear(d.slide)
 	e := &closure{scale: n.extent(d), flip: make([]bool, n.free), hosts: make([]int, n.slides)}
-	if !n.senses(e) {
+	if len(n.customs) > 0 || !n.senses(e) {
 		return e, false
 	}
 	size, rows := n.free+n.slides+1, 0

@@ -7,11 +7,12 @@ import (
 	"math/rand/v2"
 
 	"example.com/twopoint/internal/bilinear"
+	"example.com/twopoint/rigid"
 )
 
 // Why a group's solutions may not be complete.
 var (
-	errUnbounded = errors.New("a gear or a rack inside a group of higher class")
+	errUnbounded = errors.New("a gear, a rack or a constraint of the user's own inside a group of higher class")
 	errTooMany   = errors.New("a group of more than 5 000 possible solutions")
 	errContinua  = errors.New("a group that links can move in with the drives held, at some places")
 	errLost      = errors.New("equations of a group that are too badly conditioned")
@@ -20,7 +21,7 @@ var (
 const (
 	mostPaths    = 5000
 	mostAttempts = 4
-	mostStarts   = 200 // of a group with no bound
+	mostStarts   = 100 // of a group with no bound
 	oneplace     = 1e-7
 )
 
@@ -28,7 +29,7 @@ const (
 // an error where there may be others.
 func (n *newton) solutions(sc *scene, d *desk) ([][]float64, error) {
 	n.prepare(sc, d)
-	if n.free == 0 {
+	if n.free == 0 && len(n.customs) == 0 {
 		return n.linear(sc, d), nil
 	}
 	e, ok := n.equations(sc, d)
@@ -145,7 +146,7 @@ func (n *newton) gather(all [][]float64, d *desk, scale float64) [][]float64 {
 			switch {
 			case i < 2*n.free:
 				off = math.Max(off, math.Abs(v-other[i]))
-			case i >= 3*n.free:
+			case i >= 3*n.free && i < 3*n.free+n.slides: // beyond it, what Constraints remember
 				off = math.Max(off, math.Abs(v-other[i])/scale)
 			}
 		}
@@ -159,7 +160,8 @@ func (n *newton) gather(all [][]float64, d *desk, scale float64) [][]float64 {
 	return append(all, at)
 }
 
-// scatter looks for solutions by damped steps from many places.
+// scatter looks for solutions by damped steps from many places: those at which angles
+// of which whole turns count are principal values.
 func (n *newton) scatter(sc *scene, d *desk, scale float64) (all [][]float64) {
 	random := rand.New(rand.NewPCG(1, 2))
 	for range mostStarts {
@@ -170,7 +172,13 @@ func (n *newton) scatter(sc *scene, d *desk, scale float64) (all [][]float64) {
 		for k := range d.slide {
 			d.slide[k] = 2 * scale * random.NormFloat64()
 		}
-		if n.damped(sc, d) && n.polish(sc, d, 1e-3) {
+		clear(d.memory)
+		n.weigh(sc, d)
+		closed := n.damped(sc, d)
+		for _, k := range n.whole {
+			d.angle[k] = rigid.Wrap(d.angle[k])
+		}
+		if closed && n.polish(sc, d, 1e-3) {
 			all = n.gather(all, d, scale)
 		}
 	}
