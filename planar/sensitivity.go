@@ -124,12 +124,13 @@ type variation struct {
 	links   []deviation
 	points  []rigid.Point
 	scalars []rigid.Coordinate
+	orders  int  // 3, or 1 for places alone
 	unknown bool // a joint that no equation is known for
 }
 
 func newVariation(s *State) *variation {
 	links := s.l.program.system.links
-	v := &variation{s: s, length: s.l.system.length, n: 3 * (links - 1), links: make([]deviation, links)}
+	v := &variation{s: s, length: s.l.system.length, n: 3 * (links - 1), orders: 3, links: make([]deviation, links)}
 	v.column = s.l.system.columns()
 	v.bonds, v.unknown = s.l.design.bonds(v.column)
 	v.force, v.right = make([]rigid.Coordinate, len(v.bonds)), make([]float64, len(v.bonds))
@@ -185,7 +186,7 @@ func (v *variation) by(m *Dimension) error {
 			}
 		}
 	}
-	for order := range v.x {
+	for order := range v.x[:v.orders] {
 		size = max(size, v.sides(order))
 		if !v.lu.solve(v.x[order], v.right, size) {
 			return ErrInconsistent
