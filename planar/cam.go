@@ -64,7 +64,7 @@ func (f FlatFace) Evaluate(e *Evaluation) error {
 	if e.Memory[0] == 0 {
 		e.Memory[1] = f.On.outermost(m)
 	}
-	t, c, err := f.On.seek(e.Memory[1], func(c *rigid.Point) (value, slope float64) {
+	t, c, err := f.On.seek(e.Memory[1], func(c rigid.Point) (value, slope float64) {
 		// m·c′ = 0, with m·c″ below 0 at an outermost point
 		return r2.Dot(m, c.Vel), math.Min(r2.Dot(m, c.Acc), -1e-3*r2.Norm(c.Vel))
 	})

@@ -117,13 +117,13 @@ var errFoot = fmt.Errorf("%w: the curve has no point of contact here", rigid.Err
 
 // seek finds where g, with its slope, is 0 along the profile, from a parameter near
 // there, by Newton's method in steps of limited length.
-func (p *Profile) seek(t float64, g func(c *rigid.Point) (value, slope float64)) (float64, rigid.Point, error) {
+func (p *Profile) seek(t float64, g func(c rigid.Point) (value, slope float64)) (float64, rigid.Point, error) {
 	const turns = 60
 	width := p.Over.Hi - p.Over.Lo
 	last := math.Inf(1)
 	for range turns {
 		c := p.Curve(t)
-		value, slope := g(&c)
+		value, slope := g(c)
 		step := -value / slope
 		size := math.Abs(step)
 		if step != step {
@@ -250,7 +250,7 @@ func (r Roller) Evaluate(e *Evaluation) error {
 		e.Memory[1] = r.On.nearest(p.Pos)
 	}
 	// (p − c)·c′ = 0, with the slope (p − c)·c″ − |c′|² of a nearest point below 0
-	t, c, err := r.On.seek(e.Memory[1], func(c *rigid.Point) (value, slope float64) {
+	t, c, err := r.On.seek(e.Memory[1], func(c rigid.Point) (value, slope float64) {
 		d, along := r2.Sub(p.Pos, c.Pos), r2.Norm2(c.Vel)
 		return r2.Dot(d, c.Vel), math.Min(r2.Dot(d, c.Acc)-along, -along/8)
 	})

@@ -95,6 +95,9 @@ func (n *newton) allot() (size customParts) {
 
 // ask makes the evaluations of a desk.
 func (n *newton) ask(d *desk) {
+	for i := range d.weight {
+		d.weight[i] = 1
+	}
 	for i := range n.customs {
 		u := &n.customs[i]
 		d.asked = append(d.asked, u.newEvaluation(d.memory[u.memory:u.memory+u.custom.memory]))
@@ -195,8 +198,10 @@ func (n *newton) layRows(d *desk, u *ruled, e *evaluation, row int) {
 			kept := d.slope(u, k, i)
 			kept[0], kept[1], kept[2] = w*s.X, w*s.Y, w*s.Angle
 			own := n.members[g.member].own
-			if g.hangs {
+			if g.hangs || len(own) > 0 {
 				size += (s.X*s.X + s.Y*s.Y) * n.length * n.length
+			}
+			if g.hangs {
 				x, y := d.arms[g.first:][:n.n], d.arms[g.first+n.n:][:n.n]
 				for c := range j {
 					j[c] += kept[0]*x[c] + kept[1]*y[c]
@@ -267,8 +272,9 @@ func (n *newton) customAcc(sc *scene, d *desk, row int) {
 }
 
 // margin returns the margin of the group: that of its slopes or, if less, how much
-// of the length of a Constraint's slopes the unknowns keep. Where a pin in a slot
-// goes along it that is 0, if there is but one unknown, too.
+// of the length of a Constraint's slopes the unknowns keep, an angle counting on an arm
+// of the group's length. Where a pin in a slot goes along it that is 0, even if there
+// is but one unknown.
 func (n *newton) margin(d *desk) float64 { return math.Min(d.margin(), n.kept(d)) }
 
 func (n *newton) kept(d *desk) float64 {

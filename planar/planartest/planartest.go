@@ -23,6 +23,7 @@ import (
 
 	"example.com/twopoint/planar"
 	"example.com/twopoint/rigid"
+	"gonum.org/v1/gonum/mat"
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
@@ -70,8 +71,8 @@ func (s Settings) filled() Settings {
 //	Slopes         the derivatives of Residual, by central differences
 //	Bias           the derivative of Σ Slopes·velocity, for links at constant velocity
 //	Depends        no derivative by what an equation is declared not to depend on
-//	Frame          a Constraint that doesn't tie its links to the frame gives the same
-//	               residual wherever all of them are moved as one
+//	Frame          where a Constraint that doesn't tie its links to the frame holds, it
+//	               holds on as all of them are moved as one
 //
 // Only the first trial that fails is reported. An error of Evaluate counts as wrong:
 // choose Near and Spread so that the motions are within its range.
@@ -86,6 +87,9 @@ func Check(c planar.Constraint, s Settings) error {
 			return fmt.Errorf("trial %d: %w", trial, err)
 		}
 	}
+	if !k.closed && !slices.Contains(k.links, planar.Frame) {
+		return errors.New("from none of the motions tried the links come to where the equations hold: choose Near and Spread")
+	}
 	return nil
 }
 
@@ -96,6 +100,7 @@ type checker struct {
 	rows   int
 	random *rand.Rand
 	memory []float64 // after an evaluation near by
+	closed bool      // the equations have been seen to hold somewhere
 }
 
 func (k *checker) counts() error {
@@ -306,11 +311,57 @@ func (k *checker) bias(row int, q planar.Equation, all []body) error {
 	return nil
 }
 
-// frame moves all links as one.
+// close moves the links to where all equations hold, by the shortest of Newton's
+// corrections, and reports whether they do.
+func (k *checker) close(all []body) ([]body, bool) {
+	const turns, enough = 40, 1e-12
+	all = slices.Clone(all)
+	n := 3 * len(all)
+	for range turns {
+		e, err := k.evaluate(all)
+		if err != nil {
+			return nil, false // out of range on the way
+		}
+		slopes, miss := mat.NewDense(k.rows, n, nil), mat.NewVecDense(k.rows, nil)
+		left := 0.0
+		for row, q := range e.Rows {
+			size := k.size(q)
+			if size == 0 {
+				return nil, false
+			}
+			miss.SetVec(row, q.Residual/size)
+			left = math.Max(left, math.Abs(q.Residual/size))
+			for i, s := range q.Slopes {
+				slopes.Set(row, 3*i, s.X*k.s.Length/size)
+				slopes.Set(row, 3*i+1, s.Y*k.s.Length/size)
+				slopes.Set(row, 3*i+2, s.Angle/size)
+			}
+		}
+		if left <= enough {
+			return all, true
+		}
+		var step mat.VecDense
+		if err := step.SolveVec(slopes, miss); err != nil {
+			return nil, false
+		}
+		for i := range all {
+			b := &all[i]
+			b.x, b.y, b.angle = b.x-k.s.Length*step.AtVec(3*i), b.y-k.s.Length*step.AtVec(3*i+1), b.angle-step.AtVec(3*i+2)
+		}
+	}
+	return nil, false
+}
+
+// frame moves all links as one, from where the equations hold.
 func (k *checker) frame(row int, q planar.Equation, all []body) error {
 	if slices.Contains(k.links, planar.Frame) {
 		return nil
 	}
+	all, ok := k.close(all)
+	if !ok {
+		return nil
+	}
+	k.closed = true
 	centre := r2.Vec{X: all[0].x, Y: all[0].y}
 	for _, way := range []r2.Vec{{X: k.s.Length}, {Y: k.s.Length}, {}} {
 		found, err := k.difference(func(t float64) []body {
