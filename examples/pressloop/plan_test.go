@@ -33,7 +33,7 @@ func TestPlanIsFast(t *testing.T) {
 		if used < 0.98 {
 			slack++
 		}
-		if used > 1.02 {
+		if used > 1.002 {
 			t.Errorf("at %g s %g of a limit is used", h, used)
 		}
 	}

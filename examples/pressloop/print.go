@@ -77,7 +77,11 @@ func (p *printer) extremes() {
 			follow, margin = max(follow, math.Abs(r.following)), min(margin, r.margin)
 		}
 	}
-	fmt.Fprintf(p, "\nmotor     speed to %.1f of %g rad/s, acceleration to %.0f of %g rad/s²\n", speed, p.Limits.Speed, acc, p.Limits.Acc)
+	fmt.Fprintln(p)
+	if n := len(p.loop.rec.ring); p.loop.rec.n > int64(n) {
+		fmt.Fprintf(p, "of the last %d ticks:\n", n)
+	}
+	fmt.Fprintf(p, "motor     speed to %.1f of %g rad/s, acceleration to %.0f of %g rad/s²\n", speed, p.Limits.Speed, acc, p.Limits.Acc)
 	fmt.Fprintf(p, "          following error to %.2f of %g mrad; margin down to %.3f, least %g\n", follow*1000, p.Limits.Follow*1000, margin, p.Limits.Margin)
 }
 

@@ -1,7 +1,6 @@
 package main
 
 import (
-	"bufio"
 	"encoding/csv"
 	"fmt"
 	"io"
@@ -52,10 +51,10 @@ func (r *recorder) all() iter.Seq[*record] {
 var columns = []string{"time_s", "state", "clock_rate", "ram_m", "ram_speed", "ram_acc", "motor_rad", "motor_speed", "motor_acc",
 	"margin", "count", "measured_rad", "following_rad", "stop_reason"}
 
-// writeCSV writes the records: what was commanded at a tick is for the next one.
+// writeCSV writes the records. What is commanded in a row is for the tick after it;
+// counts, measured place and following error are of the row's own.
 func writeCSV(w io.Writer, r *recorder, dt float64, why halt) error {
-	buf := bufio.NewWriter(w)
-	out := csv.NewWriter(buf)
+	out := csv.NewWriter(w) // keeps the first error
 	out.Write(columns)
 	num := func(x float64) string { return strconv.FormatFloat(x, 'g', -1, 64) }
 	row := make([]string, len(columns))
@@ -76,8 +75,8 @@ func writeCSV(w io.Writer, r *recorder, dt float64, why halt) error {
 		}
 		out.Write(row)
 	}
-	out.Flush() // keeps the first error
-	return firstError(out.Error(), buf.Flush())
+	out.Flush()
+	return out.Error()
 }
 
 func (x *record) state() string {
@@ -88,15 +87,6 @@ func (x *record) state() string {
 		return "run"
 	}
 	return "wait"
-}
-
-func firstError(errs ...error) error {
-	for _, err := range errs {
-		if err != nil {
-			return err
-		}
-	}
-	return nil
 }
 
 // A wholeFile comes to be under its name when it is complete, or not at all: it
@@ -127,7 +117,9 @@ func (f *wholeFile) finish(err error) error {
 	if err == nil {
 		err = f.Sync()
 	}
-	err = firstError(err, f.Close())
+	if e := f.Close(); err == nil {
+		err = e
+	}
 	if err == nil {
 		err = os.Rename(f.Name(), f.name)
 	}
