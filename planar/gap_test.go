@@ -133,3 +133,43 @@ func TestPartingMotions(t *testing.T) {
 		}
 	}
 }
+
+// TestGapDownAChain moves two drives at once, past a gap of a dyad whose known bodies
+// move several times as fast as the drives: in a step that both ends and the size of
+// the step alone would let pass.
+func TestGapDownAChain(t *testing.T) {
+	g := grow(1146, 0, 9, 4)
+	l, s := assemble(t, g.Design, g.guess(), g.in...)
+	if err := s.Move(at(-0.9345614504725758), at(0.2827770415793002)); err != nil {
+		t.Fatal(err)
+	}
+	was := s.Clone()
+	if err := s.Move(at(-0.37264143100041447), at(-0.9369612085926176)); !errors.Is(err, rigid.ErrUnreachable) {
+		t.Fatalf("crossed a gap: %v", err)
+	}
+	stop, ok := s.Stop()
+	if !ok || !(math.Abs(stop.Done-0.04426) < 1e-3) || !(stop.Gap > 1e-4) || far(l, s, was) != 0 {
+		t.Errorf("%+v", stop)
+	}
+}
+
+// TestNoRatesWhenFlat asks for rates at and next to a flattened position: refused as
+// singular, the place alone is given.
+func TestNoRatesWhenFlat(t *testing.T) {
+	l := fourBarOf(t, 1, 2.5, 1.5, 2)
+	for _, phi := range []float64{0, 1e-9, -3e-9} {
+		s, err := l.AssembleMode(".+", at(phi))
+		if err != nil {
+			t.Fatal(err)
+		}
+		if m := s.Margin(); !(m < rigid.LeastMargin) {
+			t.Errorf("margin %v at %v", m, phi)
+		}
+		if err := s.Move(unit(phi)); !errors.Is(err, rigid.ErrSingular) {
+			t.Errorf("rates at %v: %v", phi, err)
+		}
+		if err := s.Move(at(phi)); err != nil {
+			t.Errorf("place at %v: %v", phi, err)
+		}
+	}
+}
