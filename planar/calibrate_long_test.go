@@ -40,9 +40,9 @@ func TestCalibrateMemory(t *testing.T) {
 		Outputs: []Drive{Slide{Of: Link(3).Line(0, 0, 0), From: Frame.Line(0, 0, 0)}},
 		By:      []Dimension{d.Hole(Link(1).At(0.05, 0), X), d.Hole(Link(2).At(0.2, 0), X)},
 	}
-	short, long := 1000, 100_000
+	short, long := 500, 20_000
 	if testing.Short() {
-		long = 20_000
+		long = 5000
 	}
 	use := func(n int) (heap uint64, allocations float64) {
 		allocations = testing.AllocsPerRun(1, func() {

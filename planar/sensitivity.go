@@ -17,7 +17,8 @@ import (
 //
 // Errors, with dst as it was:
 //
-//	rigid.ErrInput      dst of a wrong length, a dimension without entries, a zero State
+//	rigid.ErrInput      dst of a wrong length, a dimension without entries, a zero
+//	                    State, a Custom joint in the design
 //	ErrReference        an entry or a link that does not exist
 //	rigid.ErrSingular   the position does not determine the derivatives
 //	ErrInconsistent     joints that repeat each other would no longer agree
