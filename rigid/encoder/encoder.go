@@ -20,9 +20,9 @@ import (
 // An Encoder says what the counts of an encoder mean. The zero Encoder refuses
 // every count.
 type Encoder struct {
-	PerTurn int64 // counts in a turn of the shaft in question, after gearing and quadrature; at least 1
-	Zero    int64 // the count at which the shaft stands at turn 0, angle 0
-	Reverse bool  // counts grow as the shaft turns clockwise
+	PerTurn int64 `json:"perTurn"` // counts in a turn of the shaft in question, after gearing and quadrature; at least 1
+	Zero    int64 `json:"zero"`    // the count at which the shaft stands at turn 0, angle 0
+	Reverse bool  `json:"reverse"` // counts grow as the shaft turns clockwise
 }
 
 // Angle returns where the shaft stands at a count: whole turns, and the angle
