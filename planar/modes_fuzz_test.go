@@ -63,11 +63,7 @@ func TestModesOfRandomDesigns(t *testing.T) {
 			continue
 		}
 		for range 5 {
-			guess := make([]rigid.Placement, len(d.Links))
-			for i := range guess {
-				guess[i] = rigid.Placement{X: random.NormFloat64(), Y: random.NormFloat64(), Angle: 3 * random.NormFloat64()}
-			}
-			s, err := l.Assemble(guess, in...)
+			s, err := l.Assemble(scattered(random, len(d.Links)), in...)
 			if err != nil || s.Margin() < 1e-5 {
 				continue
 			}

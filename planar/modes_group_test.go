@@ -3,7 +3,6 @@ package planar_test
 import (
 	_ "embed"
 	"encoding/json"
-	"errors"
 	"fmt"
 	"math"
 	"math/rand/v2"
@@ -81,6 +80,9 @@ func (c *platformCase) linkage(t testing.TB, size float64, at rigid.Pose) *Linka
 func TestModesOfPlatforms(t *testing.T) {
 	reals := map[int]int{}
 	for i, c := range platformCases(t) {
+		if testing.Short() && i%4 > 0 {
+			continue
+		}
 		size := []float64{1, 1e-6, 1e3}[i%3]
 		at := rigid.NewPose(0, 0, 0)
 		if i%2 == 1 {
@@ -162,7 +164,7 @@ func TestModesBySwaps(t *testing.T) {
 // modes.
 func passes(t *testing.T, l *Linkage, mode string, link Link, angle float64) (n int) {
 	t.Helper()
-	const steps = 4000
+	const steps = 1500
 	for _, m := range products(mode) {
 		var last float64
 		had := false
@@ -229,7 +231,7 @@ func chained(random *rand.Rand, n int) (Design, []rigid.Placement) {
 // that may be missing, and the place in which the group was drawn must be there.
 func TestModesOfGroups(t *testing.T) {
 	random := rand.New(rand.NewPCG(6, 2))
-	for _, c := range []struct{ platforms, groups, starts int }{{1, 12, 60}, {2, 8, 60}, {3, 3, 100}} {
+	for _, c := range []struct{ platforms, groups, starts int }{{1, 12, 30}, {2, 6, 40}, {3, 2, 60}} {
 		if testing.Short() {
 			c.groups = 2
 		}
@@ -255,10 +257,7 @@ func TestModesOfGroups(t *testing.T) {
 			}
 			var seen []*State
 			for range c.starts {
-				for i := range guess {
-					guess[i] = rigid.Placement{X: 3 * random.NormFloat64(), Y: 3 * random.NormFloat64(), Angle: 6 * random.Float64()}
-				}
-				s, err := l.Assemble(guess)
+				s, err := l.Assemble(scattered(random, len(guess)))
 				if err != nil || s.Margin() < 1e-6 {
 					continue
 				}
@@ -273,45 +272,6 @@ func TestModesOfGroups(t *testing.T) {
 		}
 		t.Logf("%d platforms: %d modes, of which starts at random find %d; at most %d", c.platforms, total, found, worst)
 	}
-}
-
-// TestModesIncomplete asks for modes where their number has no bound, and where links
-// can move with the drives held.
-func TestModesIncomplete(t *testing.T) {
-	geared := epicyclicFiveBar(17, 23, false)
-	line := peaucellier("QB")
-	line.Drives = []Drive{Slide{Of: Link(6).Line(3, 0, 0), From: Frame.Line(0, 0, math.Pi/2)}}
-	for name, c := range map[string]struct {
-		d    Design
-		in   float64
-		some int
-	}{
-		"gears on a coupler":                 {geared.Design, 1, 2},
-		"Peaucellier's driven at the output": {line, 0.3, 1},
-		"loops for more than 5 000 modes":    {scissorOn(8), scissorReach(8, 0.6, 0).Pos, 0},
-	} {
-		l, err := New(c.d)
-		if err != nil {
-			t.Fatalf("%s: %v", name, err)
-		}
-		modes, errs := all(l, at(c.in))
-		if len(errs) != 1 || !errors.Is(errs[0], ErrIncomplete) || len(modes) < c.some {
-			t.Errorf("%s: %d modes, %v", name, len(modes), errs)
-		}
-		for _, s := range modes {
-			if o := open(l, s, []rigid.Coordinate{{Pos: c.in}}); !(o.pos < 1e-11) {
-				t.Errorf("%s: %+v", name, o)
-			}
-		}
-		t.Logf("%s: %d modes, %v", name, len(modes), errs)
-	}
-}
-
-// scissorOn is a lift on a cylinder from its lowest bar to its highest.
-func scissorOn(stages int) Design {
-	d := scissor(stages)
-	d.Drives = []Drive{Reach{A: Link(1).At(-0.3, 0), B: Link(2*stages).At(0.2, 0)}}
-	return d
 }
 
 // BenchmarkModes finds the modes of a platform on three legs, and of two and three
@@ -345,30 +305,5 @@ func BenchmarkModes(b *testing.B) {
 				}
 			}
 		})
-	}
-}
-
-// TestModesOfConstraint finds both sides of a rocker whose pin runs in a circular slot
-// of the crank: those of a four-bar with a bar in its place. Constraints have no bound.
-func TestModesOfConstraint(t *testing.T) {
-	slot, bar, _ := slotted(t)
-	in := rigid.Coordinate{Pos: 0.4, Vel: 2, Acc: 1}
-	want, errs := all(bar, in)
-	if len(want) != 2 || len(errs) > 0 {
-		t.Fatalf("%d modes of the four-bar, %v", len(want), errs)
-	}
-	got, errs := all(slot, in)
-	if len(got) != 2 || len(errs) != 1 || !errors.Is(errs[0], ErrIncomplete) {
-		t.Errorf("%d modes, %v", len(got), errs)
-	}
-	for _, s := range want {
-		a, near := s.Turn(2, Frame), false
-		for _, o := range got {
-			b := o.Turn(2, Frame)
-			near = near || math.Abs(a.Pos-b.Pos)+math.Abs(a.Vel-b.Vel)+math.Abs(a.Acc-b.Acc) < 1e-11
-		}
-		if !near {
-			t.Errorf("no mode with the rocker at %+v", a)
-		}
 	}
 }
