@@ -19,11 +19,7 @@ type machine struct {
 func readMachine(path string) (*machine, error) {
 	var file struct {
 		Press   slidercrank.Dimensions `json:"press"`
-		Encoder struct {
-			PerTurn int64 `json:"perTurn"`
-			Zero    int64 `json:"zero"`
-			Reverse bool  `json:"reverse"`
-		} `json:"encoder"`
+		Encoder encoder.Encoder        `json:"encoder"`
 	}
 	name, err := files.ReadJSON(path, sampleMachine, "machine.json", &file)
 	if err != nil {
@@ -33,7 +29,7 @@ func readMachine(path string) (*machine, error) {
 	if err != nil {
 		return nil, fmt.Errorf("%s: press: %w", name, err)
 	}
-	m := &machine{press: press, encoder: encoder.Encoder(file.Encoder)}
+	m := &machine{press: press, encoder: file.Encoder}
 	if _, _, err := m.encoder.Angle(0); err != nil {
 		return nil, fmt.Errorf("%s: encoder: %w", name, err)
 	}
