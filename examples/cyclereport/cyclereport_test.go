@@ -52,7 +52,7 @@ func TestPictures(t *testing.T) {
 			t.Errorf("%s: the figure covers %v of %v", name, ink, size)
 		}
 	}
-	left, err := filepath.Glob(filepath.Join(dir, "*.part-*"))
+	left, err := filepath.Glob(filepath.Join(dir, ".*.part*"))
 	if err != nil || len(left) > 0 {
 		t.Errorf("left behind: %v, %v", left, err)
 	}

@@ -1,13 +1,10 @@
 package main
 
 import (
-	"bytes"
-	"encoding/json"
 	"fmt"
-	"io"
-	"os"
 	"slices"
 
+	"example.com/twopoint/examples/internal/files"
 	"example.com/twopoint/planar"
 	"example.com/twopoint/rigid"
 )
@@ -57,22 +54,10 @@ type tolerance struct {
 
 // readMachine reads a configuration; an unknown field or link is refused by name.
 func readMachine(path string) (*machine, error) {
-	data, name := sample, "config.json"
-	if path != "" {
-		var err error
-		if data, err = os.ReadFile(path); err != nil {
-			return nil, err
-		}
-		name = path
-	}
 	m := new(machine)
-	d := json.NewDecoder(bytes.NewReader(data))
-	d.DisallowUnknownFields()
-	if err := d.Decode(&m.config); err != nil {
-		return nil, fmt.Errorf("%s: %w", name, err)
-	}
-	if _, err := d.Token(); err != io.EOF {
-		return nil, fmt.Errorf("%s: more than one value", name)
+	name, err := files.ReadJSON(path, sample, "config.json", &m.config)
+	if err != nil {
+		return nil, err
 	}
 	if err := m.build(); err != nil {
 		return nil, fmt.Errorf("%s: %w", name, err)

@@ -22,6 +22,8 @@ import (
 	"os"
 	"os/signal"
 	"path/filepath"
+
+	"example.com/twopoint/examples/internal/files"
 )
 
 //go:embed config.json
@@ -88,27 +90,11 @@ type page struct {
 	write func(w io.Writer, m *machine, rows []row) error
 }
 
-// writeWhole writes a file whole or not at all: beside it first, then renamed.
-func writeWhole(path string, write func(io.Writer) error) (err error) {
-	f, err := os.CreateTemp(filepath.Dir(path), filepath.Base(path)+".part-*")
+// writeWhole writes a file whole or not at all.
+func writeWhole(path string, write func(io.Writer) error) error {
+	f, err := files.CreateWhole(path)
 	if err != nil {
 		return err
 	}
-	defer func() {
-		if err != nil {
-			f.Close()
-			os.Remove(f.Name())
-			err = fmt.Errorf("%s: %w", path, err)
-		}
-	}()
-	if err := write(f); err != nil {
-		return err
-	}
-	if err := f.Chmod(0o644); err != nil {
-		return err
-	}
-	if err := f.Close(); err != nil {
-		return err
-	}
-	return os.Rename(f.Name(), path)
+	return f.Finish(write(f))
 }
