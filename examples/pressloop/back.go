@@ -25,10 +25,3 @@ func (b *back) motor(ram rigid.Coordinate) (rigid.Coordinate, float64, error) {
 	b.crank = rigid.Nearest(turn.Pos, b.crank)
 	return rigid.Coordinate{Pos: b.gear * b.crank, Vel: b.gear * turn.Vel, Acc: b.gear * turn.Acc}, b.st.Margin, nil
 }
-
-// ram returns the place of the ram for one of the motor.
-func (b *back) ram(motor float64) (float64, error) {
-	var st slidercrank.State
-	err := b.press.Solve(&st, rigid.Coordinate{Pos: motor / b.gear})
-	return st.Slide.Pos, err
-}

@@ -208,9 +208,9 @@ func ofBody(name string, s sweep, pins [][6]float64, q0 []float64, out [3]float6
 			m := st.Motion(tool)
 			return outputs(st.Point(at), m.Omega, m.Alpha)
 		},
-		run: func(in []rigid.Coordinate, by float64, sum *sums) (failed int) {
+		run: func(in []rigid.Coordinate, _ float64, sum *sums) (failed int) {
 			var pos, vel, acc, rot r2.Vec
-			by = rigid.Revolution * math.Round((st.Turn(1, planar.Frame).Pos-in[0].Pos)/rigid.Revolution)
+			by := rigid.Revolution * math.Round((st.Turn(1, planar.Frame).Pos-in[0].Pos)/rigid.Revolution)
 			for _, x := range in {
 				x.Pos += by
 				if st.Move(x) != nil {

@@ -110,9 +110,9 @@ func (k *checker) counts() error {
 	case k.rows < 1:
 		return fmt.Errorf("%d equations", k.rows)
 	case k.s.Near != nil && len(k.s.Near) != len(k.links):
-		return fmt.Errorf("Near has %d placements for %d links", len(k.s.Near), len(k.links))
+		return fmt.Errorf("%d placements in Near for %d links", len(k.s.Near), len(k.links))
 	case !slices.Equal(k.links, k.c.Links()) || k.rows != k.c.Rows():
-		return errors.New("Links or Rows are not the same when asked again")
+		return errors.New("not the same Links or Rows when asked again")
 	}
 	for i, l := range k.links {
 		if slices.Contains(k.links[:i], l) {
