@@ -289,6 +289,21 @@ func TestTableLaw(t *testing.T) {
 			t.Errorf("%v: %v, %v", k, a, b)
 		}
 	}
+	// A cam's lift every 30°, and the periodic spline through it by SciPy's CubicSpline
+	// (a reference library for such splines) at 90° and 77°.
+	var degrees, lift []float64
+	for i, v := range []float64{20, 20, 21.5, 27, 33, 38.5, 40, 40, 37, 30, 23, 20.3} {
+		degrees, lift = append(degrees, float64(30*i)), append(lift, v)
+	}
+	cam, err := TableLaw(degrees, lift, 360)
+	if err != nil {
+		t.Fatal(err)
+	}
+	a, _ := cam(90)
+	b, _ := cam(77 - 720)
+	if math.Abs(a.First-0.20547435897435892) > 1e-15 || math.Abs(b.Second*180/math.Pi-0.12971862423265262) > 1e-14 {
+		t.Errorf("%v, %v", a, b)
+	}
 	nan := math.NaN()
 	for name, bad := range map[string]struct {
 		in, out []float64

@@ -189,3 +189,78 @@ func TestOwnConstraints(t *testing.T) {
 		}
 	}
 }
+
+// TestCrossing runs a pin through the crossing of a slot in the shape of an eight,
+// by steps of all sizes both ways: it stays on its strand.
+func TestCrossing(t *testing.T) {
+	const a, b = 0.3, 0.1
+	eight := Curve(func(t float64) rigid.Point {
+		sin, cos := math.Sincos(t)
+		sin2, cos2 := math.Sincos(2 * t)
+		return rigid.Point{
+			Pos: r2.Vec{X: a * sin, Y: b * sin2},
+			Vel: r2.Vec{X: a * cos, Y: 2 * b * cos2},
+			Acc: r2.Vec{X: -a * sin, Y: -4 * b * sin2},
+		}
+	})
+	var p plan
+	l := p.links("carriage", "block")
+	p.guide(Frame.Line(0, 0, 0), l[0].Line(0, 0, 0))
+	p.guide(l[0].Line(0, 0, math.Pi/2), l[1].Line(0, 0, math.Pi/2))
+	p.by(Roller{Centre: l[1].At(0, 0), On: Profile{On: Frame.Line(0, 0, 0), Curve: eight, Over: round, Closed: true}})
+	p.slide(l[0].Line(0, 0, 0), Frame.Line(0, 0, 0))
+	k := mustNew(t, p.Design)
+	for _, strand := range []float64{1, -1} {
+		s := mustAssemble(t, k, []rigid.Placement{{}, {X: -0.2}, {X: -0.2, Y: -strand * b}}, at(-0.2))
+		for i := range 400 {
+			// sin φ = x/a, and y = b sin 2φ on one strand, −b sin 2φ on the other
+			phi := 1.2 * math.Sin(float64(i*i)*0.37)
+			sin, cos := math.Sincos(phi)
+			if err := s.Move(rigid.Coordinate{Pos: a * sin, Vel: 1}); err != nil {
+				t.Fatal(phi, err)
+			}
+			y := s.Point(l[1].At(0, 0))
+			if want := strand * b * math.Sin(2*phi); math.Abs(y.Pos.Y-want) > 1e-14 {
+				t.Fatalf("strand %v at %v: %v, want %v", strand, phi, y.Pos.Y, want)
+			}
+			if want := strand * 2 * b * math.Cos(2*phi) / (a * cos); math.Abs(y.Vel.Y-want) > 1e-12 {
+				t.Fatalf("strand %v at %v: speed %v, want %v", strand, phi, y.Vel.Y, want)
+			}
+		}
+	}
+}
+
+// TestSizes runs one machine, a lever with a roller on an oval cam, in sizes from
+// micrometres to kilometres, and far from the origin: the angles are the same.
+func TestSizes(t *testing.T) {
+	var first []rigid.Coordinate
+	for _, size := range []float64{1, 1e-6, 1e-3, 1e3, 1e6} {
+		var p plan
+		l := p.links("cam", "lever", "rod", "rocker")
+		p.pin(Frame.At(0, 0), l[0].At(0, 0))
+		p.pin(Frame.At(0.2*size, 0.03*size), l[1].At(0, 0))
+		p.by(Roller{Centre: l[1].At(0.17*size, 0), Radius: 0.02 * size, On: Profile{On: l[0].Line(0.01*size, 0, 0), Curve: Ellipse(0.06*size, 0.04*size), Over: round, Closed: true}})
+		p.by(Follower{Of: Turn{l[3], Frame}, Cam: Turn{l[1], Frame}, By: rigid.Linear(-0.5, 0.2)})
+		p.pin(l[1].At(0.1*size, 0.1*size), l[2].At(0, 0))
+		p.pin(Frame.At(0.5*size, 0), l[3].At(0, 0))
+		p.turn(l[0], Frame)
+		p.slot(l[2].At(0.7*size, 0), l[3].Line(0, 0, 0))
+		s := mustAssemble(t, mustNew(t, p.Design), []rigid.Placement{{}, {}, {X: 0.2 * size, Y: 0.03 * size, Angle: 2.6}, {X: 0.05 * size, Y: 0.05 * size}, {X: 0.5 * size, Angle: -1.1}}, at(0))
+		for i := range 60 {
+			if err := s.Move(rigid.Coordinate{Pos: float64(i) * 0.2, Vel: 1, Acc: 1}); err != nil {
+				t.Fatal(size, i, err)
+			}
+			for n, link := range []Link{l[1], l[2], l[3]} {
+				c := s.Turn(link, Frame)
+				if size == 1 {
+					first = append(first, c)
+					continue
+				}
+				w := first[3*i+n]
+				if math.Abs(c.Pos-w.Pos) > 1e-13 || math.Abs(c.Vel-w.Vel) > 1e-12 || math.Abs(c.Acc-w.Acc) > 1e-10 {
+					t.Fatalf("size %v, step %d, link %d: %v, want %v", size, i, link, c, w)
+				}
+			}
+		}
+	}
+}

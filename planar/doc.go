@@ -16,6 +16,7 @@
 //	Fixed       two links made one            3
 //	GearPair    gears or a belt, on an arm    1
 //	RackPair    a rack and pinion, or a wheel that rolls on a line   1
+//	Custom      a Constraint: a cam, a curved slot, one's own        1 an equation
 //
 // Drives, in the order in which their inputs are given:
 //
@@ -27,6 +28,14 @@
 // share. There must be as many drives as the linkage has freedoms, its Mobility: by
 // Grübler and Kutzbach 3·(links − 1) less what the joints take, and more where
 // constraints repeat others.
+//
+// # Constraints
+//
+// A [Constraint] is a joint that its user writes: residual, derivatives, and what
+// velocities make of the second derivative by time. The package has some: a
+// [Roller] or pin on a curve, a [FlatFace] on a cam, a [Follower] of a law of motion,
+// which a table may give. The package planartest checks one's own. Groups with a
+// constraint are solved by Newton's method.
 //
 // # Groups
 //
