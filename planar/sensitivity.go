@@ -252,7 +252,7 @@ func (v *variation) point(of Attachment) rigid.Point {
 // measured returns the derivative of the motion that a drive would drive: for a
 // slide along u, and a reach along e, of e = b − a
 //
-//	u·δe + (u×e) δθ of u,   e·δe/|e|
+//	u·δe + (u×e) δθ of u,   e·δe/|e|, the place alone
 func (v *variation) measured(what Drive) rigid.Coordinate {
 	switch m := what.(type) {
 	case Turn:
@@ -265,7 +265,7 @@ func (v *variation) measured(what Drive) rigid.Coordinate {
 		return sumOf(dotted(&u, &de), times(crossed(&u, &e), v.links[m.From.Link].turn))
 	case Reach:
 		e, de := less(v.s.Point(m.B), v.s.Point(m.A)), less(v.point(m.B), v.point(m.A))
-		return over(dotted(&e, &de), &e)
+		return rigid.Coordinate{Pos: r2.Dot(e.Pos, de.Pos) / r2.Norm(e.Pos)}
 	}
 	return rigid.Coordinate{}
 }

@@ -67,18 +67,6 @@ func scaledBy(k float64, a rigid.Coordinate) rigid.Coordinate {
 	return rigid.Coordinate{Pos: k * a.Pos, Vel: k * a.Vel, Acc: k * a.Acc}
 }
 
-// over returns q = c/|e|, from q |e| = c and its derivatives, with b = |e|,
-// b ḃ = e·ė and b b̈ = e·ë + ė² − ḃ².
-func over(c rigid.Coordinate, e *rigid.Point) rigid.Coordinate {
-	b := r2.Norm(e.Pos)
-	vel := r2.Dot(e.Pos, e.Vel) / b
-	acc := (r2.Dot(e.Pos, e.Acc) + r2.Norm2(e.Vel) - vel*vel) / b
-	q := rigid.Coordinate{Pos: c.Pos / b}
-	q.Vel = (c.Vel - q.Pos*vel) / b
-	q.Acc = (c.Acc - 2*q.Vel*vel - q.Pos*acc) / b
-	return q
-}
-
 func numeric(all ...r2.Vec) bool {
 	sum := 0.0
 	for _, v := range all {
