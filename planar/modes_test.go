@@ -193,6 +193,9 @@ func TestModesAsked(t *testing.T) {
 			t.Errorf("%+v: %d times", c.in, n)
 		}
 	}
+	if modes, errs := all(mustNew(t, scissorOn(2)), at(-1)); len(modes)+len(errs) > 0 {
+		t.Errorf("%d modes of a cylinder of negative length, %v", len(modes), errs)
+	}
 	in := append([]rigid.Coordinate(nil), g.in...)
 	modes := l.Modes(in...)
 	in[0].Pos = math.NaN() // it is ours by now
