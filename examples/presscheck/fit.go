@@ -84,6 +84,10 @@ func (s *sums) solve(given vector, free ...int) (solution, bool) {
 		return r, false
 	}
 	n := len(free)
+	if n == 0 {
+		r.sse = s.sse(&r.x)
+		return r, true
+	}
 	a, b := mat.NewSymDense(n, nil), mat.NewVecDense(n, nil)
 	scale := make([]float64, n) // of the columns, to 1
 	for i, p := range free {

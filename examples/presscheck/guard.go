@@ -12,7 +12,8 @@ import (
 // encoder, jumps taken out.
 type point struct {
 	time, turn, ram float64
-	cut             int // the number of the jump that lies before this point; 0: none
+	fresh           bool // the motion does not go on from the point before: a gap, a jerk or a jump
+	cut             int  // the number of the jump that lies before this point; 0: none
 }
 
 // A jump is a place where the counts leapt while the machine went on.
@@ -39,6 +40,7 @@ type guard struct {
 	given      float64 // angle to be added for all jumps so far
 	jumps      []jump
 	more       int // jumps beyond mostJumps
+	fresh      bool
 	glitches   int
 	last, pace float64 // time of the last sample and the running mean between two, s
 	pass       func(point)
@@ -96,6 +98,7 @@ func (g *guard) accept(p point, turn, ram float64) {
 		g.pace = dt
 	}
 	g.last = p.time
+	p.fresh, g.fresh = g.fresh || p.cut != 0, false
 	g.pass(p)
 }
 
@@ -140,6 +143,7 @@ func (g *guard) decide() {
 }
 
 func (g *guard) reset() {
+	g.fresh = true
 	g.turn.reset()
 	g.ram.reset()
 }

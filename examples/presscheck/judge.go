@@ -31,10 +31,7 @@ func (j *judge) solve() (slip, bool) {
 	if j.full, ok = all.solve(given, free[1:]...); !ok {
 		return slip{}, false
 	}
-	j.base = solution{x: given, sse: all.sse(&given), dof: all.n}
-	if !j.c.ScaleZeroed {
-		j.base, ok = all.solve(given, ram)
-	}
+	j.base, ok = all.solve(given, j.c.free()...)
 	j.best, j.sigma = j.base, j.scatter()
 	return j.slip(), ok
 }

@@ -6,6 +6,8 @@ import (
 	"io"
 	"math"
 	"math/rand/v2"
+
+	"example.com/twopoint/rigid"
 )
 
 // A made is a log of an invented press, made by the triangle of crank, rod and guide
@@ -15,6 +17,8 @@ type made struct {
 	crank, rod, offset float64                      // m
 	speed, step        float64                      // of the crank, rad/s; mean time between lines, s
 	start              float64                      // crank angle, rad
+	park               float64                      // s at rest before
+	gap                rigid.Interval               // s without lines
 	zero               int64                        // of the encoder, 4096 a turn, 5 turns to one of the crank
 	reverse            bool                         // counts
 	scale              float64                      // m, offset of the ram scale
@@ -36,8 +40,9 @@ func (m made) write(w io.Writer) error {
 	fmt.Fprintln(b, "time_s,motor_counts,ram_m")
 	const runUp = 0.8
 	for t, k := 0.0, 0; k < m.lines; k++ {
-		turned := m.speed * (t - runUp/2)
-		if s := t / runUp; s < 1 {
+		going := max(t-m.park, 0)
+		turned := m.speed * (going - runUp/2)
+		if s := going / runUp; s < 1 {
 			turned = m.speed * runUp * (s*s*s - s*s*s*s/2)
 		}
 		motor, turn := m.start+turned, m.start+turned
@@ -55,6 +60,10 @@ func (m made) write(w io.Writer) error {
 		}
 		if m.reverse {
 			counts = -counts
+		}
+		if t > m.gap.Lo && t < m.gap.Hi {
+			t += m.step
+			continue
 		}
 		if _, err := fmt.Fprintf(b, "%.4f,%d,%.5f\n", t, m.zero+counts, ram); err != nil {
 			return err

@@ -55,7 +55,7 @@ func compared(t rigidtest.Tolerance) cmp.Option {
 
 // take takes the next point; known tells the corrections found so far, if any are.
 func (m *comparer) take(p point, known *vector, tol rigidtest.Tolerance) error {
-	if p.cut != 0 {
+	if p.fresh {
 		m.turn.Reset()
 		m.ram.Reset()
 	}
