@@ -68,6 +68,16 @@ func (p *Profile) check() error {
 	case !(width > 0) || math.IsInf(width, 0):
 		return &rigid.DimensionError{Name: "Over", Value: width, Err: rigid.ErrNotPositive}
 	}
+	if p.Closed {
+		a, b := p.Curve(p.Over.Lo).Pos, p.Curve(p.Over.Hi).Pos
+		size := 0.0
+		for t := range p.sample {
+			size = math.Max(size, r2.Norm(p.Curve(t).Pos))
+		}
+		if gap := r2.Norm(r2.Sub(a, b)); gap > 1e-9*size {
+			return fmt.Errorf("%w: the ends of a closed profile are %.3g m apart", ErrInconsistent, gap)
+		}
+	}
 	return finiteLine(p.On)
 }
 

@@ -64,7 +64,7 @@ func (p *program) asides() (all []evaluation) {
 // faultAt returns the error of an op that failed in a scene: a Constraint's own, if
 // it was one that gave no equations.
 func (p *program) faultAt(op int, st status, tried *scene) (err, own error) {
-	if g, ok := p.ops[op].(*group); ok && st != unreachable || ok && len(g.n.customs) > 0 {
+	if g, ok := p.ops[op].(*group); ok {
 		if err, own = g.n.fault(&tried.desks[g.at]); err != nil {
 			return err, own
 		}
