@@ -84,6 +84,12 @@
 //
 // Structs may gain fields: write literals with keys.
 //
+// # Files
+//
+// Dimensions and placements have JSON keys. Plain encoding/json passes over a key
+// that it doesn't know, so that a misspelt offset is an offset of 0: read them with a
+// json.Decoder after its DisallowUnknownFields.
+//
 // # Caution
 //
 // All results are ideal kinematics: rigid links, exact dimensions, joints without

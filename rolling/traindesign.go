@@ -30,14 +30,16 @@ type Mesh struct {
 }
 
 // A TrainDesign describes a gear train as plain data. A gear that is fixed for good
-// is the frame; one that a brake holds is a member driven at 0.
+// is the frame; one that a brake holds is a member driven at 0. In JSON, meshes and
+// drives tell members by their index in Members.
 type TrainDesign struct {
 	Members []string `json:"members"` // names; Members[0] is the frame's
 	Meshes  []Mesh   `json:"meshes"`
 	Drives  []Member `json:"drives"` // the members whose turns are given
 }
 
-// Member appends a member (the frame first, if there is none) and returns it.
+// Member appends a member and returns it. In a design without members it puts the
+// frame first, which is Member 0: don't append it yourself.
 func (d *TrainDesign) Member(name string) Member {
 	if len(d.Members) == 0 {
 		d.Members = append(d.Members, "frame")

@@ -15,6 +15,9 @@
 //	err = press.Solve(&st, rigid.Coordinate{Pos: angle, Vel: speed, Acc: acc})
 //	tool := st.Slider.At(r2.Vec{X: 0.03})
 //
+// rigid.Law(press.Coefficients) is the law of motion of the slide by the crank's
+// angle, with extremes, peaks, strokes and the way back; so it is for each inversion.
+//
 // # The slider-crank
 //
 // In the mechanism's own axes the crank pivot is the origin and the guide the line

@@ -9,6 +9,9 @@
 //		t.Errorf("ram (-want +got):\n%s", diff)
 //	}
 //
+// A State has a Margin, which these two ask to be equal: give Lengths a Relative, too,
+// to compare whole States of measured motions.
+//
 // They serve every type of this library (motions, points, paths, terms,
 // coordinates, coefficients, the states of the mechanisms) and any struct, slice,
 // map or pointer that holds them. Given the same list of names the two cover
