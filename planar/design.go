@@ -13,7 +13,9 @@ type Design struct {
 	Guess []rigid.Placement
 }
 
-// Link appends a link (the frame first, if there is none) and returns it.
+// Link appends a link and returns it. In a design without links it puts the frame
+// first, which is Frame: don't append it yourself. Nor does Link look for a name: in
+// a design that was read a link is Link(slices.Index(d.Links, name)).
 func (d *Design) Link(name string) Link {
 	if len(d.Links) == 0 {
 		d.Links = append(d.Links, "frame")

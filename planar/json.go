@@ -76,8 +76,8 @@ type (
 //	  "guess": {"crank": {"x": 0, "y": 0, "angle": 1}, …}
 //	}
 //
-// It returns an error that wraps rigid.ErrInput, ErrReference or one of
-// encoding/json, and tells the place, for what has no such form: two links of one
+// The first of the links is the frame, whatever its name. MarshalJSON returns an
+// error that wraps rigid.ErrInput, ErrReference or one of encoding/json, and tells the place, for what has no such form: two links of one
 // name, a link that does not exist, a number that is not finite, a joint or drive
 // of another type, a guess for another number of links.
 func (d Design) MarshalJSON() ([]byte, error) {

@@ -9,8 +9,8 @@ import (
 )
 
 // UnmarshalJSON reads what MarshalJSON writes. Joints, drives, the guess, numbers and
-// flags may be left out: they are none or zero. It is strict: a key or kind that does
-// not belong there, in upper or lower case, a key twice, null, two links of one name
+// flags may be left out: they are none or zero, and so is the placement of a link
+// that a guess leaves out. It is strict: a key or kind that does not belong there, in upper or lower case, a key twice, null, two links of one name
 // and the name of no link are errors that wrap rigid.ErrInput or ErrReference and
 // tell the place. The design is then as it was. Whether the linkage is sound is for
 // New to say.

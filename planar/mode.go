@@ -19,13 +19,16 @@ func (o *rpr) number() int   { return o.i }
 
 // Mode returns the assembly mode: one rune for each of Linkage.Groups, in order.
 //
-//   - −   the side of a dyad: its middle pin left (+) or right (−) of the line
-//     from the first link's outer pin to the second's, the slider pin ahead of
-//     or behind the rod's outer pin along the guide, the block ahead of or
-//     behind the slotted link's pin along the slot
-//     = x   a parallelogram cell in its parallel or its contrary motion
-//     .     one solution
-//     ?     a group of higher class
+//	rune     group
+//	+ or -   the side of a dyad
+//	= or x   a parallelogram cell in its parallel or its contrary motion
+//	.        one solution
+//	?        a group of higher class
+//
+// A dyad is + where its middle pin lies left of the line from the first link's outer
+// pin to the second's, the slider pin ahead of the rod's outer pin along the guide,
+// or the block ahead of the slotted link's pin along the slot. The - is a hyphen;
+// AssembleMode takes the minus sign − for it too.
 func (s *State) Mode() string {
 	if s.l == nil {
 		return ""
@@ -127,7 +130,7 @@ func named(r rune) (branch, bool) {
 			return b, true
 		}
 	}
-	return 0, r == '−'
+	return right, r == '−'
 }
 
 // cellular reports whether an op is a parallelogram cell.

@@ -98,6 +98,9 @@ func TestBadUse(t *testing.T) {
 // on its own, and Set brings whole turns too.
 func TestModes(t *testing.T) {
 	l := fourBarOf(t, 0.4, 1.2, 0.8, 1)
+	if s, err := l.AssembleMode(".−", at(1)); err != nil || s.Mode() != ".-" {
+		t.Errorf("a minus sign: %v, %v", s, err)
+	}
 	for _, m := range []string{".+", ".-"} {
 		s, err := l.AssembleMode(m, at(1))
 		if err != nil {
