@@ -31,15 +31,15 @@ func TestConstantMemory(t *testing.T) {
 	m := good(5)
 	m.lines, m.step = 200_000, 0.02 // 126 lines a turn: more turns than are kept
 	if testing.Short() {
-		m.lines = 150_000
+		m.lines = 60_000
 	}
-	r := &meter{Reader: m.reader(), step: 500_000}
+	r := &meter{Reader: m.reader(), step: 250_000}
 	c := sampleConfigFor(t)
 	got, err := check(c, r, func(err error) error { return err })
 	if err != nil {
 		t.Fatal(err)
 	}
-	if !got.Verdict.Pass || got.Log.Turns < 1000 {
+	if !got.Verdict.Pass || got.Log.Turns < m.lines/200 {
 		t.Errorf("%+v", got)
 	}
 	if len(r.heap) < 5 {
@@ -55,7 +55,7 @@ func TestConstantMemory(t *testing.T) {
 func TestLongLinks(t *testing.T) {
 	n := 30_000
 	if testing.Short() {
-		n = 20_000
+		n = 8_000
 	}
 	for _, l := range []struct {
 		verdict            string
@@ -78,6 +78,9 @@ func TestLongLinks(t *testing.T) {
 func TestLongSlip(t *testing.T) {
 	m := good(6)
 	m.lines, m.step = 60_000, 0.02
+	if testing.Short() {
+		m.lines = 30_000
+	}
 	m.slip = func(turned float64) float64 { return 5e-6 * turned / (2 * math.Pi) }
 	r := judged(t, sampleConfigFor(t), m)
 	want := -5e-6 * float64(r.Log.Turns)
@@ -90,7 +93,7 @@ func TestLongSlip(t *testing.T) {
 func TestStandardErrors(t *testing.T) {
 	n := 40
 	if testing.Short() {
-		n = 12
+		n = 8
 	}
 	c := sampleConfigFor(t)
 	var square [4]float64
