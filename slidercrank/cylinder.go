@@ -119,7 +119,7 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 	slack := 2 * beyond * k.size * s
 	ch, ok := root(s*s-k.least, 2*equal*(s*s+math.Abs(k.least)), slack)
 	sh, within := root((reach-e)*(reach+e)-s*s, 2*equal*(reach-e)*(reach+e), slack)
-	if !(s >= 0) || !ok || !within {
+	if !(s >= 0 && s <= 2*reach) || !ok || !within { // far beyond, the squares may overflow
 		return rigid.ErrUnreachable
 	}
 	if knee == rigid.Left {

@@ -61,6 +61,7 @@ func TestOscillatingCylinderCloses(t *testing.T) {
 func TestOscillatingCylinderRefuses(t *testing.T) {
 	c := newCylinder(t, slidercrank.CylinderDimensions{Crank: 0.3, Centre: 0.5})
 	rocking := newCylinder(t, slidercrank.CylinderDimensions{Crank: 0.3, Centre: 0.5, Offset: 0.4})
+	large := newCylinder(t, slidercrank.CylinderDimensions{Crank: 1, Centre: 1e32})
 	zero := new(slidercrank.OscillatingCylinder)
 	slide := func(c *slidercrank.OscillatingCylinder, pos, vel, acc float64, knee rigid.Side) func(*slidercrank.CylinderState) error {
 		return func(st *slidercrank.CylinderState) error {
@@ -80,6 +81,7 @@ func TestOscillatingCylinderRefuses(t *testing.T) {
 		{"rate would overflow", slide(c, 0.5, 1e200, 0, 0), rigid.ErrNotFinite},
 		{"too short", slide(c, 0.2-1e-9, 0, 0, 0), rigid.ErrUnreachable},
 		{"too long", slide(c, 0.8+1e-9, 0, 0, 0), rigid.ErrUnreachable},
+		{"so long that its square overflows", slide(large, 1e300, 0, 0, 0), rigid.ErrUnreachable},
 		{"negative", slide(c, -0.5, 0, 0, 0), rigid.ErrUnreachable},
 		{"shortest", slide(c, 0.2, 0, 0, rigid.Left), nil},
 		{"longest", slide(c, 0.8, 0, 0, rigid.Right), nil},

@@ -70,7 +70,8 @@ func (d Dimensions) check() error {
 	}
 	// Where the offset is as long as crank and rod together, they lie in one line
 	// for good, which is no mechanism either.
-	if len(f) == 0 && d.Crank+d.Rod-math.Abs(d.Offset) <= equal*math.Abs(d.Offset) {
+	rod, _ := d.settle()
+	if len(f) == 0 && d.Crank+rod-math.Abs(d.Offset) <= equal*math.Abs(d.Offset) {
 		f.add("", 0, rigid.ErrUnreachable)
 	}
 	return f.join()

@@ -40,6 +40,7 @@ func TestDimensionErrors(t *testing.T) {
 		{"offset too great", with(func(d *d) { d.Offset = -1e61 }), "Offset", -1e61, rigid.ErrInput},
 		{"offset out of reach", with(func(d *d) { d.Offset = 0.41 }), "", 0, rigid.ErrUnreachable},
 		{"offset at the reach", with(func(d *d) { d.Offset = -(0.1 + 0.3) }), "", 0, rigid.ErrUnreachable},
+		{"crank below the rounding of rod and offset", d{Crank: 1e-25, Rod: 2, Offset: 2 - 0x1p-49}, "", 0, rigid.ErrUnreachable},
 		{"offset far out of reach", with(func(d *d) { d.Offset = -4 }), "", 0, rigid.ErrUnreachable},
 		{"no such branch", with(func(d *d) { d.Branch = 2 }), "Branch", 2, rigid.ErrInput},
 		{"mount x", with(func(d *d) { d.Mount.X = inf }), "Mount.X", inf, rigid.ErrNotFinite},

@@ -73,9 +73,24 @@ func (q *QuickReturn) reached(whole rigid.Interval, cuts []float64) []rigid.Inte
 		if in[i].Lo >= math.Pi {
 			in[i].Lo, in[i].Hi = in[i].Lo-rigid.Revolution, in[i].Hi-rigid.Revolution
 		}
+		in[i].Lo, in[i].Hi = q.inward(in[i].Lo, in[i].Hi), q.inward(in[i].Hi, in[i].Lo)
 	}
 	slices.SortFunc(in, func(a, b rigid.Interval) int { return cmp.Compare(a.Lo, b.Lo) })
 	return in
+}
+
+// inward returns an end of a piece, moved on towards the other one where rounding put
+// it beyond the rod's reach: a quick lever carries the ram far in one rounding of the
+// turn, and near its dead centre the turn is off by more than one.
+func (q *QuickReturn) inward(end, other float64) float64 {
+	at, step := end, math.Nextafter(end, other)-end
+	for range 24 {
+		if q.reaches(at) {
+			return at
+		}
+		at, step = at+step, 2*step
+	}
+	return end
 }
 
 // reaches reports whether the crank's angle has a position.

@@ -3,6 +3,7 @@ package slidercrank_test
 import (
 	"errors"
 	"math"
+	"math/rand/v2"
 	"testing"
 
 	"gonum.org/v1/gonum/spatial/r2"
@@ -88,6 +89,33 @@ func TestQuickReturnStrokes(t *testing.T) {
 				t.Errorf("%+v: peak acceleration %v, a sweep has %v", d, got, acc)
 			}
 		}
+	}
+}
+
+// With crank and centre line nearly equal the lever turns over within a small part of
+// the crank's turn, so that a rounding of the turn shows in the rod's reach.
+func TestQuickReturnRangeIsReached(t *testing.T) {
+	rng, made := rand.New(rand.NewPCG(11, 40)), 0
+	for range 10 * rounds() {
+		d := slidercrank.QuickReturnDimensions{Crank: 0.1 + rng.Float64(), Arm: 0.5 + 2*rng.Float64(), Rod: 0.3 + 2*rng.Float64()}
+		d.Centre = d.Crank * (1 + 1e-3*(2*rng.Float64()-1))
+		d.Guide.Angle = math.Pi / 2
+		q, err := slidercrank.NewQuickReturn(d)
+		if err != nil {
+			continue // the rod reaches the guide nowhere
+		}
+		for _, r := range q.Range() {
+			made++
+			for _, turn := range [...]float64{r.Lo, r.Hi} {
+				var st slidercrank.QuickReturnState
+				if err := q.Solve(&st, rigid.Coordinate{Pos: turn}); err != nil {
+					t.Errorf("%+v: at %v of %v: %v", d, turn, r, err)
+				}
+			}
+		}
+	}
+	if made < 5*rounds() {
+		t.Errorf("only %d intervals", made)
 	}
 }
 

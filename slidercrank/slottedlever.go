@@ -120,8 +120,11 @@ func (l *SlottedLever) DeadCentres() []rigid.Coefficients { return l.form.deadCe
 // TimeRatio returns the crank's angle, turning positive, from the least to the
 // greatest swing over that back: (π + 2β)/(π − 2β) with sin β = Crank/Centre where
 // the slot passes through the lever pivot. ErrUnreachable where the lever does not
-// swing between two extremes.
+// swing between two extremes; ErrInput for a zero SlottedLever.
 func (l *SlottedLever) TimeRatio() (float64, error) {
+	if l.form.r == 0 {
+		return 0, rigid.ErrInput
+	}
 	c := l.form.deadCentres()
 	if len(c) != 2 {
 		return 0, rigid.ErrUnreachable

@@ -204,8 +204,8 @@ func TestZeroSlottedLever(t *testing.T) {
 	if l.Range() != nil || l.DeadCentres() != nil {
 		t.Error("a range or dead centres of no mechanism")
 	}
-	if _, err := l.TimeRatio(); err == nil {
-		t.Error("a time ratio of no mechanism")
+	if _, err := l.TimeRatio(); err != rigid.ErrInput {
+		t.Errorf("TimeRatio: %v", err)
 	}
 }
 
