@@ -70,13 +70,18 @@ func (q *QuickReturn) reached(whole rigid.Interval, cuts []float64) []rigid.Inte
 		return []rigid.Interval{{Lo: -math.Pi, Hi: math.Pi}}
 	}
 	for i := range in {
+		in[i] = q.inside(in[i])
 		if in[i].Lo >= math.Pi {
-			in[i].Lo, in[i].Hi = in[i].Lo-rigid.Revolution, in[i].Hi-rigid.Revolution
+			in[i] = q.inside(rigid.Interval{Lo: in[i].Lo - rigid.Revolution, Hi: in[i].Hi - rigid.Revolution})
 		}
-		in[i].Lo, in[i].Hi = q.inward(in[i].Lo, in[i].Hi), q.inward(in[i].Hi, in[i].Lo)
 	}
 	slices.SortFunc(in, func(a, b rigid.Interval) int { return cmp.Compare(a.Lo, b.Lo) })
 	return in
+}
+
+// inside returns a piece with both ends where the rod reaches.
+func (q *QuickReturn) inside(i rigid.Interval) rigid.Interval {
+	return rigid.Interval{Lo: q.inward(i.Lo, i.Hi), Hi: q.inward(i.Hi, i.Lo)}
 }
 
 // inward returns an end of a piece, moved on towards the other one where rounding put

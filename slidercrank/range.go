@@ -7,10 +7,10 @@ import (
 	"example.com/twopoint/rigid"
 )
 
-// Range returns the crank's angles that have a position: a whole turn where Rod ≥
-// Crank + |Offset|, elsewhere the one or two intervals at whose ends the rod
-// stands square to the guide, so that Solve refuses rates there. It is nil for a
-// zero Linkage.
+// Range returns the crank's angles that have a position: a whole turn, the one
+// interval [−π, π], where Rod ≥ Crank + |Offset|, elsewhere the one or two intervals
+// at whose ends the rod stands square to the guide, so that Solve refuses rates
+// there. It is nil for a zero Linkage.
 func (l *Linkage) Range() []rigid.Interval {
 	if l.crank == 0 {
 		return nil
