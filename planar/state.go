@@ -173,13 +173,14 @@ func (s *State) Margin() float64 {
 // moving frame: the base, tangential and normal terms of in's motion, and the
 // relative and Coriolis terms of the point's motion as an observer on in sees it.
 // Their sum is the acceleration of the point; all are in m/s², in the frame's axes.
+// It is NaN where a link doesn't exist.
 func (s *State) AccelerationTerms(of Attachment, in Link) rigid.AccelerationTerms {
 	m := s.Motion(in)
 	return m.AccelerationTerms(m.Observe(s.Point(of)))
 }
 
 // VelocityTerms returns the terms of the velocity of a point with in as the moving
-// frame, in m/s, in the frame's axes.
+// frame, in m/s, in the frame's axes. Their sum is NaN where a link doesn't exist.
 func (s *State) VelocityTerms(of Attachment, in Link) rigid.VelocityTerms {
 	m := s.Motion(in)
 	return m.VelocityTerms(m.Observe(s.Point(of)))
