@@ -46,6 +46,9 @@ func (l *Linkage) Assemble(guess []rigid.Placement, in ...rigid.Coordinate) (*St
 	if sum != 0 {
 		return nil, rigid.ErrNotFinite
 	}
+	if !l.extended(in) {
+		return nil, rigid.ErrUnreachable
+	}
 	s := newState(l)
 	for i := range in {
 		s.now.in[i].Pos = rigid.Nearest(s.driven(i, guess), in[i].Pos)

@@ -78,6 +78,9 @@ func (l *Linkage) AssembleMode(mode string, in ...rigid.Coordinate) (*State, err
 		}
 		s.now.in[i].Pos = c.Pos
 	}
+	if !l.extended(in) {
+		return nil, rigid.ErrUnreachable
+	}
 	s.build()
 	for i, o := range l.program.ops {
 		if st := o.place(s.now, s.now); st != solved && st != doubtful {

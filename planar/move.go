@@ -49,6 +49,10 @@ func (s *State) Move(in ...rigid.Coordinate) error {
 	if finite != 0 { // NaN
 		return rigid.ErrNotFinite
 	}
+	if !s.l.extended(in) {
+		s.stop = stop{err: rigid.ErrUnreachable, op: -1, blocked: 1}
+		return s.stop.err
+	}
 	if steps > mostSteps {
 		s.stop = stop{err: ErrTooFar, op: -1}
 		return ErrTooFar
@@ -63,6 +67,16 @@ func (s *State) Move(in ...rigid.Coordinate) error {
 		}
 	}
 	return s.walk(int(math.Ceil(steps)), moving)
+}
+
+// extended reports whether every driven distance is one: greater than 0.
+func (l *Linkage) extended(in []rigid.Coordinate) bool {
+	for i, d := range l.design.Drives {
+		if _, ok := d.(Reach); ok && in[i].Pos <= 0 {
+			return false
+		}
+	}
+	return true
 }
 
 // solve runs the ops: places, and rates if moving.
