@@ -30,7 +30,8 @@ const parallel = 4 * 0x1p-52
 // Centres returns the instantaneous centres at a position that a solve of this
 // linkage gave. Where all links lie in one line the position alone does not tell:
 // there Parallel and Contrary have the centres of the motion that passes it, and
-// other linkages ErrSingular. ErrInput for a linkage that is not from New.
+// other linkages ErrSingular. ErrInput for a linkage that is not from New,
+// ErrNotFinite for a State with a number that is not finite.
 func (l *Linkage) Centres(st *State) (Centres, error) {
 	if l.longest == 0 {
 		return Centres{}, rigid.ErrInput
@@ -38,6 +39,11 @@ func (l *Linkage) Centres(st *State) (Centres, error) {
 	u2, u3, u4 := st.Crank.Pose.Axis, st.Coupler.Pose.Axis, st.Follower.Pose.Axis
 	o2, o4 := l.origin, l.pivot
 	a := st.Coupler.Pose.Origin
+	for _, v := range [...]r2.Vec{u2, u3, u4, a, st.Follower.Pose.Origin} {
+		if v.X*0+v.Y*0 != 0 {
+			return Centres{}, rigid.ErrNotFinite
+		}
+	}
 	c := Centres{
 		FrameCrank:      Centre{Point: o2},
 		CrankCoupler:    Centre{Point: a},

@@ -99,6 +99,10 @@ func TestCentresAtInfinityAndFlat(t *testing.T) {
 	if c, err := l.Centres(&st); err != nil || !c.FrameCoupler.AtInfinity {
 		t.Errorf("parallel links: %+v, %v, axes %v %v", c, err, st.Crank.Pose.Axis, st.Follower.Pose.Axis)
 	}
+	st.Coupler.Pose.Axis.X = math.NaN()
+	if c, err := l.Centres(&st); err != rigid.ErrNotFinite || c != (fourbar.Centres{}) {
+		t.Errorf("a State of NaN: %+v, %v", c, err)
+	}
 	// A kite in line.
 	l = mustNew(t, fourbar.Dimensions{Frame: 2, Crank: 1, Coupler: 1, Follower: 2})
 	if err := l.Solve(&st, rigid.Coordinate{}); err != nil {

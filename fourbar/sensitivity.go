@@ -56,8 +56,11 @@ func (l *Linkage) Sensitivity(dst *Sensitivity, turn rigid.Coordinate, coupler r
 	}
 	s.Crank.Point = v.carried(s.Crank.Point, turn)
 	for _, x := range [...]*LengthSensitivity{&s.Frame, &s.Crank, &s.Coupler, &s.Follower} {
-		if p := &x.Point; x.Swing.Acc*0+p.Acc.X*0+p.Acc.Y*0 != 0 {
-			return rigid.ErrNotFinite
+		p := &x.Point
+		for _, v := range [...]r2.Vec{p.Pos, p.Vel, p.Acc, {X: x.Swing.Vel, Y: x.Swing.Acc}} {
+			if v.X*0+v.Y*0 != 0 {
+				return rigid.ErrNotFinite
+			}
 		}
 	}
 	*dst = s

@@ -81,6 +81,19 @@ func jacobian(f func(y, x []float64), x float64) []float64 {
 	return a
 }
 
+// TestSensitivityOverflow: a coupler point so far off that its derivatives overflow,
+// also with the crank at rest, where only its place has any.
+func TestSensitivityOverflow(t *testing.T) {
+	l := mustNew(t, fourbar.Dimensions{Frame: 4e-3, Crank: 1e-3, Coupler: 4e-3, Follower: 3e-3})
+	was := fourbar.Sensitivity{Frame: fourbar.LengthSensitivity{Swing: rigid.Coordinate{Pos: 7}}}
+	for _, turn := range []rigid.Coordinate{{Pos: 1}, {Pos: 1, Vel: 1}} {
+		s := was
+		if err := l.Sensitivity(&s, turn, r2.Vec{X: 1e307}); err != rigid.ErrNotFinite || s != was {
+			t.Errorf("turn %v: %v, %+v", turn, err, s)
+		}
+	}
+}
+
 func TestTradeAllocates(t *testing.T) {
 	l := randomLinkages(t, 1)[0]
 	in := rigid.Coordinate{Pos: inRange(l, 0.5), Vel: 1}
