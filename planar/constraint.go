@@ -80,7 +80,7 @@ type Evaluation struct {
 // Observe give here are just what a Bias is made of.
 type Moving struct {
 	rigid.Motion
-	Turn float64 // rad: its angle, whole turns since Assemble included
+	Turn float64 // rad: its angle with whole turns, as State.Turn counts them
 }
 
 // An Equation is one of a Constraint's: by how much it misses, and what its

@@ -234,21 +234,27 @@ func TestCrossing(t *testing.T) {
 // micrometres to kilometres, and far from the origin: the angles are the same.
 func TestSizes(t *testing.T) {
 	var first []rigid.Coordinate
+	var margins []float64
 	for _, size := range []float64{1, 1e-6, 1e-3, 1e3, 1e6} {
 		var p plan
 		l := p.links("cam", "lever", "rod", "rocker")
 		p.pin(Frame.At(0, 0), l[0].At(0, 0))
 		p.pin(Frame.At(0.2*size, 0.03*size), l[1].At(0, 0))
 		p.by(Roller{Centre: l[1].At(0.17*size, 0), Radius: 0.02 * size, On: Profile{On: l[0].Line(0.01*size, 0, 0), Curve: Ellipse(0.06*size, 0.04*size), Over: round, Closed: true}})
-		p.by(Follower{Of: Turn{l[3], Frame}, Cam: Turn{l[1], Frame}, By: rigid.Linear(-0.5, 0.2)})
+		p.by(Follower{Of: Turn{l[3], Frame}, Cam: Turn{l[2], Frame}, By: rigid.Linear(-0.5, -0.13)})
 		p.pin(l[1].At(0.1*size, 0.1*size), l[2].At(0, 0))
 		p.pin(Frame.At(0.5*size, 0), l[3].At(0, 0))
 		p.turn(l[0], Frame)
 		p.slot(l[2].At(0.7*size, 0), l[3].Line(0, 0, 0))
-		s := mustAssemble(t, mustNew(t, p.Design), []rigid.Placement{{}, {}, {X: 0.2 * size, Y: 0.03 * size, Angle: 2.6}, {X: 0.05 * size, Y: 0.05 * size}, {X: 0.5 * size, Angle: -1.1}}, at(0))
+		s := mustAssemble(t, mustNew(t, p.Design), []rigid.Placement{{}, {}, {X: 0.2 * size, Y: 0.03 * size, Angle: 2.6}, {X: 0.05 * size, Y: 0.05 * size, Angle: -0.1}, {X: 0.5 * size, Angle: -0.08}}, at(0))
 		for i := range 60 {
 			if err := s.Move(rigid.Coordinate{Pos: float64(i) * 0.2, Vel: 1, Acc: 1}); err != nil {
 				t.Fatal(size, i, err)
+			}
+			if size == 1 {
+				margins = append(margins, s.Margin())
+			} else if m := s.Margin(); math.Abs(m-margins[i]) > 1e-9 {
+				t.Fatalf("size %v, step %d: margin %v, want %v", size, i, m, margins[i])
 			}
 			for n, link := range []Link{l[1], l[2], l[3]} {
 				c := s.Turn(link, Frame)

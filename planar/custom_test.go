@@ -383,3 +383,37 @@ func TestCustomAllocations(t *testing.T) {
 		}
 	}
 }
+
+// A recall is a spool that remembers its turn, and refuses one that is not near it.
+type recall struct{ spool }
+
+func (r recall) Memory() int { return 2 }
+func (r recall) Evaluate(e *Evaluation) error {
+	turn := e.Links[0].Turn
+	if e.Memory[0] != 0 && math.Abs(turn-e.Memory[1]) > 0.3 {
+		return errors.New("what is remembered is from elsewhere")
+	}
+	e.Memory[0], e.Memory[1] = 1, turn
+	return r.spool.Evaluate(e)
+}
+
+// TestMemoryOfConstraints: what a Constraint keeps is of the place before, after Moves
+// that fail, in Clones and after Set too.
+func TestMemoryOfConstraints(t *testing.T) {
+	s := mustAssemble(t, mustNew(t, wound(recall{spool{1, 2, 0.1, 0.002}})), []rigid.Placement{{}, {Y: 0.3}, {X: 0.1}}, at(0))
+	start := s.Clone()
+	for k := range 40 {
+		if err := s.Move(at(0.25 * float64(k))); err != nil {
+			t.Fatal(k, err)
+		}
+		if err := s.Clone().Move(at(0.25*float64(k) + 2)); err != nil {
+			t.Fatal(k, err)
+		}
+		if err := s.Move(at(1e6)); err != ErrTooFar {
+			t.Fatal(err)
+		}
+	}
+	if err := errors.Join(s.Set(start), s.Move(at(-0.2))); err != nil {
+		t.Error(err)
+	}
+}
