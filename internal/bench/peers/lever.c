@@ -5,7 +5,7 @@ typedef struct { double r, c, e; } Lever; // crank, centre distance, slot's offs
 static const Lever lever = {0.11, 0.26, 0.02};
 
 // crank pivot (0,0), lever pivot (-c,0), pin at (s, e) in the lever; d: from lever pivot to pin, u along the slot
-NOIPA void lever_vec(const void *mp, double phi, double w, double al, double *o) {
+static inline void lever_core(const void *mp, double phi, double w, double al, double *o, double *cx, double *cy) {
   const Lever *m = mp;
   double sn, cs; sincos(phi, &sn, &cs);
   double ax = m->r * cs, ay = m->r * sn, w2 = w * w, e = m->e;
@@ -14,7 +14,13 @@ NOIPA void lever_vec(const void *mp, double phi, double w, double al, double *o)
   double ux = (s * dx + e * dy) * i, uy = (s * dy - e * dx) * i;
   double w4 = (vy * ux - vx * uy) * k, sv = vx * ux + vy * uy + w4 * e;
   double a4 = (by * ux - bx * uy - 2 * sv * w4 + w4 * w4 * e) * k;
-  o[0] = s; o[1] = e; o[2] = sv; o[3] = 0; o[4] = bx * ux + by * uy + a4 * e + w4 * w4 * s; o[5] = 0; o[6] = w4; o[7] = a4;
+  o[0] = s; o[1] = e; o[2] = sv; o[3] = 0; o[4] = bx * ux + by * uy + a4 * e + w4 * w4 * s; o[5] = 0; o[6] = w4; o[7] = a4; *cx = ux; *cy = uy;
+}
+NOIPA void lever_vec(const void *mp, double phi, double w, double al, double *o) { double ux, uy; lever_core(mp, phi, w, al, o, &ux, &uy); }
+// the same with the lever's angle, which a swing over many turns is counted by
+double lever_angle;
+NOIPA void lever_swing(const void *mp, double phi, double w, double al, double *o) {
+  double ux, uy; lever_core(mp, phi, w, al, o, &ux, &uy); lever_angle = atan2(uy, ux);
 }
 // textbook style: angles
 NOIPA void lever_text(const void *mp, double t2, double w2, double al2, double *o) {
@@ -48,4 +54,4 @@ static void bench(const char *peer, Fn *f) {
   if (!isfinite(sink[0] + sink[7])) res = INFINITY;
   report(peer, "lever", best, s.steps, s.steps, res, 0, acc, s, chk);
 }
-int main(void) { bench("c-textbook", lever_text); bench("c-vector", lever_vec); }
+int main(void) { bench("c-textbook", lever_text); bench("c-vector", lever_vec); bench("c-vector, angle too", lever_swing); }
