@@ -37,6 +37,24 @@ func ExampleLinkage_Solve() {
 	// follower at 93.49°, 0.736 rad/s
 }
 
+// What the roof-tile feeder is, before it moves.
+func ExampleLinkage() {
+	feeder, err := fourbar.New(fourbar.Dimensions{Frame: 0.300, Crank: 0.080, Coupler: 0.280, Follower: 0.200})
+	if err != nil {
+		fmt.Println(err)
+		return
+	}
+	ratio, err := feeder.TimeRatio()
+	least, greatest := feeder.Transmission()
+	fmt.Println(feeder.Class())
+	fmt.Printf("time ratio %.3f %v\n", ratio, err)
+	fmt.Printf("transmission angle %.1f° to %.1f°\n", least/rigid.Degree, greatest/rigid.Degree)
+	// Output:
+	// crank-rocker
+	// time ratio 1.089 <nil>
+	// transmission angle 51.3° to 103.4°
+}
+
 func ExampleNew() {
 	_, err := fourbar.New(fourbar.Dimensions{Frame: 0.300, Crank: -0.080, Coupler: 0.280, Follower: 0.200})
 	if bad, ok := errors.AsType[*rigid.DimensionError](err); ok {
