@@ -1,0 +1,73 @@
+package fourbar_test
+
+import (
+	"math"
+	"math/rand/v2"
+	"testing"
+
+	"gonum.org/v1/gonum/spatial/r2"
+
+	"example.com/twopoint/fourbar"
+	"example.com/twopoint/rigid"
+)
+
+// TestBranchKept drives cranks to and fro at random, a million steps in all.
+func TestBranchKept(t *testing.T) {
+	r := rand.New(rand.NewPCG(1, 7))
+	var st fourbar.State
+	for range rounds(1000) {
+		d := anyDimensions(r)
+		l := mustNew(t, d)
+		for range 1000 {
+			in := anyTurn(r, l)
+			in.Vel, in.Acc = 0, 0
+			if err := l.Solve(&st, in); err != nil {
+				t.Fatalf("%+v at %v: %v", d, in.Pos, err)
+			}
+			sin := r2.Cross(st.Coupler.Pose.Axis, st.Follower.Pose.Axis)
+			if st.Branch != d.Branch || d.Branch == fourbar.Open && sin < -1e-7 || d.Branch == fourbar.Crossed && sin > 1e-7 {
+				t.Fatalf("%+v at %v: %v, sine %v", d, in.Pos, st.Branch, sin)
+			}
+		}
+	}
+}
+
+// TestSwingContinuous follows Swing along every interval of the range, and over
+// four turns of a crank that turns fully.
+func TestSwingContinuous(t *testing.T) {
+	r := rand.New(rand.NewPCG(2, 7))
+	wound := map[float64]int{}
+	for range rounds(1000) {
+		d := anyDimensions(r)
+		l := mustNew(t, d)
+		for _, over := range l.Range() {
+			full := over.Hi-over.Lo == rigid.Revolution
+			if full {
+				over = rigid.Interval{Lo: over.Lo - rigid.Revolution, Hi: over.Hi + 2*rigid.Revolution}
+			}
+			first, last := math.NaN(), math.NaN()
+			for k := range 2001 {
+				var st fourbar.State
+				if err := l.Solve(&st, rigid.Coordinate{Pos: over.Lo + (over.Hi-over.Lo)*float64(k)/2000}); err != nil {
+					t.Fatalf("%+v: %v", d, err)
+				}
+				if k == 0 {
+					first = st.Swing.Pos
+				} else if math.Abs(st.Swing.Pos-last) > 2 {
+					t.Fatalf("%+v: swing jumps from %v to %v at %v", d, last, st.Swing.Pos, st.Turn.Pos)
+				}
+				last = st.Swing.Pos
+			}
+			if full {
+				turns := (last - first) / rigid.Revolution / 4
+				near(t, "whole turns", turns, math.Round(turns), 1e-14)
+				wound[math.Round(turns)]++
+			} else if last-first > 2*math.Pi || first < -2*math.Pi || first > 2*math.Pi {
+				t.Errorf("%+v: swings from %v to %v", d, first, last)
+			}
+		}
+	}
+	if wound[0] == 0 || wound[1] == 0 || wound[-1] == 0 {
+		t.Errorf("turns of the follower for one of the crank: %v", wound)
+	}
+}
