@@ -21,7 +21,9 @@ import (
 //   - ErrInput: the linkage is not from New.
 //
 // A crank at rest, with velocity and acceleration 0, asks for the place alone,
-// which a limit of the crank has too.
+// which a limit of the crank has too. Parallel and Contrary have rates in their
+// flattened positions too, where Margin is 0: it tells how well the coupler drives
+// the follower there, not whether the motion is determined.
 func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	if l.dim.Branch > Crossed {
 		return l.solveCell(dst, turn)

@@ -54,7 +54,8 @@ func parallelogram(a, b float64) Design {
 // TestParallelogram drives a parallelogram, and one on its right-hand crank, through
 // their flattened positions for a thousand turns, in the parallel motion and, the
 // first, in the contrary one, whose ratio is −(b+a)/(b−a) at 0 and its inverse at π
-// (elliptical gears; check O08).
+// (the ratio of elliptical gears runs between K and 1/K:
+// http://cunningham-ind.com/ellipt.html; K = (b+a)/(b−a) from memory).
 func TestParallelogram(t *testing.T) {
 	var p plan
 	p.Design = parallelogram(0.1, 0.3)
