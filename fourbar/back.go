@@ -99,7 +99,7 @@ func (l *Linkage) writeBack(dst *State, p *pose) error {
 		switch {
 		case !l.turns:
 			branch = Crossed - branch
-		case math.Abs(sin) > flat:
+		case math.Abs(sin) > l.flat:
 			return rigid.ErrUnreachable
 		}
 	}
@@ -125,9 +125,3 @@ func (l *Linkage) kink(p *pose) float64 {
 	}
 	return r2.Cross(p.coupler.Axis, p.follower.Axis)
 }
-
-// flat is a sine that rounding alone makes out of 0 where three links fall into
-// one line: the square root of a few units of the last place. Of a linkage whose
-// crank turns fully only one with a change point has such a pose, where it belongs
-// to both branches.
-const flat = 1e-7

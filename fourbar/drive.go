@@ -23,10 +23,20 @@ type drive struct {
 	dyad      dyad.RRR
 	base, arm float64 // length of the frame, signed length of the driven link
 	long      bool    // whether the driven link is longer than the frame
+	slack     float64 // how near to the end of the dyad's reach counts as at it
+	near      float64 // no margin at such a place is greater
 }
 
+// newDrive returns the linkage as a link of signed length arm sees it.
+//
+// With τ the slack F² is at most τ·2(r + q)·4rq near either end of the reach, and so
+// the square of the margin at most 2τ(1/r + 1/q).
 func newDrive(base, arm, r, q float64) drive {
-	return drive{dyad: dyad.NewRRR(r, q), base: base, arm: arm, long: math.Abs(arm) > base}
+	slack := 8 * 0x1p-52 * max(base, math.Abs(arm), r, q)
+	return drive{
+		dyad: dyad.NewRRR(r, q), base: base, arm: arm, long: math.Abs(arm) > base,
+		slack: slack, near: 2 * math.Sqrt(2*slack*(1/r+1/q)),
+	}
 }
 
 // span returns d for the driven link along u.
@@ -64,28 +74,33 @@ func (k *drive) move(t *dyad.Triangle, r, q, driven *dyad.Link, side float64) bo
 // solve solves the dyad of a driven link at rest or in motion, and says why where
 // there is no answer. It gives the sine of the angle between the dyad's links.
 func (l *Linkage) solve(k *drive, t *dyad.Triangle, r, q, driven *dyad.Link, side float64) (margin float64, err error) {
-	if driven.Omega != 0 || driven.Alpha != 0 {
-		if k.move(t, r, q, driven, side) {
-			if margin = k.dyad.Margin(t); margin >= rigid.LeastMargin {
-				return margin, nil
-			}
-			return 0, rigid.ErrSingular
-		}
-	}
 	d := k.span(driven.Axis)
-	if !k.dyad.Place(t, d, side) {
+	moves := driven.Omega != 0 || driven.Alpha != 0
+	if ok := moves && k.move(t, r, q, driven, side) || k.dyad.Place(t, d, side); ok {
+		margin = k.dyad.Margin(t)
+	}
+	if !(margin > k.near) && !k.inside(d) {
 		if err := l.atLimit(k, t, d); err != nil {
 			return 0, err
 		}
+		margin = 0
 	}
-	if driven.Omega != 0 || driven.Alpha != 0 {
+	if !moves {
+		r.Axis, q.Axis = k.dyad.Axes(t)
+	} else if margin < rigid.LeastMargin {
 		return 0, rigid.ErrSingular
 	}
-	r.Axis, q.Axis = k.dyad.Axes(t)
-	return k.dyad.Margin(t), nil
+	return margin, nil
 }
 
-// atLimit places the dyad that d does not let close: flat where d is within
+// inside reports whether d lies within the dyad's reach by more than rounding: an
+// angle at a limit comes back with the rounding of what it was found from.
+func (k *drive) inside(d r2.Vec) bool {
+	x := math.Hypot(d.X, d.Y)
+	return (k.dyad.B+k.dyad.C)-x > k.slack && x-math.Abs(k.dyad.B-k.dyad.C) > k.slack
+}
+
+// atLimit places the dyad where d is not inside its reach: flat where d is within
 // rounding of a limit, else with the reason why not.
 func (l *Linkage) atLimit(k *drive, t *dyad.Triangle, d r2.Vec) error {
 	switch gap, near := k.dyad.Gap(math.Hypot(d.X, d.Y)), closed*l.longest; {
