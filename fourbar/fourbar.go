@@ -24,6 +24,7 @@ type Linkage struct {
 	winding winding
 
 	byCrank, byFollower, byCoupler drive
+	quick                          kernel
 }
 
 // A State is the motion of all links at one instant. More fields may come: write
@@ -80,6 +81,7 @@ func New(d Dimensions) (*Linkage, error) {
 	l.byFollower = newDrive(l.frame, -c, a, b)
 	l.byCoupler = newDrive(l.frame, b, a, c)
 	l.flat = l.byCrank.near + l.byFollower.near + l.byCoupler.near
+	l.quick = l.newKernel()
 	return l, nil
 }
 

@@ -1,9 +1,10 @@
 package fourbar
 
 import (
+	"math"
+
 	"gonum.org/v1/gonum/spatial/r2"
 
-	"example.com/twopoint/internal/dyad"
 	"example.com/twopoint/internal/trig"
 	"example.com/twopoint/rigid"
 )
@@ -21,89 +22,149 @@ import (
 //   - ErrInput: the linkage is not from New.
 //
 // A crank at rest, with velocity and acceleration 0, asks for the place alone,
-// which a limit of the crank has too. Parallel and Contrary have rates in their
+// which a limit of the crank has too. Within rounding of a limit counts as at it, with
+// Margin 0. Parallel and Contrary have rates in their
 // flattened positions too, where Margin is 0: it tells how well the coupler drives
 // the follower there, not whether the motion is determined.
 func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
-	if l.dim.Branch > Crossed {
-		return l.solveCell(dst, turn)
+	k, w, al, ww := &l.quick, turn.Vel, turn.Acc, turn.Vel*turn.Vel
+	sin, cos := trig.Sincos(turn.Pos)
+	ax, ay := k.arm*cos, k.arm*sin
+	dx := k.base - ax // d = (dx, −ay)
+	d2 := dx*dx + ay*ay
+	x := d2 - k.n
+	p := (k.g - x) * (k.g + x) // F², by the law of cosines
+	if math.Abs(x) > k.h {
+		p = (k.s - d2) * (d2 - k.e) // or Heron's formula
 	}
-	k, t := &l.byCrank, dyad.Triangle{}
-	p := pose{crank: dyad.Link{Axis: direction(turn.Pos), Omega: turn.Vel, Alpha: turn.Acc}}
-	margin, err := l.solve(k, &t, &p.coupler, &p.follower, &p.crank, l.side)
-	if err != nil {
-		return err
+	root := math.Sqrt(p)
+	margin := root * k.ig
+	if rate := ww + al*al; !(margin > k.least && rate > 0 && rate < 1e100) {
+		return l.solveRare(dst, turn)
 	}
-	p.arm = r2.Scale(l.crank, p.crank.Axis)
-	if !l.write(dst, &p) {
-		return rigid.ErrNotFinite
-	}
-	dst.Turn = turn
-	dst.Margin = margin
-	dst.Branch = l.dim.Branch
-	dst.Transmission = trig.Angle(k.dyad.Cos(&t), margin)
-	dst.Swing.Pos = l.swing(turn.Pos, p.follower.Axis)
-	return nil
-}
 
-// A pose is the motion of the three moving links in the mechanism's own axes.
-type pose struct {
-	crank, coupler, follower dyad.Link
-	arm                      r2.Vec // along the crank, for the motion of its pin
-}
-
-// direction returns the unit vector at an angle.
-func direction(angle float64) r2.Vec {
-	sin, cos := trig.Sincos(angle)
-	return r2.Vec{X: cos, Y: sin}
-}
-
-// write writes the links' motions and the sides of the pose, turned by Mount, whose
-// origin is added last so that a small machine far from it keeps its accuracy. It
-// reports false, and writes nothing, where a rate is not finite.
-func (l *Linkage) write(dst *State, p *pose) bool {
-	w, al, w2 := p.crank.Omega, p.crank.Alpha, p.crank.Omega*p.crank.Omega
-	arm := l.mounted(p.arm)
-	acc := r2.Vec{X: -al*arm.Y - w2*arm.X, Y: al*arm.X - w2*arm.Y}
-	if acc.X*0+acc.Y*0+al*0+p.coupler.Alpha*0+p.follower.Alpha*0 != 0 { // NaN unless all are finite
-		return false
+	// What the root is not needed for, while it is on its way: m·d and −m×d.
+	i, c := 1/d2, k.side/p
+	dot, cross, mm := ax*dx-ay*ay, k.base*ay, ww
+	if k.long {
+		dot, mm = k.base*dx, -ww
 	}
+	u, v := d2+k.m, k.m-d2
+	ex, ey := i*dx, i*ay
+	di, ci := i*dot, i*cross
+
+	// The directions of R = (u d + F d⊥)/2d² and Q = (v d + F d⊥)/2d², and the
+	// factors that bring them to length 1: see dyad's unit.
+	f := k.side * root
+	along, across := k.hb*u, k.hb*f
+	rx, ry := along*ex+across*ey, across*ex-along*ey
+	along, across = k.hc*v, k.hc*f
+	qx, qy := along*ex+across*ey, across*ex-along*ey
+	nr, nq := 1.5-0.5*(rx*rx+ry*ry), 1.5-0.5*(qx*qx+qy*qy)
+
+	// The rates, by 2m·R, −2m×R and the same of Q.
+	fd, fc := f*di, f*ci
+	rd, rc := u*di+fc, u*ci-fd
+	qd, qc := v*di+fc, v*ci-fd
+	c *= root // 1/F
+	cw := c * w
+	w3, w4 := cw*qc, cw*rc
+	ww3, ww4 := w3*w3, w4*w4
+	al3 := c * (al*qc + mm*qd - (ww3*x + ww4*k.cc))
+	al4 := c * (al*rc + mm*rd + (ww3*k.bb + ww4*x))
+	if k.long {
+		w3, w4, al3, al4 = w3+w, w4+w, al3+al, al4+al
+	}
+
+	mx, my := l.axis.X, l.axis.Y
+	px, py := mx*cos-my*sin, mx*sin+my*cos
 	m := &dst.Crank
-	m.Pose.Origin, m.Pose.Axis = l.origin, l.mounted(p.crank.Axis)
+	m.Pose.Origin = l.origin
+	m.Pose.Axis.X, m.Pose.Axis.Y = px, py
 	m.Vel, m.Acc = r2.Vec{}, r2.Vec{}
 	m.Omega, m.Alpha = w, al
 
+	px, py = k.arm*px, k.arm*py
+	ux, uy := nr*rx, nr*ry
 	m = &dst.Coupler
-	m.Pose.Origin.X = l.origin.X + l.crank*dst.Crank.Pose.Axis.X
-	m.Pose.Origin.Y = l.origin.Y + l.crank*dst.Crank.Pose.Axis.Y
-	m.Pose.Axis = l.mounted(p.coupler.Axis)
-	m.Vel.X, m.Vel.Y = -w*arm.Y, w*arm.X
-	m.Acc = acc
-	m.Omega, m.Alpha = p.coupler.Omega, p.coupler.Alpha
+	m.Pose.Origin.X, m.Pose.Origin.Y = l.origin.X+px, l.origin.Y+py
+	m.Pose.Axis.X, m.Pose.Axis.Y = mx*ux-my*uy, mx*uy+my*ux
+	m.Vel.X, m.Vel.Y = -w*py, w*px
+	m.Acc.X, m.Acc.Y = -al*py-ww*px, al*px-ww*py
+	m.Omega, m.Alpha = w3, al3
 
+	vx, vy := nq*qx, nq*qy
 	m = &dst.Follower
-	m.Pose.Origin, m.Pose.Axis = l.pivot, l.mounted(p.follower.Axis)
+	m.Pose.Origin = l.pivot
+	m.Pose.Axis.X, m.Pose.Axis.Y = mx*vx-my*vy, mx*vy+my*vx
 	m.Vel, m.Acc = r2.Vec{}, r2.Vec{}
-	m.Omega, m.Alpha = p.follower.Omega, p.follower.Alpha
+	m.Omega, m.Alpha = w4, al4
 
-	dst.Swing.Vel, dst.Swing.Acc = p.follower.Omega, p.follower.Alpha
-	dst.Knee = sideOf(p.coupler.Axis, p.crank.Axis)
-	dst.Lean = sideOf(p.crank.Axis, p.follower.Axis)
-	return true
-}
-
-// mounted returns a vector of the mechanism's axes in the machine's.
-func (l *Linkage) mounted(v r2.Vec) r2.Vec {
-	return r2.Vec{X: l.axis.X*v.X - l.axis.Y*v.Y, Y: l.axis.X*v.Y + l.axis.Y*v.X}
-}
-
-// sideOf returns the side of the direction u on which v lies.
-func sideOf(u, v r2.Vec) rigid.Side {
-	if u.X*v.Y < u.Y*v.X {
-		return rigid.Right
+	knee, lean := rigid.Left, rigid.Left
+	if ux*sin < uy*cos {
+		knee = rigid.Right
 	}
-	return rigid.Left
+	if cos*vy < sin*vx {
+		lean = rigid.Right
+	}
+	dst.Branch, dst.Knee, dst.Lean, dst.Margin = l.dim.Branch, knee, lean, min(margin, 1)
+	dst.Turn = turn
+	dst.Swing.Vel, dst.Swing.Acc = w4, al4
+	swing := trig.AngleOf(qx, qy, nq)
+	if !(swing >= l.winding.least && swing <= l.winding.most) {
+		swing = l.wind(turn.Pos, swing)
+	}
+	dst.Swing.Pos = swing
+	dst.Transmission = trig.AngleOf(-x*k.ig, margin, 1)
+	return nil
 }
 
-// sign returns +1 for Left and −1 for Right.
-func sign(s rigid.Side) float64 { return 1 - 2*float64(s) }
+// A kernel holds the constants of Solve's inner loop.
+//
+// That is one long function for the sake of speed: its numbers stay in registers,
+// where in the parts that solveRare is made of they go through memory from one to
+// the next. What is out of the ordinary is left to those.
+//
+// In the mechanism's own axes let R and Q be the vectors along coupler and follower
+// to their common pin, d = R − Q from the crank pin to the follower pivot, F = 2 R×Q
+// and, seen from the frame, m the vector along the crank. The first and second
+// derivative of m + R = Q + const are, with the crank's ω and α,
+//
+//	ω×m + ω3×R − ω4×Q = 0,  α×m − ω²m + α3×R − ω3²R − α4×Q + ω4²Q = 0
+//
+// and their scalar products with Q and R, for R·R = b², Q·Q = c² and R·Q = −x/2,
+// x = d² − b² − c²,
+//
+//	ω3 = −2ω m×Q/F,  α3 = −2(α m×Q − ω² m·Q + ω3² x/2 + ω4² c²)/F
+//	ω4 = −2ω m×R/F,  α4 = −2(α m×R − ω² m·R − ω3² b² − ω4² x/2)/F
+//
+// A crank much longer than the frame has all links turn almost as one, and seen from
+// the frame their accelerations are small differences of large terms. There it looks
+// from the crank, with −m the vector along the frame, which turns at −ω: ω×m and α×m
+// keep their signs, ω²m changes its own, and ω and α are added in the end.
+type kernel struct {
+	base, arm      float64 // Frame and Crank
+	long           bool    // whether the crank is longer than the frame
+	side           float64 // +1 for Open, −1 for Crossed
+	least          float64 // Margin above which nothing is out of the ordinary
+	g, h, ig       float64 // 2bc, bc, 1/2bc
+	n, m           float64 // b² + c², (b − c)(b + c)
+	s, e           float64 // (b + c)², (b − c)²
+	hb, hc, bb, cc float64 // 1/2b, 1/2c, 2b², 2c²
+}
+
+func (l *Linkage) newKernel() kernel {
+	b, c := l.coupler, l.follower
+	k := kernel{
+		base: l.frame, arm: l.crank, long: l.crank > l.frame, side: l.side,
+		g: 2 * b * c, h: b * c, ig: 1 / (2 * b * c),
+		n: b*b + c*c, m: (b - c) * (b + c),
+		s: (b + c) * (b + c), e: (b - c) * (b - c),
+		hb: 0.5 / b, hc: 0.5 / c, bb: 2 * b * b, cc: 2 * c * c,
+	}
+	k.least = max(rigid.LeastMargin, l.byCrank.near)
+	if l.dim.Branch > Crossed || l.longest > 1e6*min(l.frame, l.crank, b, c) {
+		k.least = math.Inf(1)
+	}
+	return k
+}

@@ -21,6 +21,10 @@ type winding struct {
 	middle float64
 	fold   bool
 	about  float64 // 0 or π, the middle of the crank's range
+
+	// The angles half a turn from middle, between which the angle is right as it comes;
+	// none where the follower turns.
+	least, most float64
 }
 
 // newWinding finds the winding of a linkage. Let β be the angle of the line d from
@@ -37,40 +41,53 @@ type winding struct {
 func (l *Linkage) newWinding() winding {
 	switch {
 	case l.dim.Branch == Parallel:
-		return winding{turns: 1}
+		return turning(1, 0)
 	case l.dim.Branch == Contrary && l.crank > l.frame:
-		return winding{turns: 1}
+		return turning(1, 0)
 	case l.dim.Branch == Contrary:
-		return winding{turns: -1}
+		return turning(-1, 0)
 	case !l.crankTurns() && !l.followerTurns():
 		if folded, _ := l.limited(l.frame, l.follower, l.coupler, l.crank); folded {
-			return winding{middle: 0}
+			return swinging(0)
 		}
-		return winding{middle: math.Pi}
+		return swinging(math.Pi)
 	case l.crank <= l.frame:
-		return winding{middle: l.side * math.Pi / 2}
+		return swinging(l.side * math.Pi / 2)
 	}
-	w := winding{turns: 1, middle: -l.side * math.Pi / 2, fold: !l.crankTurns()}
+	w := turning(1, -l.side*math.Pi/2)
+	w.fold = !l.crankTurns()
 	if _, stretched := l.limited(l.frame, l.crank, l.coupler, l.follower); !stretched {
 		w.about = math.Pi
 	}
 	return w
 }
 
+func swinging(middle float64) winding {
+	return winding{middle: middle, least: middle - math.Pi, most: middle + math.Pi}
+}
+
+func turning(turns, middle float64) winding {
+	return winding{turns: turns, middle: middle, least: math.Inf(1)}
+}
+
 // swing returns Swing.Pos for a crank angle and the follower's axis.
 func (l *Linkage) swing(turn float64, follower r2.Vec) float64 {
-	a := trig.Angle(follower.X, follower.Y)
-	if l.winding.turns == 0 {
-		switch {
-		case a < l.winding.middle-math.Pi:
-			a += rigid.Revolution
-		case a > l.winding.middle+math.Pi:
-			a -= rigid.Revolution
+	return l.wind(turn, trig.Angle(follower.X, follower.Y))
+}
+
+// wind returns Swing.Pos for a crank angle and the follower's angle in [−π, π].
+func (l *Linkage) wind(turn, angle float64) float64 {
+	w := &l.winding
+	switch {
+	case w.turns != 0:
+		if w.fold {
+			turn = rigid.Nearest(turn, w.about)
 		}
-		return a
+		return rigid.Nearest(angle, w.middle+w.turns*turn)
+	case angle < w.least:
+		return angle + rigid.Revolution
+	case angle > w.most:
+		return angle - rigid.Revolution
 	}
-	if l.winding.fold {
-		turn = rigid.Nearest(turn, l.winding.about)
-	}
-	return rigid.Nearest(a, l.winding.middle+l.winding.turns*turn)
+	return angle
 }

@@ -43,23 +43,33 @@ func Sincos(angle float64) (sin, cos float64) {
 
 // Angle returns the angle of the vector (x, y), of length 1 within rounding, in
 // [−π, π], in error by at most 3 × 2⁻⁵² of itself.
-func Angle(x, y float64) float64 {
+func Angle(x, y float64) float64 { return AngleOf(x, y, 1) }
+
+// AngleOf is Angle for a vector of length 1 within 1e-8, over the inverse of its
+// length, so that an inner loop need not wait for the vector to be brought to it.
+func AngleOf(x, y, over float64) float64 {
 	xx, yy := x*x, y*y
 	var t float64 // the angle in steps, within half a one of the nearest
-	switch {
-	case yy > xx && y > 0:
-		t = (steps/4 - x*(1/step+asin3*xx)) + round
-	case yy > xx:
-		t = (x*(1/step+asin3*xx) - steps/4) + round
-	case x > 0:
-		t = y*(1/step+asin3*yy) + round
-	case y < 0:
-		t = round - (y*(1/step+asin3*yy) + steps/2)
-	default:
-		t = round - (y*(1/step+asin3*yy) - steps/2)
+	if yy > xx {
+		t = x * (1/step + asin3*xx)
+		if y > 0 {
+			t = (steps/4 - t) + round
+		} else {
+			t = (t - steps/4) + round
+		}
+	} else {
+		t = y * (1/step + asin3*yy)
+		switch {
+		case x > 0:
+			t += round
+		case y < 0:
+			t = round - (t + steps/2)
+		default:
+			t = round - (t - steps/2)
+		}
 	}
 	at := &directions[math.Float64bits(t)%steps]
-	s := y*at.c - x*at.s // the sine of the rest
+	s := over * (y*at.c - x*at.s) // the sine of the rest
 	q := s * s
 	return (t-round)*step + (s + s*q*(1./6+q*(3./40+q*(15./336))))
 }
