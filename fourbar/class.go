@@ -3,8 +3,8 @@ package fourbar
 import (
 	"math"
 	"slices"
-	"strconv"
 
+	"example.com/twopoint/internal/enum"
 	"example.com/twopoint/rigid"
 )
 
@@ -33,37 +33,21 @@ const (
 	Rhombus                 // all links equal
 )
 
-var classNames = [...]string{
+var classes = enum.Names[Class]{Type: "Class", Wrong: rigid.ErrInput, Of: []string{
 	"no class", "crank-rocker", "double-crank", "rocker-crank", "double-rocker", "triple-rocker",
 	"change-point crank-rocker", "change-point double-crank", "change-point rocker-crank", "change-point double-rocker",
 	"parallelogram", "kite", "rhombus",
-}
+}}
 
 // String returns the class's name in lower case.
-func (c Class) String() string {
-	if int(c) < len(classNames) {
-		return classNames[c]
-	}
-	return "Class(" + strconv.Itoa(int(c)) + ")"
-}
+func (c Class) String() string { return classes.String(c) }
 
 // MarshalText returns the class's name in lower case; ErrInput for an unknown one.
-func (c Class) MarshalText() ([]byte, error) {
-	if int(c) >= len(classNames) {
-		return nil, rigid.ErrInput
-	}
-	return []byte(classNames[c]), nil
-}
+func (c Class) MarshalText() ([]byte, error) { return classes.Text(c) }
 
-// UnmarshalText reads a class's name in lower case; anything else is ErrInput.
-func (c *Class) UnmarshalText(text []byte) error {
-	i := slices.Index(classNames[:], string(text))
-	if i < 0 {
-		return rigid.ErrInput
-	}
-	*c = Class(i)
-	return nil
-}
+// UnmarshalText reads a class's name in lower case; any other text is an error that
+// wraps ErrInput and tells the names.
+func (c *Class) UnmarshalText(text []byte) error { return classes.Read(c, text) }
 
 // ChangePoint reports whether all links can fall into one line.
 func (c Class) ChangePoint() bool { return ChangePointCrankRocker <= c && c <= Rhombus }

@@ -1,10 +1,10 @@
 package fourbar
 
 import (
-	"errors"
 	"math"
-	"strconv"
 
+	"example.com/twopoint/internal/dims"
+	"example.com/twopoint/internal/enum"
 	"example.com/twopoint/rigid"
 )
 
@@ -39,81 +39,39 @@ const (
 	Contrary               // crank and follower symmetric about an axis: the antiparallelogram; Frame ≠ Crank
 )
 
-var branchNames = [...]string{"open", "crossed", "parallel", "contrary"}
+var branches = enum.Names[Branch]{Type: "Branch", Wrong: rigid.ErrInput, Of: []string{"open", "crossed", "parallel", "contrary"}}
 
 // String returns the branch's name in lower case.
-func (b Branch) String() string {
-	if int(b) < len(branchNames) {
-		return branchNames[b]
-	}
-	return "Branch(" + strconv.Itoa(int(b)) + ")"
-}
+func (b Branch) String() string { return branches.String(b) }
 
 // MarshalText returns the branch's name in lower case; ErrInput for an unknown one.
-func (b Branch) MarshalText() ([]byte, error) {
-	if int(b) >= len(branchNames) {
-		return nil, rigid.ErrInput
-	}
-	return []byte(branchNames[b]), nil
-}
+func (b Branch) MarshalText() ([]byte, error) { return branches.Text(b) }
 
-// UnmarshalText reads a branch's name in lower case; anything else is ErrInput.
-func (b *Branch) UnmarshalText(text []byte) error {
-	for i, name := range branchNames {
-		if name == string(text) {
-			*b = Branch(i)
-			return nil
-		}
-	}
-	return rigid.ErrInput
-}
+// UnmarshalText reads a branch's name in lower case; any other text is an error that
+// wraps ErrInput and tells the names.
+func (b *Branch) UnmarshalText(text []byte) error { return branches.Read(b, text) }
 
-// Lengths that the library takes, in m. Between them no product of four lengths
-// overflows or underflows.
-const (
-	leastLength    = 1e-60
-	greatestLength = 1e60
+// Causes for which dimensions are refused.
+var (
+	errClose   = dims.Because(rigid.ErrUnreachable, "the longest link must be shorter than the other three together")
+	errBranch  = dims.Because(rigid.ErrInput, "the branches are Open, Crossed, Parallel and Contrary")
+	errUnequal = dims.Because(rigid.ErrInput, "a parallelogram needs Frame = Coupler and Crank = Follower")
+	errRhombus = dims.Because(rigid.ErrChangePoint, "Contrary needs Frame ≠ Crank")
 )
 
 // check returns every *rigid.DimensionError of the dimensions, joined.
 func (d Dimensions) check() error {
-	var errs []error
-	report := func(name string, value float64, cause error) {
-		if cause != nil {
-			errs = append(errs, &rigid.DimensionError{Name: name, Value: value, Err: cause})
-		}
+	var f dims.Faults
+	f.Length("Frame", d.Frame)
+	f.Length("Crank", d.Crank)
+	f.Length("Coupler", d.Coupler)
+	f.Length("Follower", d.Follower)
+	f.Mount(d.Mount)
+	if f.OK() {
+		f.Add("", 0, d.closeError())
+		f.Add("Branch", float64(d.Branch), d.branchError())
 	}
-	report("Frame", d.Frame, lengthError(d.Frame))
-	report("Crank", d.Crank, lengthError(d.Crank))
-	report("Coupler", d.Coupler, lengthError(d.Coupler))
-	report("Follower", d.Follower, lengthError(d.Follower))
-	report("Mount.X", d.Mount.X, finiteError(d.Mount.X))
-	report("Mount.Y", d.Mount.Y, finiteError(d.Mount.Y))
-	report("Mount.Angle", d.Mount.Angle, finiteError(d.Mount.Angle))
-	if len(errs) == 0 {
-		report("", 0, d.closeError())
-		report("Branch", float64(d.Branch), d.branchError())
-	}
-	return errors.Join(errs...)
-}
-
-func lengthError(x float64) error {
-	switch {
-	case finiteError(x) != nil:
-		return rigid.ErrNotFinite
-	case x <= 0:
-		return rigid.ErrNotPositive
-	case x < leastLength || x > greatestLength:
-		return rigid.ErrInput
-	}
-	return nil
-}
-
-func finiteError(x float64) error {
-	if math.IsNaN(x) || math.IsInf(x, 0) {
-		return rigid.ErrNotFinite
-	}
-	return nil
+	return f.Err()
 }
 
 // closeError reports whether the links close at no crank angle: the longest is
@@ -122,7 +80,7 @@ func finiteError(x float64) error {
 func (d Dimensions) closeError() error {
 	l := d.longest()
 	if rest := d.Frame + d.Crank + d.Coupler + d.Follower - l; rest-l <= equal*l {
-		return rigid.ErrUnreachable
+		return errClose
 	}
 	return nil
 }
@@ -137,12 +95,12 @@ func (d Dimensions) branchError() error {
 	case Parallel, Contrary:
 		tol := 1e-12 * d.longest()
 		if math.Abs(d.Frame-d.Coupler) > tol || math.Abs(d.Crank-d.Follower) > tol {
-			return rigid.ErrInput
+			return errUnequal
 		}
 		if d.Branch == Contrary && math.Abs(d.Frame-d.Crank) <= tol {
-			return rigid.ErrChangePoint
+			return errRhombus
 		}
 		return nil
 	}
-	return rigid.ErrInput
+	return errBranch
 }

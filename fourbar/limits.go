@@ -4,8 +4,8 @@ import (
 	"cmp"
 	"math"
 	"slices"
-	"strconv"
 
+	"example.com/twopoint/internal/enum"
 	"example.com/twopoint/rigid"
 )
 
@@ -33,33 +33,17 @@ const (
 	ChangePoint
 )
 
-var limitNames = [...]string{"follower, stretched", "follower, folded", "crank, stretched", "crank, folded", "change point"}
+var limitKinds = enum.Names[LimitKind]{Type: "LimitKind", Wrong: rigid.ErrInput, Of: []string{"follower, stretched", "follower, folded", "crank, stretched", "crank, folded", "change point"}}
 
 // String returns which link has its limit and how the other two lie.
-func (k LimitKind) String() string {
-	if int(k) < len(limitNames) {
-		return limitNames[k]
-	}
-	return "LimitKind(" + strconv.Itoa(int(k)) + ")"
-}
+func (k LimitKind) String() string { return limitKinds.String(k) }
 
 // MarshalText returns the text of String; ErrInput for an unknown kind.
-func (k LimitKind) MarshalText() ([]byte, error) {
-	if int(k) >= len(limitNames) {
-		return nil, rigid.ErrInput
-	}
-	return []byte(limitNames[k]), nil
-}
+func (k LimitKind) MarshalText() ([]byte, error) { return limitKinds.Text(k) }
 
-// UnmarshalText reads the text of String; anything else is ErrInput.
-func (k *LimitKind) UnmarshalText(text []byte) error {
-	i := slices.Index(limitNames[:], string(text))
-	if i < 0 {
-		return rigid.ErrInput
-	}
-	*k = LimitKind(i)
-	return nil
-}
+// UnmarshalText reads the text of String; any other text is an error that
+// wraps ErrInput and tells the names.
+func (k *LimitKind) UnmarshalText(text []byte) error { return limitKinds.Read(k, text) }
 
 // Limits returns the extremes of follower and crank and the change points on the
 // linkage's branch, in order of Turn. Solve accepts each at rest. Parallel and

@@ -198,10 +198,10 @@ func TestBranchText(t *testing.T) {
 		}
 	}
 	b := fourbar.Branch(7)
-	if _, err := b.MarshalText(); err != rigid.ErrInput || b.String() != "Branch(7)" {
+	if _, err := b.MarshalText(); !errors.Is(err, rigid.ErrInput) || b.String() != "Branch(7)" {
 		t.Errorf("%v: %v", b, err)
 	}
-	if err := b.UnmarshalText([]byte("Open")); err != rigid.ErrInput || b != 7 {
+	if err := b.UnmarshalText([]byte("Open")); !errors.Is(err, rigid.ErrInput) || b != 7 {
 		t.Errorf("unknown text: %v, %v", b, err)
 	}
 }

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"math"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/rigid"
 )
 
@@ -48,11 +49,11 @@ type Generator struct {
 // ErrNotFinite for an angle that is not finite, and for a frame that
 // is no length a *rigid.DimensionError.
 func Freudenstein(frame float64, at [3]Precision) (Generator, error) {
-	if err := lengthError(frame); err != nil {
+	if err := dims.Length(frame); err != nil {
 		return Generator{}, &rigid.DimensionError{Name: "Frame", Value: frame, Err: err}
 	}
 	for _, p := range at {
-		if finiteError(p.Turn-p.Swing) != nil || finiteError(p.Turn+p.Swing) != nil {
+		if dims.Number(p.Turn-p.Swing) != nil || dims.Number(p.Turn+p.Swing) != nil {
 			return Generator{}, rigid.ErrNotFinite
 		}
 	}

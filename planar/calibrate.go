@@ -147,8 +147,8 @@ func (s *State) fitter(log iter.Seq2[Sample, error], c Calibration) (*fitter, er
 	for i, o := range c.Outputs {
 		check.drive(i, o)
 	}
-	if len(check.errs) > 0 {
-		return nil, fmt.Errorf("outputs: %w", errors.Join(check.errs...))
+	if !check.OK() {
+		return nil, fmt.Errorf("outputs: %w", errors.Join(check.Faults...))
 	}
 	for i, m := range c.By {
 		if len(m.Of) == 0 {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/rigid"
 	"gonum.org/v1/gonum/spatial/r2"
 )
@@ -244,7 +245,7 @@ func (r Roller) check() error {
 	if err := r.On.check(); err != nil {
 		return err
 	}
-	if r.Radius < 0 || r.Radius > longest {
+	if r.Radius < 0 || r.Radius > dims.Greatest {
 		return &rigid.DimensionError{Name: "Radius", Value: r.Radius, Err: rigid.ErrInput}
 	}
 	return finiteAll("Radius", r.Radius, "X", r.Centre.X, "Y", r.Centre.Y)

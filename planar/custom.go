@@ -35,7 +35,7 @@ func (c *checker) custom(at string, j Custom) {
 	}
 	if own, ok := j.By.(checkable); ok {
 		if err := own.check(); err != nil {
-			c.errs = append(c.errs, fmt.Errorf("%s: %w", at, err))
+			c.Faults = append(c.Faults, fmt.Errorf("%s: %w", at, err))
 			return
 		}
 	}

@@ -58,29 +58,6 @@ const (
 	Phase
 )
 
-var (
-	endNames  = [...]string{"a", "b", "arm"}
-	partNames = [...]string{"x", "y", "angle", "radiusA", "radiusB", "phase"}
-)
-
-// String returns "a", "b" or "arm".
-func (e End) String() string { return called("End", endNames[:], uint8(e)) }
-
-// MarshalText returns what String does; rigid.ErrInput for a value that is no End.
-func (e End) MarshalText() ([]byte, error) { return textOf(endNames[:], uint8(e)) }
-
-// UnmarshalText reads "a", "b" or "arm"; anything else is rigid.ErrInput.
-func (e *End) UnmarshalText(text []byte) error { return readText((*uint8)(e), endNames[:], text) }
-
-// String returns "x", "y", "angle", "radiusA", "radiusB" or "phase".
-func (p Part) String() string { return called("Part", partNames[:], uint8(p)) }
-
-// MarshalText returns what String does; rigid.ErrInput for a value that is no Part.
-func (p Part) MarshalText() ([]byte, error) { return textOf(partNames[:], uint8(p)) }
-
-// UnmarshalText reads what String returns; anything else is rigid.ErrInput.
-func (p *Part) UnmarshalText(text []byte) error { return readText((*uint8)(p), partNames[:], text) }
-
 // Hole returns the dimension of which every entry is part p of an attachment equal
 // to a, or of a line that starts there. It has no entries where there is none.
 func (d *Design) Hole(a Attachment, p Part) Dimension {

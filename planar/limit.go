@@ -4,6 +4,7 @@ import (
 	"errors"
 	"math"
 
+	"example.com/twopoint/internal/enum"
 	"example.com/twopoint/rigid"
 )
 
@@ -25,18 +26,18 @@ const (
 	Blocked                      // a redundant constraint breaks
 )
 
-var limitNames = [...]string{"no limit", "end of the drive", "change point", "blocked"}
+var limitKinds = enum.Names[LimitKind]{Type: "LimitKind", Wrong: rigid.ErrInput,
+	Of: []string{"no limit", "end of the drive", "change point", "blocked"}}
 
 // String returns the kind in lower case.
-func (k LimitKind) String() string { return called("LimitKind", limitNames[:], uint8(k)) }
+func (k LimitKind) String() string { return limitKinds.String(k) }
 
 // MarshalText returns what String does; rigid.ErrInput for a value that is no kind.
-func (k LimitKind) MarshalText() ([]byte, error) { return textOf(limitNames[:], uint8(k)) }
+func (k LimitKind) MarshalText() ([]byte, error) { return limitKinds.Text(k) }
 
-// UnmarshalText reads what String returns; anything else is rigid.ErrInput.
-func (k *LimitKind) UnmarshalText(text []byte) error {
-	return readText((*uint8)(k), limitNames[:], text)
-}
+// UnmarshalText reads what String returns; any other text is an error that wraps
+// rigid.ErrInput and tells the names.
+func (k *LimitKind) UnmarshalText(text []byte) error { return limitKinds.Read(k, text) }
 
 // Limits returns how far the one drive can go from where it stands, down and up, to
 // the first position in the interval that is singular for it, to 1e-10 of a radian

@@ -128,7 +128,7 @@ func TestEndsAsText(t *testing.T) {
 		}
 	}
 	var e End
-	if err := e.UnmarshalText([]byte("c")); err != rigid.ErrInput {
+	if err := e.UnmarshalText([]byte("c")); !errors.Is(err, rigid.ErrInput) {
 		t.Error(err)
 	}
 }

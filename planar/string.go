@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strings"
 
+	"example.com/twopoint/internal/enum"
 	"example.com/twopoint/rigid"
 )
 
@@ -137,33 +138,18 @@ func (d Design) String() string {
 	return text.String()
 }
 
+var kindNames = enum.Names[Kind]{Type: "Kind", Wrong: rigid.ErrInput,
+	Of: []string{NoDyad: "no dyad", RRR: "RRR", RRP: "RRP", RPR: "RPR", PRP: "PRP", RPP: "RPP"}}
+
 // String returns the kind as its joints, "RRR", or "no dyad".
-func (k Kind) String() string {
-	names := [...]string{NoDyad: "no dyad", RRR: "RRR", RRP: "RRP", RPR: "RPR", PRP: "PRP", RPP: "RPP"}
-	if int(k) < len(names) {
-		return names[k]
-	}
-	return fmt.Sprintf("kind %d", int(k))
-}
+func (k Kind) String() string { return kindNames.String(k) }
 
 // MarshalText returns the text of String; rigid.ErrInput for an unknown kind.
-func (k Kind) MarshalText() ([]byte, error) {
-	if k > RPP {
-		return nil, fmt.Errorf("%w: kind %d of a dyad", rigid.ErrInput, int(k))
-	}
-	return []byte(k.String()), nil
-}
+func (k Kind) MarshalText() ([]byte, error) { return kindNames.Text(k) }
 
-// UnmarshalText reads what MarshalText writes; rigid.ErrInput for any other text.
-func (k *Kind) UnmarshalText(text []byte) error {
-	for known := range RPP + 1 {
-		if known.String() == string(text) {
-			*k = known
-			return nil
-		}
-	}
-	return fmt.Errorf("%w: %q is no kind of dyad", rigid.ErrInput, text)
-}
+// UnmarshalText reads what MarshalText writes; any other text is an error that wraps
+// rigid.ErrInput and tells the names.
+func (k *Kind) UnmarshalText(text []byte) error { return kindNames.Read(k, text) }
 
 // String returns the links with the kind or the class: "link 2 + link 3, RRR".
 func (g Group) String() string { return naming(Link.String).group(g) }

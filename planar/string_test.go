@@ -27,7 +27,7 @@ func TestStrings(t *testing.T) {
 		"frame (0.05, 0) at 1.5 rad":     Frame.Line(0.05, 0, 1.5),
 		"no dyad":                        NoDyad,
 		"RPP":                            RPP,
-		"kind 9":                         Kind(9),
+		"Kind(9)":                        Kind(9),
 		"link 2 + link 3, RRP":           l.Groups()[1],
 		"crank, class 1; rod + ram, RRP": l,
 		"":                               &Linkage{},

@@ -1,33 +1,31 @@
 package planar
 
 import (
-	"fmt"
-	"slices"
-
+	"example.com/twopoint/internal/enum"
 	"example.com/twopoint/rigid"
 )
 
-// called, textOf and readText are String, MarshalText and UnmarshalText of
-// enumerations whose values have names.
-func called(kind string, names []string, i uint8) string {
-	if int(i) < len(names) {
-		return names[i]
-	}
-	return fmt.Sprintf("%s(%d)", kind, i)
-}
+var (
+	endNames  = enum.Names[End]{Type: "End", Wrong: rigid.ErrInput, Of: []string{"a", "b", "arm"}}
+	partNames = enum.Names[Part]{Type: "Part", Wrong: rigid.ErrInput, Of: []string{"x", "y", "angle", "radiusA", "radiusB", "phase"}}
+)
 
-func textOf(names []string, i uint8) ([]byte, error) {
-	if int(i) >= len(names) {
-		return nil, rigid.ErrInput
-	}
-	return []byte(names[i]), nil
-}
+// String returns "a", "b" or "arm".
+func (e End) String() string { return endNames.String(e) }
 
-func readText(to *uint8, names []string, text []byte) error {
-	i := slices.Index(names, string(text))
-	if i < 0 {
-		return rigid.ErrInput
-	}
-	*to = uint8(i)
-	return nil
-}
+// MarshalText returns what String does; rigid.ErrInput for a value that is no End.
+func (e End) MarshalText() ([]byte, error) { return endNames.Text(e) }
+
+// UnmarshalText reads "a", "b" or "arm"; any other text is an error that wraps
+// rigid.ErrInput and tells the names.
+func (e *End) UnmarshalText(text []byte) error { return endNames.Read(e, text) }
+
+// String returns "x", "y", "angle", "radiusA", "radiusB" or "phase".
+func (p Part) String() string { return partNames.String(p) }
+
+// MarshalText returns what String does; rigid.ErrInput for a value that is no Part.
+func (p Part) MarshalText() ([]byte, error) { return partNames.Text(p) }
+
+// UnmarshalText reads what String returns; any other text is an error that wraps
+// rigid.ErrInput and tells the names.
+func (p *Part) UnmarshalText(text []byte) error { return partNames.Read(p, text) }

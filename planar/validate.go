@@ -6,13 +6,8 @@ import (
 	"slices"
 	"strconv"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/rigid"
-)
-
-// Lengths lie between these, so that no product of four of them overflows.
-const (
-	shortest = 1e-60 // m
-	longest  = 1e60  // m
 )
 
 // validate reports every reference and number of the design that is of no use.
@@ -26,28 +21,35 @@ func (d *Design) validate() error {
 		c.drive(i, m)
 	}
 	c.guess()
-	if len(c.errs) == 0 {
-		if size := d.size(); size < shortest {
-			c.dimension("largest length", size, rigid.ErrInput)
+	if c.OK() {
+		if size := d.size(); size < dims.Least {
+			c.Add("largest length", size, errSmall)
 		}
 	}
-	if len(c.errs) == 0 {
+	if c.OK() {
 		return nil
 	}
-	return &DesignError{Err: sum(c.errs), Links: c.names(), Joints: c.joints, Drives: c.drives}
+	return &DesignError{Err: sum(c.Faults), Links: c.names(), Joints: c.joints, Drives: c.drives}
 }
+
+// Causes for which a number is refused.
+var (
+	errSmall = dims.Because(rigid.ErrInput, "no two points of a link are farther than 1e-60 m apart")
+	errPhase = dims.Because(rigid.ErrInput, "a pair as assembled reads its phase from the position: leave it 0")
+	errTeeth = dims.Because(rigid.ErrInput, "no more than 2⁴⁰ teeth are taken")
+)
 
 // A checker gathers what is wrong with a design.
 type checker struct {
+	dims.Faults
 	d              *Design
-	errs           []error
 	concerned      []Link
 	joints, drives []int
 }
 
 // wrong notes a reference of no use.
 func (c *checker) wrong(format string, args ...any) {
-	c.errs = append(c.errs, fmt.Errorf("%w: "+format, append([]any{ErrReference}, args...)...))
+	c.Faults = append(c.Faults, fmt.Errorf("%w: "+format, append([]any{ErrReference}, args...)...))
 }
 
 // names returns the names of the links concerned.
@@ -67,7 +69,7 @@ func (c *checker) links() {
 }
 
 func (c *checker) joint(i int, j Joint) {
-	before := len(c.errs)
+	before := len(c.Faults)
 	at := fmt.Sprintf("Joints[%d]", i)
 	switch j := j.(type) {
 	case Revolute:
@@ -95,20 +97,20 @@ func (c *checker) joint(i int, j Joint) {
 		c.two(at, j.Pinion.Link, j.Rack.Link)
 		c.point(at+".Pinion", j.Pinion)
 		c.line(at+".Rack", j.Rack)
-		c.length(at+".Radius", j.Radius)
+		c.Length(at+".Radius", j.Radius)
 		c.phase(at, j.Phase, j.AsAssembled)
 	case Custom:
 		c.custom(at, j)
 	default:
 		c.wrong("%s is no joint but %T: a joint is a value of Revolute, Prismatic, SlidingPin, Fixed, GearPair, RackPair or Custom", at, j)
 	}
-	if len(c.errs) > before {
+	if len(c.Faults) > before {
 		c.joints = append(c.joints, i)
 	}
 }
 
 func (c *checker) drive(i int, m Drive) {
-	before := len(c.errs)
+	before := len(c.Faults)
 	at := fmt.Sprintf("Drives[%d]", i)
 	switch m := m.(type) {
 	case Turn:
@@ -124,7 +126,7 @@ func (c *checker) drive(i int, m Drive) {
 	default:
 		c.wrong("%s is no drive but %T: a drive is a value of Turn, Slide or Reach", at, m)
 	}
-	if len(c.errs) > before {
+	if len(c.Faults) > before {
 		c.drives = append(c.drives, i)
 	}
 }
@@ -150,48 +152,20 @@ func (c *checker) concern(l Link) {
 }
 
 func (c *checker) point(at string, a Attachment) {
-	c.coordinate(at+".X", a.X)
-	c.coordinate(at+".Y", a.Y)
+	c.Distance(at+".X", a.X)
+	c.Distance(at+".Y", a.Y)
 }
 
 func (c *checker) line(at string, l Line) {
-	c.coordinate(at+".X", l.X)
-	c.coordinate(at+".Y", l.Y)
-	c.finite(at+".Angle", l.Angle)
-}
-
-func (c *checker) dimension(at string, value float64, err error) {
-	c.errs = append(c.errs, &rigid.DimensionError{Name: at, Value: value, Err: err})
-}
-
-// finite reports whether value is a number, and notes it if not.
-func (c *checker) finite(at string, value float64) bool {
-	ok := !math.IsNaN(value) && !math.IsInf(value, 0)
-	if !ok {
-		c.dimension(at, value, rigid.ErrNotFinite)
-	}
-	return ok
-}
-
-func (c *checker) coordinate(at string, value float64) {
-	if c.finite(at, value) && math.Abs(value) > longest {
-		c.dimension(at, value, rigid.ErrInput)
-	}
-}
-
-func (c *checker) length(at string, value float64) {
-	switch {
-	case !c.finite(at, value):
-	case value <= 0:
-		c.dimension(at, value, rigid.ErrNotPositive)
-	case value < shortest || value > longest:
-		c.dimension(at, value, rigid.ErrInput)
-	}
+	c.Distance(at+".X", l.X)
+	c.Distance(at+".Y", l.Y)
+	c.Number(at+".Angle", l.Angle)
 }
 
 func (c *checker) phase(at string, phase float64, asAssembled bool) {
-	if c.finite(at+".Phase", phase) && asAssembled && phase != 0 {
-		c.dimension(at+".Phase", phase, rigid.ErrInput)
+	c.Number(at+".Phase", phase)
+	if asAssembled && phase*0 == 0 && phase != 0 {
+		c.Add(at+".Phase", phase, errPhase)
 	}
 }
 
@@ -206,13 +180,13 @@ func (c *checker) gears(at string, g GearPair) {
 		c.teeth(at+".TeethB", g.TeethB)
 	}
 	if radii {
-		c.length(at+".RadiusA", g.RadiusA)
-		c.length(at+".RadiusB", g.RadiusB)
+		c.Length(at+".RadiusA", g.RadiusA)
+		c.Length(at+".RadiusB", g.RadiusB)
 	}
 	if teeth && radii && g.TeethB > 0 && g.RadiusB > 0 {
 		byTeeth, byRadii := float64(g.TeethA)/float64(g.TeethB), g.RadiusA/g.RadiusB
 		if math.Abs(byTeeth-byRadii) > 1e-9*byTeeth {
-			c.dimension(at+".RadiusA", g.RadiusA, fmt.Errorf("the radii's ratio %g is not the teeth's %g: %w", byRadii, byTeeth, rigid.ErrInput))
+			c.Add(at+".RadiusA", g.RadiusA, fmt.Errorf("the radii's ratio %g is not the teeth's %g: %w", byRadii, byTeeth, rigid.ErrInput))
 		}
 	}
 }
@@ -221,9 +195,9 @@ func (c *checker) teeth(at string, n int) {
 	const most = 1 << 40 // beyond it a ratio of two is no longer exact
 	switch {
 	case n <= 0:
-		c.dimension(at, float64(n), rigid.ErrNotPositive)
+		c.Add(at, float64(n), rigid.ErrNotPositive)
 	case int64(n) > most:
-		c.dimension(at, float64(n), rigid.ErrInput)
+		c.Add(at, float64(n), errTeeth)
 	}
 }
 
@@ -237,9 +211,9 @@ func (c *checker) guess() {
 	}
 	for i, g := range c.d.Guess[1:] {
 		at := fmt.Sprintf("Guess[%d]", i+1)
-		c.coordinate(at+".X", g.X)
-		c.coordinate(at+".Y", g.Y)
-		c.finite(at+".Angle", g.Angle)
+		c.Distance(at+".X", g.X)
+		c.Distance(at+".Y", g.Y)
+		c.Number(at+".Angle", g.Angle)
 	}
 }
 

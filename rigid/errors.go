@@ -2,6 +2,7 @@ package rigid
 
 import (
 	"errors"
+	"math"
 	"strconv"
 	"strings"
 )
@@ -37,8 +38,8 @@ var (
 // errors.AsType[*DimensionError] finds the first, errors.Is the cause.
 type DimensionError struct {
 	Name  string  // path of the field, or name of the member; empty where no one field is to blame
-	Value float64 // as given
-	Err   error   // ErrNotPositive, ErrNotFinite, ErrUnreachable, ErrChangePoint, ErrInput or ErrSingular
+	Value float64 // as given; NaN too where a part, not a number, is to blame
+	Err   error   // to errors.Is one of ErrNotPositive, ErrNotFinite, ErrUnreachable, ErrChangePoint, ErrInput and ErrSingular
 }
 
 // Error returns a message that begins with "twopoint: ".
@@ -47,8 +48,11 @@ func (e *DimensionError) Error() string {
 	if e.Err != nil {
 		cause = strings.TrimPrefix(e.Err.Error(), "twopoint: ") // Error says it already
 	}
-	if e.Name == "" {
+	switch {
+	case e.Name == "":
 		return "twopoint: dimensions: " + cause
+	case math.IsNaN(e.Value) && e.Err != ErrNotFinite:
+		return "twopoint: " + e.Name + ": " + cause
 	}
 	return "twopoint: dimension " + e.Name + " = " + strconv.FormatFloat(e.Value, 'g', -1, 64) + ": " + cause
 }

@@ -31,6 +31,7 @@ func TestDimensionError(t *testing.T) {
 	}{
 		{rigid.DimensionError{Name: "Rod", Value: -0.2, Err: rigid.ErrNotPositive}, "twopoint: dimension Rod = -0.2: must be positive"},
 		{rigid.DimensionError{Name: "Mount.X", Value: math.NaN(), Err: rigid.ErrNotFinite}, "twopoint: dimension Mount.X = NaN: number not finite"},
+		{rigid.DimensionError{Name: "ring", Value: math.NaN(), Err: rigid.ErrInput}, "twopoint: ring: wrong input"},
 		{rigid.DimensionError{Err: rigid.ErrUnreachable}, "twopoint: dimensions: out of reach of the links"},
 		{rigid.DimensionError{}, "twopoint: dimensions: unknown cause"},
 		{rigid.DimensionError{Name: "Rod", Err: errors.New("twopoint: ")}, "twopoint: dimension Rod = 0: "},

@@ -1,6 +1,6 @@
 package rigid
 
-import "strconv"
+import "example.com/twopoint/internal/enum"
 
 // A Side is a side of a directed line. A knee is the side, of the line from the
 // crank pivot to the follower or slider pin, on which the crank pin lies.
@@ -12,34 +12,14 @@ const (
 	Right             // clockwise of it
 )
 
+var sides = enum.Names[Side]{Type: "Side", Wrong: ErrInput, Of: []string{"left", "right"}}
+
 // String returns "left" or "right".
-func (s Side) String() string {
-	switch s {
-	case Left:
-		return "left"
-	case Right:
-		return "right"
-	}
-	return "Side(" + strconv.Itoa(int(s)) + ")"
-}
+func (s Side) String() string { return sides.String(s) }
 
 // MarshalText returns "left" or "right"; ErrInput for any other value.
-func (s Side) MarshalText() ([]byte, error) {
-	if s != Left && s != Right {
-		return nil, ErrInput
-	}
-	return []byte(s.String()), nil
-}
+func (s Side) MarshalText() ([]byte, error) { return sides.Text(s) }
 
-// UnmarshalText reads "left" or "right"; anything else is ErrInput.
-func (s *Side) UnmarshalText(text []byte) error {
-	switch string(text) {
-	case "left":
-		*s = Left
-	case "right":
-		*s = Right
-	default:
-		return ErrInput
-	}
-	return nil
-}
+// UnmarshalText reads "left" or "right"; any other text is an error that wraps
+// ErrInput and tells the names.
+func (s *Side) UnmarshalText(text []byte) error { return sides.Read(s, text) }

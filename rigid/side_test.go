@@ -2,6 +2,7 @@ package rigid_test
 
 import (
 	"encoding/json"
+	"errors"
 	"testing"
 
 	"example.com/twopoint/rigid"
@@ -23,7 +24,7 @@ func TestSide(t *testing.T) {
 			t.Errorf("%q, want %q", got, c.text)
 		}
 		text, err := c.side.MarshalText()
-		if c.ok && (err != nil || string(text) != c.text) || !c.ok && (err != rigid.ErrInput || text != nil) {
+		if c.ok && (err != nil || string(text) != c.text) || !c.ok && (!errors.Is(err, rigid.ErrInput) || text != nil) {
 			t.Errorf("MarshalText of %v: %q, %v", c.side, text, err)
 		}
 	}
@@ -55,7 +56,7 @@ func FuzzSideText(f *testing.F) {
 			t.Fatalf("%q: %v", text, err)
 		}
 		if err != nil {
-			if err != rigid.ErrInput || side != 7 {
+			if !errors.Is(err, rigid.ErrInput) || side != 7 {
 				t.Errorf("%q: %v, side %v", text, err, side)
 			}
 			return

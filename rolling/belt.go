@@ -57,8 +57,8 @@ type Belt struct {
 // would touch.
 func NewBelt(d BeltDimensions) (*Belt, error) {
 	var r report
-	r.mount(d.Mount)
-	r.add("Centres", d.Centres, lengthError(d.Centres))
+	r.Mount(d.Mount)
+	r.Length("Centres", d.Centres)
 	if (d.TeethA != 0) != (d.TeethB != 0) {
 		r.teeth("TeethA", d.TeethA)
 		r.teeth("TeethB", d.TeethB)
@@ -66,11 +66,11 @@ func NewBelt(d BeltDimensions) (*Belt, error) {
 	p := &Belt{dim: d}
 	p.radiusA, p.perTurn = pitchRadius(&r, "RadiusA", d.RadiusA, "TeethA", d.TeethA, d.Pitch)
 	p.radiusB, _ = pitchRadius(&r, "RadiusB", d.RadiusB, "TeethB", d.TeethB, d.Pitch)
-	if r.ok() && d.Centres <= p.radiusA+p.radiusB {
-		r.add("Centres", d.Centres, rigid.ErrUnreachable)
+	if r.OK() && d.Centres <= p.radiusA+p.radiusB {
+		r.Add("Centres", d.Centres, errTouch)
 	}
-	if !r.ok() {
-		return nil, r.err()
+	if !r.OK() {
+		return nil, r.Err()
 	}
 	p.bOverA, p.aOverB = ratios(d.TeethA, d.TeethB, p.radiusA, p.radiusB, d.Crossed)
 	p.slide = p.perTurn.inverse()

@@ -32,19 +32,19 @@ const mostBend = 1e4
 func NewTrack(bends ...Bend) (Track, error) {
 	var r report
 	if len(bends) == 0 {
-		r.add("bends", 0, rigid.ErrInput)
+		r.Add("bends", 0, errBends)
 	}
 	for i, b := range bends {
 		path := "bends[" + strconv.Itoa(i) + "]."
-		r.add(path+"Length", b.Length, lengthError(b.Length))
-		r.finite(path+"From", b.From)
-		r.finite(path+"To", b.To)
-		if r.ok() && b.turning() > mostBend {
-			r.add(path+"Length", b.Length, rigid.ErrInput)
+		r.Length(path+"Length", b.Length)
+		r.Number(path+"From", b.From)
+		r.Number(path+"To", b.To)
+		if r.OK() && b.turning() > mostBend {
+			r.Add(path+"Length", b.Length, errBent)
 		}
 	}
-	if !r.ok() {
-		return nil, r.err()
+	if !r.OK() {
+		return nil, r.Err()
 	}
 	return course(bends).at, nil
 }

@@ -1,20 +1,6 @@
 package rolling
 
-import (
-	"fmt"
-	"math/big"
-
-	"example.com/twopoint/rigid"
-)
-
-// Causes for which a member is refused.
-var (
-	errTwice  = fmt.Errorf("%w: it occurs twice", rigid.ErrInput)
-	errSelf   = fmt.Errorf("%w: it meshes with itself or is its own arm", rigid.ErrInput)
-	errFree   = fmt.Errorf("%w: nothing determines its turn, a drive or a mesh is missing", rigid.ErrInput)
-	errDriven = fmt.Errorf("%w: the other drives determine its turn, one drive is too many", rigid.ErrInput)
-	errLocked = fmt.Errorf("%w: it cannot turn, the train is locked", rigid.ErrInput)
-)
+import "math/big"
 
 // A system is the meshes' equations, a row each, for the turns of all members but
 // the frame; the columns are those of the members that are not driven, then of the
@@ -35,15 +21,15 @@ func eliminate(d *TrainDesign, r *report) [][]*big.Rat {
 		found := s.pivot(len(pivots), c)
 		switch {
 		case found && c >= s.free:
-			r.add(d.name(m), float64(m), s.overdriven(len(pivots)))
+			r.member(d.name(m), s.overdriven(len(pivots)))
 		case !found && c < s.free:
-			r.add(d.name(m), float64(m), errFree)
+			r.member(d.name(m), errFree)
 		}
 		if found {
 			pivots = append(pivots, c)
 		}
 	}
-	if !r.ok() {
+	if !r.OK() {
 		return nil
 	}
 	return s.solution(d, pivots)

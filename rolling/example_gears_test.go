@@ -35,7 +35,7 @@ func ExamplePairDimensions() {
 	_, err := rolling.NewPair(rolling.PairDimensions{RadiusA: 0.0575, RadiusB: 0.2025, Centres: 0.27})
 	fmt.Println(err)
 	// Output:
-	// twopoint: dimension Centres = 0.27: wrong input: it contradicts the other dimensions
+	// twopoint: dimension Centres = 0.27: it contradicts the other dimensions
 }
 
 // The friction wheel that drives the glazing drum from inside hangs on a swinging arm.

@@ -53,7 +53,7 @@ func ExampleTrainDesign() {
 	_, err = rolling.NewTrain(d)
 	fmt.Println(err)
 	// Output:
-	// twopoint: dimension ring = 4: wrong input: nothing determines its turn, a drive or a mesh is missing
+	// twopoint: ring: nothing determines its turn, a drive or a mesh is missing
 	// <nil>
 }
 

@@ -62,36 +62,36 @@ type Pair struct {
 // touch everywhere, with the Name RadiusB or TeethB and ErrSingular.
 func NewPair(d PairDimensions) (*Pair, error) {
 	var r report
-	r.mount(d.Mount)
+	r.Mount(d.Mount)
 	toothed := d.TeethA != 0 || d.TeethB != 0
 	if toothed {
 		r.teeth("TeethA", d.TeethA)
 		r.teeth("TeethB", d.TeethB)
-		if r.ok() && d.Internal && d.TeethA == d.TeethB {
-			r.add("TeethB", float64(d.TeethB), errFills)
+		if r.OK() && d.Internal && d.TeethA == d.TeethB {
+			r.Add("TeethB", float64(d.TeethB), errFills)
 		}
 	}
 	if d.Centres != 0 || (toothed && d.RadiusA == 0 && d.RadiusB == 0) {
-		r.add("Centres", d.Centres, lengthError(d.Centres))
+		r.Length("Centres", d.Centres)
 	}
 	p := &Pair{dim: d, radiusA: d.RadiusA, radiusB: d.RadiusB}
-	if r.ok() && toothed && d.RadiusA == 0 && d.RadiusB == 0 {
+	if r.OK() && toothed && d.RadiusA == 0 && d.RadiusB == 0 {
 		sum := math.Abs(float64(d.TeethA) + p.sign()*float64(d.TeethB))
 		p.radiusA, p.radiusB = d.Centres*(float64(d.TeethA)/sum), d.Centres*(float64(d.TeethB)/sum)
 	}
-	r.add("RadiusA", p.radiusA, lengthError(p.radiusA))
-	r.add("RadiusB", p.radiusB, lengthError(p.radiusB))
-	if r.ok() && d.Internal && same(p.radiusA, p.radiusB) {
-		r.add("RadiusB", d.RadiusB, errFills)
+	r.Length("RadiusA", p.radiusA)
+	r.Length("RadiusB", p.radiusB)
+	if r.OK() && d.Internal && same(p.radiusA, p.radiusB) {
+		r.Add("RadiusB", d.RadiusB, errFills)
 	}
-	if r.ok() && toothed {
+	if r.OK() && toothed {
 		r.agrees("RadiusB", p.radiusB, p.radiusA/float64(d.TeethA)*float64(d.TeethB))
 	}
-	if r.ok() && d.Centres != 0 {
+	if r.OK() && d.Centres != 0 {
 		r.agrees("Centres", d.Centres, math.Abs(p.radiusA+p.sign()*p.radiusB))
 	}
-	if !r.ok() {
-		return nil, r.err()
+	if !r.OK() {
+		return nil, r.Err()
 	}
 	p.bOverA, p.aOverB = ratios(d.TeethA, d.TeethB, p.radiusA, p.radiusB, !d.Internal)
 	p.radiusB *= p.sign()

@@ -3,8 +3,6 @@ package rolling
 import (
 	"errors"
 	"math"
-
-	"example.com/twopoint/rigid"
 )
 
 // Causes for which the gears of a planetary stage do not fit together.
@@ -49,10 +47,10 @@ func (p Planetary) Meshes(sun, planet, ring, carrier Member) []Mesh {
 // below one ErrNotPositive, above 1e9 ErrInput.
 func (p Planetary) CheckTeeth() error {
 	r := p.check()
-	if r.ok() && int64(p.Ring) != int64(p.Sun)+int64(p.Planet)+int64(p.step()) {
-		r.add("Ring", float64(p.Ring), ErrTeeth)
+	if r.OK() && int64(p.Ring) != int64(p.Sun)+int64(p.Planet)+int64(p.step()) {
+		r.Add("Ring", float64(p.Ring), ErrTeeth)
 	}
-	return r.err()
+	return r.Err()
 }
 
 // CheckSpacing reports whether the planets, all alike, can be assembled at equal
@@ -66,14 +64,14 @@ func (p Planetary) CheckTeeth() error {
 // ErrSpacing; other errors as CheckTeeth, and ErrNotPositive without planets.
 func (p Planetary) CheckSpacing() error {
 	r := p.checkPlanets()
-	if r.ok() {
+	if r.OK() {
 		planet, step := int64(p.Planet), int64(p.step())
 		meets := int64(p.Sun)*step + int64(p.Ring)*planet
 		if meets/gcd(planet, step)%int64(p.Planets) != 0 {
-			r.add("Planets", float64(p.Planets), ErrSpacing)
+			r.Add("Planets", float64(p.Planets), ErrSpacing)
 		}
 	}
-	return r.err()
+	return r.Err()
 }
 
 // CheckNeighbours reports whether equally spaced planets stay clear of each other,
@@ -86,10 +84,10 @@ func (p Planetary) CheckSpacing() error {
 func (p Planetary) CheckNeighbours() error {
 	r := p.checkPlanets()
 	chord := float64(p.Sun+p.Planet) * math.Sin(math.Pi/float64(p.Planets))
-	if r.ok() && p.Planets > 1 && chord <= float64(max(p.Planet, p.Step)+2) {
-		r.add("Planets", float64(p.Planets), ErrNeighbours)
+	if r.OK() && p.Planets > 1 && chord <= float64(max(p.Planet, p.Step)+2) {
+		r.Add("Planets", float64(p.Planets), ErrNeighbours)
 	}
-	return r.err()
+	return r.Err()
 }
 
 // step returns the teeth of the planet's gear that meshes with the ring.
@@ -118,7 +116,7 @@ func (p Planetary) checkPlanets() *report {
 func (p Planetary) count(r *report, name string, z int) {
 	r.teeth(name, z)
 	if z > mostTeeth {
-		r.add(name, float64(z), rigid.ErrInput)
+		r.Add(name, float64(z), errMany)
 	}
 }
 

@@ -55,11 +55,11 @@ type Rack struct {
 // other are refused with ErrInput.
 func NewRack(d RackDimensions) (*Rack, error) {
 	var r report
-	r.mount(d.Mount)
+	r.Mount(d.Mount)
 	p := &Rack{dim: d}
 	p.radius, p.perTurn = pitchRadius(&r, "Radius", d.Radius, "Teeth", d.Teeth, d.Pitch)
-	if !r.ok() {
-		return nil, r.err()
+	if !r.OK() {
+		return nil, r.Err()
 	}
 	p.slide = p.perTurn.inverse()
 	p.mount = d.Mount.Pose()
@@ -75,10 +75,10 @@ var oneOver2Pi = double{0x1.45f306dc9c883p-3, -0x1.6b01ec5417056p-57}
 func pitchRadius(r *report, name string, radius float64, teethName string, teeth int, pitch float64) (float64, double) {
 	exact := double{hi: radius}
 	if teeth != 0 {
-		before := len(r.errs)
+		before := len(r.Faults)
 		r.teeth(teethName, teeth)
-		r.add("Pitch", pitch, lengthError(pitch))
-		if len(r.errs) > before {
+		r.Length("Pitch", pitch)
+		if len(r.Faults) > before {
 			return radius, exact
 		}
 		exact = product(float64(teeth), pitch).by(oneOver2Pi)
@@ -86,8 +86,8 @@ func pitchRadius(r *report, name string, radius float64, teethName string, teeth
 			radius = exact.float()
 		}
 	}
-	r.add(name, radius, lengthError(radius))
-	if r.ok() {
+	r.Length(name, radius)
+	if r.OK() {
 		r.agrees(name, radius, exact.hi)
 	}
 	return radius, exact

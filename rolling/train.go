@@ -29,22 +29,23 @@ type Train struct {
 // determine already (one drive too many), for one that the train does not let turn or
 // a mesh whose members can never turn (a locked train), for a member that meshes with
 // itself, is driven twice or has another's name; ErrNotFinite where a ratio overflows.
-// A reference to no member is ErrInput with the path of the field as Name.
+// Its Value is the number of teeth, or NaN where they are not at fault. A reference to
+// no member is ErrInput with the path of the field as Name and the index as Value.
 func NewTrain(d TrainDesign) (*Train, error) {
 	var r report
 	d.check(&r)
-	if !r.ok() {
-		return nil, r.err()
+	if !r.OK() {
+		return nil, r.Err()
 	}
 	t := &Train{design: d.clone(), exact: eliminate(&d, &r)}
-	if r.ok() {
+	if r.OK() {
 		t.checkLocked(&r)
 	}
-	if r.ok() {
+	if r.OK() {
 		t.round(&r)
 	}
-	if !r.ok() {
-		return nil, r.err()
+	if !r.OK() {
+		return nil, r.Err()
 	}
 	return t, nil
 }
@@ -62,7 +63,7 @@ func (t *Train) checkLocked(r *report) {
 	for _, m := range t.design.Meshes {
 		if rests(m.A) && rests(m.B) && rests(m.Arm) {
 			held := max(m.A, m.B) // one of them is not the frame
-			r.add(t.design.name(held), float64(held), errLocked)
+			r.member(t.design.name(held), errLocked)
 		}
 	}
 }
@@ -74,7 +75,7 @@ func (t *Train) round(r *report) {
 		for j, c := range row {
 			d := doubleOf(c)
 			if math.IsInf(d.hi, 0) {
-				r.add(t.design.name(Member(i)), d.hi, rigid.ErrNotFinite)
+				r.member(t.design.name(Member(i)), errRatio)
 			}
 			t.turns = append(t.turns, d)
 			t.most[j] = max(t.most[j], math.Abs(d.hi))

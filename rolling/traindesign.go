@@ -3,8 +3,6 @@ package rolling
 import (
 	"slices"
 	"strconv"
-
-	"example.com/twopoint/rigid"
 )
 
 // A Member is the index of a member in TrainDesign.Members; 0 is the frame. Members
@@ -68,22 +66,25 @@ func (d *TrainDesign) name(m Member) string {
 // of a member with itself and teeth below one.
 func (d *TrainDesign) check(r *report) {
 	if len(d.Members) < 2 {
-		r.add("Members", float64(len(d.Members)), rigid.ErrInput)
+		r.Add("Members", float64(len(d.Members)), errFew)
 	}
 	for i, name := range d.Members {
 		if name != "" && slices.Contains(d.Members[:i], name) {
-			r.add(name, float64(i), errTwice)
+			r.member(name, errTwice)
 		}
 	}
 	for i, m := range d.Meshes {
 		d.checkMesh(r, m, "Meshes["+strconv.Itoa(i)+"]")
 	}
 	for i, m := range d.Drives {
+		path := "Drives[" + strconv.Itoa(i) + "]"
 		switch {
-		case !d.has(m) || m == 0:
-			r.add("Drives["+strconv.Itoa(i)+"]", float64(m), rigid.ErrInput)
+		case !d.has(m):
+			r.Add(path, float64(m), errNone)
+		case m == 0:
+			r.Add(path, 0, errFrame)
 		case slices.Contains(d.Drives[:i], m):
-			r.add(d.name(m), float64(m), errTwice)
+			r.member(d.name(m), errTwice)
 		}
 	}
 }
@@ -95,7 +96,7 @@ func (d *TrainDesign) checkMesh(r *report, m Mesh, path string) {
 		member Member
 	}{{".A", m.A}, {".B", m.B}, {".Arm", m.Arm}} {
 		if !d.has(end.member) {
-			r.add(path+end.field, float64(end.member), rigid.ErrInput)
+			r.Add(path+end.field, float64(end.member), errNone)
 			known = false
 		}
 	}
@@ -106,8 +107,8 @@ func (d *TrainDesign) checkMesh(r *report, m Mesh, path string) {
 	r.teeth(d.name(m.B), m.TeethB)
 	switch {
 	case m.A == m.B, m.A == m.Arm:
-		r.add(d.name(m.A), float64(m.A), errSelf)
+		r.member(d.name(m.A), errSelf)
 	case m.B == m.Arm:
-		r.add(d.name(m.B), float64(m.B), errSelf)
+		r.member(d.name(m.B), errSelf)
 	}
 }

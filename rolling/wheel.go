@@ -6,6 +6,7 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/rigid"
 )
 
@@ -67,16 +68,16 @@ type Wheel struct {
 // everywhere and is refused with Name Ground and ErrSingular.
 func NewWheel(d WheelDimensions) (*Wheel, error) {
 	var r report
-	r.add("Radius", d.Radius, lengthError(d.Radius))
+	r.Length("Radius", d.Radius)
 	if d.Ground != 0 {
-		r.add("Ground", d.Ground, lengthError(math.Abs(d.Ground)))
+		r.Add("Ground", d.Ground, dims.Length(math.Abs(d.Ground)))
 	}
-	if r.ok() && same(d.Ground, -d.Radius) {
-		r.add("Ground", d.Ground, errFills)
+	if r.OK() && same(d.Ground, -d.Radius) {
+		r.Add("Ground", d.Ground, errFills)
 	}
-	r.mount(d.Mount)
-	if !r.ok() {
-		return nil, r.err()
+	r.Mount(d.Mount)
+	if !r.OK() {
+		return nil, r.Err()
 	}
 	return newWheel(d), nil
 }

@@ -1,10 +1,10 @@
 package slidercrank
 
 import (
-	"errors"
 	"math"
-	"strconv"
 
+	"example.com/twopoint/internal/dims"
+	"example.com/twopoint/internal/enum"
 	"example.com/twopoint/rigid"
 )
 
@@ -29,52 +29,44 @@ const (
 	Behind               // slider pin at smaller x than the crank pin
 )
 
-var branchNames = [...]string{"ahead", "behind"}
+var branches = enum.Names[Branch]{Type: "Branch", Wrong: rigid.ErrInput, Of: []string{"ahead", "behind"}}
 
 // String returns "ahead" or "behind".
-func (b Branch) String() string {
-	if int(b) < len(branchNames) {
-		return branchNames[b]
-	}
-	return "Branch(" + strconv.Itoa(int(b)) + ")"
-}
+func (b Branch) String() string { return branches.String(b) }
 
 // MarshalText returns "ahead" or "behind"; ErrInput for any other value.
-func (b Branch) MarshalText() ([]byte, error) {
-	if int(b) >= len(branchNames) {
-		return nil, rigid.ErrInput
-	}
-	return []byte(branchNames[b]), nil
-}
+func (b Branch) MarshalText() ([]byte, error) { return branches.Text(b) }
 
-// UnmarshalText reads "ahead" or "behind"; anything else is ErrInput.
-func (b *Branch) UnmarshalText(text []byte) error {
-	for i, name := range branchNames {
-		if name == string(text) {
-			*b = Branch(i)
-			return nil
-		}
-	}
-	return rigid.ErrInput
-}
+// UnmarshalText reads "ahead" or "behind"; any other text is an error that
+// wraps ErrInput and tells the names.
+func (b *Branch) UnmarshalText(text []byte) error { return branches.Read(b, text) }
+
+// Causes for which dimensions are refused.
+var (
+	errBranch   = dims.Because(rigid.ErrInput, "the branches are Ahead and Behind")
+	errShort    = dims.Because(rigid.ErrUnreachable, "crank and rod together must be longer than the offset")
+	errSlot     = dims.Because(rigid.ErrUnreachable, "the offset must be smaller than crank and centre distance together")
+	errRam      = dims.Because(rigid.ErrUnreachable, "the rod reaches the guide at no angle of the crank")
+	errParallel = dims.Because(rigid.ErrSingular, "the two guides are parallel")
+)
 
 // check returns every *rigid.DimensionError of the dimensions, joined.
 func (d Dimensions) check() error {
-	var f faults
-	f.length("Crank", d.Crank)
-	f.length("Rod", d.Rod)
-	f.distance("Offset", d.Offset)
-	f.mount(d.Mount)
-	if int(d.Branch) >= len(branchNames) {
-		f.add("Branch", float64(d.Branch), rigid.ErrInput)
+	var f dims.Faults
+	f.Length("Crank", d.Crank)
+	f.Length("Rod", d.Rod)
+	f.Distance("Offset", d.Offset)
+	f.Mount(d.Mount)
+	if !branches.Has(d.Branch) {
+		f.Add("Branch", float64(d.Branch), errBranch)
 	}
 	// Where the offset is as long as crank and rod together, they lie in one line
 	// for good, which is no mechanism either.
 	rod, _ := d.settle()
-	if len(f) == 0 && d.Crank+rod-math.Abs(d.Offset) <= equal*math.Abs(d.Offset) {
-		f.add("", 0, rigid.ErrUnreachable)
+	if f.OK() && d.Crank+rod-math.Abs(d.Offset) <= equal*math.Abs(d.Offset) {
+		f.Add("", 0, errShort)
 	}
-	return f.join()
+	return f.Err()
 }
 
 // settle returns Rod, and whether there is a change point: Rod = Crank ± |Offset|
@@ -98,63 +90,4 @@ const (
 	// beyond is how far, of the largest length, a position may lie beyond a limit
 	// and still count as the limit.
 	beyond = 1e-14
-	// Lengths that the library takes, in m. Between them no product of four lengths
-	// overflows or underflows.
-	leastLength    = 1e-60
-	greatestLength = 1e60
 )
-
-// faults collects what is wrong with the dimensions given to a constructor.
-type faults []error
-
-// add reports one dimension, or all of them where name is empty.
-func (f *faults) add(name string, value float64, cause error) {
-	*f = append(*f, &rigid.DimensionError{Name: name, Value: value, Err: cause})
-}
-
-// length checks a length that must be positive.
-func (f *faults) length(name string, x float64) {
-	switch {
-	case !finite(x):
-		f.add(name, x, rigid.ErrNotFinite)
-	case x <= 0:
-		f.add(name, x, rigid.ErrNotPositive)
-	case x < leastLength || x > greatestLength:
-		f.add(name, x, rigid.ErrInput)
-	}
-}
-
-// distance checks a distance that may be 0 or negative.
-func (f *faults) distance(name string, x float64) {
-	switch {
-	case !finite(x):
-		f.add(name, x, rigid.ErrNotFinite)
-	case math.Abs(x) > greatestLength:
-		f.add(name, x, rigid.ErrInput)
-	}
-}
-
-// number checks a number of any size, such as an angle.
-func (f *faults) number(name string, x float64) {
-	if !finite(x) {
-		f.add(name, x, rigid.ErrNotFinite)
-	}
-}
-
-// mount checks the field Mount.
-func (f *faults) mount(m rigid.Placement) {
-	f.number("Mount.X", m.X)
-	f.number("Mount.Y", m.Y)
-	f.number("Mount.Angle", m.Angle)
-}
-
-// join returns nil, the one fault there is, or all of them joined.
-func (f faults) join() error {
-	if len(f) == 1 {
-		return f[0]
-	}
-	return errors.Join(f...)
-}
-
-// finite reports whether x is neither NaN nor infinite.
-func finite(x float64) bool { return x-x == 0 }

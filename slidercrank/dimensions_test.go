@@ -54,7 +54,7 @@ func TestDimensionErrors(t *testing.T) {
 			continue
 		}
 		same := e.Value == row.value || math.IsNaN(e.Value) && math.IsNaN(row.value)
-		if e.Name != row.field || !same || e.Err != row.want || !errors.Is(err, row.want) {
+		if e.Name != row.field || !same || !errors.Is(e.Err, row.want) {
 			t.Errorf("%s: %+v", row.name, e)
 		}
 		if !strings.HasPrefix(err.Error(), "twopoint: ") {
@@ -110,7 +110,7 @@ func TestBranchText(t *testing.T) {
 		}
 		text, err := b.MarshalText()
 		if b > 1 {
-			if err != rigid.ErrInput || text != nil {
+			if !errors.Is(err, rigid.ErrInput) || text != nil {
 				t.Errorf("%v: %s, %v", b, text, err)
 			}
 			continue
@@ -121,7 +121,7 @@ func TestBranchText(t *testing.T) {
 		}
 	}
 	b := slidercrank.Behind
-	if err := b.UnmarshalText([]byte("Ahead")); err != rigid.ErrInput || b != slidercrank.Behind {
+	if err := b.UnmarshalText([]byte("Ahead")); !errors.Is(err, rigid.ErrInput) || b != slidercrank.Behind {
 		t.Errorf("read an unknown name: %v, %v", b, err)
 	}
 }

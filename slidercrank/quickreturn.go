@@ -5,6 +5,7 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/internal/dyad"
 	"example.com/twopoint/internal/trig"
 	"example.com/twopoint/rigid"
@@ -88,29 +89,29 @@ func NewQuickReturn(d QuickReturnDimensions) (*QuickReturn, error) {
 		q.byRam = dyad.NewRRR(d.Arm, d.Rod)
 	}
 	if len(q.Range()) == 0 {
-		return nil, &rigid.DimensionError{Err: rigid.ErrUnreachable}
+		return nil, &rigid.DimensionError{Err: errRam}
 	}
 	return q, nil
 }
 
 // check returns every *rigid.DimensionError of the dimensions, joined.
 func (d QuickReturnDimensions) check() error {
-	var f faults
+	var f dims.Faults
 	if err := checkSlot(d.Crank, d.Centre, d.Slot, "Slot", d.Mount); err != nil {
 		f = append(f, err)
 	}
-	f.length("Arm", d.Arm)
-	f.number("ArmAngle", d.ArmAngle)
+	f.Length("Arm", d.Arm)
+	f.Number("ArmAngle", d.ArmAngle)
 	if d.Rod != 0 {
-		f.length("Rod", d.Rod)
+		f.Length("Rod", d.Rod)
 	}
-	f.distance("Guide.X", d.Guide.X)
-	f.distance("Guide.Y", d.Guide.Y)
-	f.number("Guide.Angle", d.Guide.Angle)
-	if int(d.Branch) >= len(branchNames) {
-		f.add("Branch", float64(d.Branch), rigid.ErrInput)
+	f.Distance("Guide.X", d.Guide.X)
+	f.Distance("Guide.Y", d.Guide.Y)
+	f.Number("Guide.Angle", d.Guide.Angle)
+	if !branches.Has(d.Branch) {
+		f.Add("Branch", float64(d.Branch), errBranch)
 	}
-	return f.join()
+	return f.Err()
 }
 
 // Dimensions returns what NewQuickReturn was given.

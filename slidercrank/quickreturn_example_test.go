@@ -82,7 +82,7 @@ func ExampleQuickReturnDimensions() {
 	_, err := slidercrank.NewQuickReturn(far)
 	fmt.Println(err)
 	// Output:
-	// twopoint: dimensions: out of reach of the links
+	// twopoint: dimensions: the rod reaches the guide at no angle of the crank
 }
 
 func ExampleRamStroke() {

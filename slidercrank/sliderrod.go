@@ -5,6 +5,7 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/rigid"
 )
 
@@ -46,16 +47,16 @@ type SliderRod struct {
 // Angle must leave the guides out of parallel, |sin Angle| > 1e-9, else
 // rigid.ErrSingular.
 func NewSliderRod(d RodDimensions) (*SliderRod, error) {
-	var f faults
-	f.length("Length", d.Length)
-	f.number("Angle", d.Angle)
-	f.mount(d.Mount)
+	var f dims.Faults
+	f.Length("Length", d.Length)
+	f.Number("Angle", d.Angle)
+	f.Mount(d.Mount)
 	sin, cos := math.Sincos(d.Angle)
 	if math.Abs(sin) <= parallel {
-		f.add("Angle", d.Angle, rigid.ErrSingular)
+		f.Add("Angle", d.Angle, errParallel)
 	}
-	if len(f) > 0 {
-		return nil, f.join()
+	if !f.OK() {
+		return nil, f.Err()
 	}
 	m := d.Mount.Pose()
 	return &SliderRod{given: d, l: d.Length, sin: sin, cos: cos, mount: m, guideB: turned(m.Axis, r2.Vec{X: cos, Y: sin})}, nil

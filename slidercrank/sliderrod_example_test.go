@@ -66,5 +66,5 @@ func ExampleRodDimensions() {
 	_, err := slidercrank.NewSliderRod(slidercrank.RodDimensions{Length: 0.7, Angle: math.Pi})
 	fmt.Println(err)
 	// Output:
-	// twopoint: dimension Angle = 3.141592653589793: singular position: the rates are not determined
+	// twopoint: dimension Angle = 3.141592653589793: the two guides are parallel
 }

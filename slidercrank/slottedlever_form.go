@@ -5,6 +5,7 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/internal/trig"
 	"example.com/twopoint/rigid"
 )
@@ -153,22 +154,22 @@ func (k *slotForm) nowhere() error {
 // checkSlot returns every *rigid.DimensionError of a slotForm's dimensions, joined;
 // offset is the field's name for e.
 func checkSlot(r, c, e float64, offset string, mount rigid.Placement) error {
-	var f faults
-	f.length("Crank", r)
-	f.length("Centre", c)
-	f.distance(offset, e)
-	f.mount(mount)
-	if len(f) > 0 {
-		return f.join()
+	var f dims.Faults
+	f.Length("Crank", r)
+	f.Length("Centre", c)
+	f.Distance(offset, e)
+	f.Mount(mount)
+	if !f.OK() {
+		return f.Err()
 	}
 	size, least := equal*max(r, c), math.Abs(math.Abs(r-c)-math.Abs(e))
 	switch {
 	case r+c-math.Abs(e) <= size:
-		f.add("", 0, rigid.ErrUnreachable)
+		f.Add("", 0, errSlot)
 	case least <= size:
-		f.add("", 0, rigid.ErrChangePoint)
+		f.Add("", 0, rigid.ErrChangePoint)
 	}
-	return f.join()
+	return f.Err()
 }
 
 // follow returns the line's angle a plus the whole turns that make it continuous in

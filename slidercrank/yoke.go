@@ -5,6 +5,7 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/rigid"
 )
 
@@ -47,16 +48,16 @@ type ScotchYoke struct {
 // Tilt must leave the slot out of parallel with the travel, |cos Tilt| > 1e-9, else
 // rigid.ErrSingular.
 func NewScotchYoke(d YokeDimensions) (*ScotchYoke, error) {
-	var f faults
-	f.length("Crank", d.Crank)
-	f.number("Tilt", d.Tilt)
-	f.mount(d.Mount)
+	var f dims.Faults
+	f.Length("Crank", d.Crank)
+	f.Number("Tilt", d.Tilt)
+	f.Mount(d.Mount)
 	sin, cos := math.Sincos(d.Tilt)
 	if math.Abs(cos) <= parallel {
-		f.add("Tilt", d.Tilt, rigid.ErrSingular)
+		f.Add("Tilt", d.Tilt, errParallel)
 	}
-	if len(f) > 0 {
-		return nil, f.join()
+	if !f.OK() {
+		return nil, f.Err()
 	}
 	return &ScotchYoke{given: d, r: d.Crank, sin: sin, cos: cos, mount: d.Mount.Pose()}, nil
 }

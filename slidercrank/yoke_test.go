@@ -124,7 +124,7 @@ func TestParallelGuidesAreRefused(t *testing.T) {
 		}},
 	} {
 		err := row.make()
-		if bad, ok := errors.AsType[*rigid.DimensionError](err); !ok || bad.Name != row.field || bad.Err != row.err {
+		if bad, ok := errors.AsType[*rigid.DimensionError](err); !ok || bad.Name != row.field || !errors.Is(bad.Err, row.err) {
 			t.Errorf("%s: %v", row.name, err)
 		}
 	}
