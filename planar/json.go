@@ -77,9 +77,10 @@ type (
 //	}
 //
 // The first of the links is the frame, whatever its name. MarshalJSON returns an
-// error that wraps rigid.ErrInput, ErrReference or one of encoding/json, and tells the place, for what has no such form: two links of one
-// name, a link that does not exist, a number that is not finite, a joint or drive
-// of another type, a guess for another number of links.
+// error that wraps rigid.ErrInput, ErrReference or one of encoding/json, and tells the
+// place, for what has no such form: two links of one name, a link that does not exist,
+// a number that is not finite, a joint or drive of another type, a guess for another
+// number of links.
 func (d Design) MarshalJSON() ([]byte, error) {
 	w := jsonWriter{d: &d}
 	names := map[string]bool{}

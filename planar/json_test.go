@@ -125,6 +125,9 @@ func TestJSONRefusals(t *testing.T) {
 		{`{"links":["frame"],"drives":[{"turn":{"of":"frame","from":"x"}}]}`, `drives[0].turn.from: no link has the name "x"`, ErrReference},
 		{`{"links":["frame"],"guess":{"x":{}}}`, "guess.x: unknown key", rigid.ErrInput},
 		{`{"links":["frame"],"guess":{"frame":{"z":1}}}`, "guess.frame.z: unknown key", rigid.ErrInput},
+		{`{"links":["frame","crank"],"guess":{}}`, "guess.crank is missing", rigid.ErrInput},
+		{`{"links":["frame","crank","rod"],"guess":{"frame":{},"crank":{"x":1}}}`, "guess.rod is missing", rigid.ErrInput},
+		{`{"links":[],"guess":{"crank":{}}}`, "guess.crank: unknown key", rigid.ErrInput},
 		{`{"links":["frame"]} {}`, "", nil}, // by encoding/json itself
 		{`{"links":["frame"]`, "", nil},
 	} {
@@ -141,6 +144,16 @@ func TestJSONRefusals(t *testing.T) {
 		}
 	}
 	var d Design
+	for text, links := range map[string]int{
+		`{"links":["frame","crank"]}`:                      0,
+		`{"links":["frame","crank"],"guess":{"crank":{}}}`: 2,
+		`{"links":["frame"],"guess":{}}`:                   1,
+		`{"links":[],"guess":{}}`:                          0,
+	} {
+		if err := json.Unmarshal([]byte(text), &d); err != nil || len(d.Guess) != links {
+			t.Errorf("%s: a guess of %d links, %v", text, len(d.Guess), err)
+		}
+	}
 	for _, text := range []string{"", "{", `{"links":["frame"]} {}`, `{"links":["frame"]} }`, `{"links":[tru]}`, "\xff"} {
 		if err := d.UnmarshalJSON([]byte(text)); !errors.Is(err, rigid.ErrInput) {
 			t.Errorf("%q by the method: %v", text, err)

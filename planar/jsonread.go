@@ -9,9 +9,10 @@ import (
 )
 
 // UnmarshalJSON reads what MarshalJSON writes. Joints, drives, the guess, numbers and
-// flags may be left out: they are none or zero, and so is the placement of a link
-// that a guess leaves out. It is strict: a key or kind that does not belong there, in upper or lower case, a key twice, null, two links of one name
-// and the name of no link are errors that wrap rigid.ErrInput or ErrReference and
+// flags may be left out: they are none or zero. A guess, if there is one, names every
+// link but the frame. It is strict: a key or kind that does not belong there, in upper
+// or lower case, a key twice, null, two links of one name, the name of no link and a
+// link missing in the guess are errors that wrap rigid.ErrInput or ErrReference and
 // tell the place. The design is then as it was. Whether the linkage is sound is for
 // New to say.
 func (d *Design) UnmarshalJSON(text []byte) error {
@@ -129,7 +130,7 @@ func (r jsonReader) drive(at, kind string, text []byte) (Drive, error) {
 	return nil, fmt.Errorf("%w: %s: no kind of drive; those are turn, slide, reach", rigid.ErrInput, at)
 }
 
-// guess reads placements by the names of links; those not named are zero.
+// guess reads placements by the names of links, of which the frame's may be missing.
 func (r jsonReader) guess(at string, text []byte, links []string) ([]rigid.Placement, error) {
 	all, named := make([]rigid.Placement, len(links)), fields{}
 	for i, name := range links {
@@ -138,7 +139,7 @@ func (r jsonReader) guess(at string, text []byte, links []string) ([]rigid.Place
 			return object(at, text, fields{"x": scalar(&g.X), "y": scalar(&g.Y), "angle": scalar(&g.Angle)})
 		}
 	}
-	return all, object(at, text, named)
+	return all, object(at, text, named, links[min(1, len(links)):]...)
 }
 
 func (r jsonReader) link(to *Link) field {

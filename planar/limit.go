@@ -2,6 +2,7 @@ package planar
 
 import (
 	"errors"
+	"fmt"
 	"math"
 
 	"example.com/twopoint/internal/enum"
@@ -45,18 +46,21 @@ func (k *LimitKind) UnmarshalText(text []byte) error { return limitKinds.Read(k,
 // side tells. Parallelograms pass their flattened positions, which are no limits.
 // The State stays where it is.
 //
-// rigid.ErrInput for a linkage with another number of drives, and where the drive
-// does not stand in the interval; rigid.ErrNotFinite for an interval that is not
-// finite.
+// An error that wraps rigid.ErrInput for a linkage with another number of drives, and
+// where the drive does not stand in the interval; rigid.ErrNotFinite for an interval
+// that is not finite.
 func (s *State) Limits(within rigid.Interval) (lo, hi Limit, err error) {
-	if s.l == nil || len(s.to) != 1 {
+	if s.l == nil {
 		return lo, hi, rigid.ErrInput
+	}
+	if n := len(s.to); n != 1 {
+		return lo, hi, fmt.Errorf("%w: limits are of one drive, the linkage has %d", rigid.ErrInput, n)
 	}
 	if (within.Hi-within.Lo)*0 != 0 {
 		return lo, hi, rigid.ErrNotFinite
 	}
-	if !within.Contains(s.now.in[0].Pos) {
-		return lo, hi, rigid.ErrInput
+	if at := s.now.in[0].Pos; !within.Contains(at) {
+		return lo, hi, fmt.Errorf("%w: the drive stands at %g, outside %g to %g", rigid.ErrInput, at, within.Lo, within.Hi)
 	}
 	return s.limit(within.Lo), s.limit(within.Hi), nil
 }

@@ -3,6 +3,7 @@ package planar_test
 import (
 	"errors"
 	"math"
+	"strings"
 	"testing"
 
 	"example.com/twopoint/fourbar"
@@ -157,12 +158,13 @@ func TestLimitsRefuse(t *testing.T) {
 	for _, c := range []struct {
 		over rigid.Interval
 		want error
+		says string
 	}{
-		{rigid.Interval{Lo: 2, Hi: 3}, rigid.ErrInput},
-		{rigid.Interval{Lo: math.Inf(-1), Hi: 3}, rigid.ErrNotFinite},
-		{rigid.Interval{Lo: math.NaN(), Hi: 3}, rigid.ErrNotFinite},
+		{rigid.Interval{Lo: 2, Hi: 3}, rigid.ErrInput, "the drive stands at 1, outside 2 to 3"},
+		{rigid.Interval{Lo: math.Inf(-1), Hi: 3}, rigid.ErrNotFinite, ""},
+		{rigid.Interval{Lo: math.NaN(), Hi: 3}, rigid.ErrNotFinite, ""},
 	} {
-		if _, _, err := st.Limits(c.over); !errors.Is(err, c.want) {
+		if _, _, err := st.Limits(c.over); !errors.Is(err, c.want) || !strings.Contains(err.Error(), c.says) {
 			t.Errorf("%v: %v", c.over, err)
 		}
 	}

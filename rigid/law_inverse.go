@@ -1,6 +1,7 @@
 package rigid
 
 import (
+	"fmt"
 	"math"
 
 	"example.com/twopoint/internal/root"
@@ -17,12 +18,15 @@ import (
 // there, for the place alone); ErrNotFinite; and l's own. At an end of l's range,
 // where First of l grows without bound, the inverse is regular, its First near 0.
 //
-// Errors: ErrNotFinite for a stroke that is not finite; ErrInput for one that has no
-// length, over which the output does not move, or over which it turns, as far as
-// 1 024 steps show; l's own error where it has no value in the stroke. An end of the
+// Errors: ErrNotFinite for a stroke that is not finite; one that wraps ErrInput for a
+// stroke that has no length, over which the output does not move, or over which it
+// turns, as far as 1 024 steps show; l's own error where it has no value in the stroke. An end of the
 // stroke may be an end of l's range, even if l has no value exactly there.
 func (l Law) Inverse(stroke Interval) (Law, error) {
 	s, err := newStroke(l, stroke)
+	if err == nil {
+		err = s.oneWay()
+	}
 	if err == nil {
 		err = s.monotonic()
 	}
@@ -45,8 +49,9 @@ func (l Law) Inverse(stroke Interval) (Law, error) {
 // end. The place is as exact as l and out determine it: δ beside a dead centre, where
 // Out is off by ½Second·δ², rounding of Out by r moves it by r/(Second·δ).
 //
-// Errors are those of Inverse and of the law it returns, but that Solve looks at the
-// ends of the stroke alone: where the output turns inside it is one of several places.
+// Errors are those of Inverse, ErrInput itself where that wraps it, and of the law it
+// returns. But Solve looks at the ends of the stroke alone: where the output turns
+// inside, the result is one of several places.
 func (l Law) Solve(out Coordinate, stroke Interval) (Coordinate, error) {
 	if !finite(out.Pos, out.Vel, out.Acc) {
 		return Coordinate{}, ErrNotFinite
@@ -54,6 +59,9 @@ func (l Law) Solve(out Coordinate, stroke Interval) (Coordinate, error) {
 	s, err := newStroke(l, stroke)
 	if err != nil {
 		return Coordinate{}, err
+	}
+	if s.oneWay() != nil {
+		return Coordinate{}, ErrInput
 	}
 	c, err := s.find(out.Pos)
 	if err != nil {
@@ -71,6 +79,12 @@ func (l Law) Solve(out Coordinate, stroke Interval) (Coordinate, error) {
 	}
 	return in, nil
 }
+
+// Causes for which an interval is no stroke.
+var (
+	errStill = fmt.Errorf("%w: the stroke has no length, or its ends the same output", ErrInput)
+	errTurns = fmt.Errorf("%w: the output turns back in the stroke: invert one of Strokes", ErrInput)
+)
 
 // A stroke is an interval over which a law rises all the way, or falls.
 type stroke struct {
@@ -91,13 +105,21 @@ func newStroke(law Law, over Interval) (s stroke, err error) {
 	}
 	s.law = law
 	s.size = math.Max(math.Abs(s.lo.Out), math.Abs(s.hi.Out))
+	return s, nil
+}
+
+// oneWay returns why the ends do not belong to one stroke, if they don't.
+func (s *stroke) oneWay() error {
 	slope := s.slope()
 	least := -LeastMargin * math.Abs(slope)
 	way := math.Copysign(1, slope)
-	if !(s.lo.In < s.hi.In) || !(math.Abs(s.hi.Out-s.lo.Out) > rounding*s.size) || way*s.lo.First < least || way*s.hi.First < least {
-		return stroke{}, ErrInput
+	switch {
+	case !(s.lo.In < s.hi.In), !(math.Abs(s.hi.Out-s.lo.Out) > rounding*s.size):
+		return errStill
+	case way*s.lo.First < least, way*s.hi.First < least:
+		return errTurns
 	}
-	return s, nil
+	return nil
 }
 
 // slope returns the mean of First over the stroke.
@@ -149,7 +171,7 @@ func (s *stroke) monotonic() error {
 			return err
 		}
 		if way*(c.Out-last.Out) < -rounding*s.size {
-			return ErrInput
+			return errTurns
 		}
 		last = c
 	}

@@ -1,6 +1,7 @@
 package rigid_test
 
 import (
+	"errors"
 	"math"
 	"testing"
 
@@ -124,7 +125,7 @@ func TestSolveInverts(t *testing.T) {
 			calls := 0
 			back, err := counting(m.law, &calls).Inverse(s)
 			if name == "cam" && strokes[1] == s || name == "cam" && strokes[3] == s { // dwells
-				if err != rigid.ErrInput {
+				if !errors.Is(err, rigid.ErrInput) {
 					t.Errorf("%s, dwell %v: %v", name, s, err)
 				}
 				continue

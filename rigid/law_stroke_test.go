@@ -1,7 +1,9 @@
 package rigid_test
 
 import (
+	"errors"
 	"math"
+	"strings"
 	"testing"
 
 	"example.com/twopoint/rigid"
@@ -51,8 +53,11 @@ func TestInverseErrors(t *testing.T) {
 		{"below the jump", jump, rigid.Interval{Lo: 0.5, Hi: 1.5}, rigid.Coordinate{Pos: 0.75}, nil, nil},
 	} {
 		back, err := c.law.Inverse(c.over)
-		if err != c.inverse || (back == nil) != (err != nil) {
+		if !errors.Is(err, c.inverse) || (back == nil) != (err != nil) {
 			t.Errorf("%s: Inverse: %v, want %v", c.why, err, c.inverse)
+		}
+		if strings.HasPrefix(c.why, "turns") && !strings.Contains(err.Error(), "the output turns back") {
+			t.Errorf("%s: message %q", c.why, err)
 		}
 		in, err := c.law.Solve(c.out, c.over)
 		if err != c.solve || err != nil && in != (rigid.Coordinate{}) {
