@@ -3,6 +3,8 @@ package rolling
 import (
 	"math"
 	"math/big"
+
+	"example.com/twopoint/internal/trig"
 )
 
 // A double is a number as the sum of two float64, lo smaller than a unit in the
@@ -64,10 +66,10 @@ func (d double) float() float64 { return d.hi + d.lo }
 
 // sincos returns sine and cosine of the angle d, by the sum of two angles.
 func (d double) sincos() (sin, cos float64) {
-	s, c := math.Sincos(d.hi)
+	s, c := trig.Sincos(d.hi)
 	sl, cl := d.lo, 1.0
 	if math.Abs(d.lo) > 1e-8 { // 1 − cos d.lo would no longer be below rounding
-		sl, cl = math.Sincos(d.lo)
+		sl, cl = trig.Sincos(d.lo)
 	}
 	return s*cl + c*sl, c*cl - s*sl
 }

@@ -153,28 +153,6 @@ func TestMillionTurns(t *testing.T) {
 	}
 }
 
-func TestTwoSincos(t *testing.T) {
-	worst := 0.0
-	check := func(x, y float64) {
-		sx, cx, sy, cy := rolling.TwoSincos(x, y, 0)
-		for _, v := range [...]struct{ angle, s, c float64 }{{x, sx, cx}, {y, sy, cy}} {
-			s, c := math.Sincos(v.angle)
-			worst = max(worst, math.Abs(v.s-s), math.Abs(v.c-c))
-		}
-	}
-	for k := range 20000 {
-		quarter := float64(k-10000) * math.Pi / 2
-		check(quarter, quarter+1e-9*float64(k%7))
-		check(-0.0003*float64(k), 999.7*float64(k)) // the last beyond the fast range
-	}
-	if worst > 3.4e-16 { // each side is within 1.7e-16
-		t.Errorf("differs by %v from math.Sincos", worst)
-	}
-	if _, _, s, c := rolling.TwoSincos(0, math.NaN(), 0); s == s || c == c {
-		t.Error("NaN gives numbers")
-	}
-}
-
 // runs returns how many random cases to try of n.
 func runs(n int) int {
 	if testing.Short() {

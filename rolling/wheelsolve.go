@@ -1,10 +1,9 @@
 package rolling
 
 import (
-	"math"
-
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/internal/trig"
 	"example.com/twopoint/rigid"
 )
 
@@ -62,13 +61,9 @@ func (w *Wheel) place(dst *WheelState, turn, travel rigid.Coordinate, low, slip,
 	u := w.axis
 	t, contact := u, r2.Vec{X: travel.Pos * u.X, Y: travel.Pos * u.Y}
 	centre := contact
-	var s, c float64
-	if w.reach == 0 {
-		s, c = math.Sincos(turn.Pos)
-	} else {
-		var sh, ch float64
-		half := w.half.by(double{travel.Pos, low})
-		s, c, sh, ch = twoSincos(turn.Pos, half.hi, half.lo)
+	s, c := trig.Sincos(turn.Pos)
+	if w.reach != 0 {
+		sh, ch := w.half.by(double{travel.Pos, low}).sincos()
 		k, j := sh*ch, sh*sh
 		g := r2.Vec{X: u.X*k + u.Y*j, Y: u.Y*k - u.X*j}
 		t = r2.Vec{X: u.X + 2*g.Y, Y: u.Y - 2*g.X}

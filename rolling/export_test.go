@@ -1,4 +1,0 @@
-package rolling
-
-// TwoSincos is twoSincos for the tests.
-var TwoSincos = twoSincos
