@@ -1,15 +1,12 @@
 package main
 
 import (
-	"bytes"
 	_ "embed"
-	"encoding/json"
 	"errors"
 	"fmt"
-	"io"
 	"math"
-	"os"
 
+	"example.com/twopoint/examples/internal/files"
 	"example.com/twopoint/rigid"
 	"example.com/twopoint/rigid/encoder"
 	"example.com/twopoint/slidercrank"
@@ -45,22 +42,10 @@ type limits struct {
 // readConfig reads a file, or the sample; an unknown field and a wrong number are
 // refused by name.
 func readConfig(path string) (*config, error) {
-	data, name := samplePress, "press.json"
-	if path != "" {
-		var err error
-		if data, err = os.ReadFile(path); err != nil {
-			return nil, err
-		}
-		name = path
-	}
 	var c config
-	d := json.NewDecoder(bytes.NewReader(data))
-	d.DisallowUnknownFields()
-	if err := d.Decode(&c); err != nil {
-		return nil, fmt.Errorf("%s: %w", name, err)
-	}
-	if _, err := d.Token(); err != io.EOF {
-		return nil, fmt.Errorf("%s: more than one value", name)
+	name, err := files.ReadJSON(path, samplePress, "press.json", &c)
+	if err != nil {
+		return nil, err
 	}
 	if err := c.check(); err != nil {
 		return nil, fmt.Errorf("%s: %w", name, err)

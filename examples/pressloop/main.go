@@ -29,6 +29,7 @@ import (
 	"syscall"
 	"time"
 
+	"example.com/twopoint/examples/internal/files"
 	"example.com/twopoint/rigid"
 	"example.com/twopoint/slidercrank"
 )
@@ -76,15 +77,15 @@ func run(ctx context.Context, args []string, stdout, stderr io.Writer) error {
 	if err != nil {
 		return err
 	}
-	var log *wholeFile
+	var log *files.Whole
 	if o.log != "" {
-		if log, err = createWhole(o.log); err != nil {
+		if log, err = files.CreateWhole(o.log); err != nil {
 			return err
 		}
 	}
 	late := r.drive(o)
 	if log != nil {
-		if err := log.finish(writeCSV(log, r.loop.rec, c.Tick, r.loop.stopped)); err != nil {
+		if err := log.Finish(writeCSV(log, r.loop.rec, c.Tick, r.loop.stopped)); err != nil {
 			return err
 		}
 	}

@@ -2,11 +2,8 @@ package main
 
 import (
 	"encoding/csv"
-	"fmt"
 	"io"
 	"iter"
-	"os"
-	"path/filepath"
 	"strconv"
 
 	"example.com/twopoint/rigid"
@@ -87,45 +84,4 @@ func (x *record) state() string {
 		return "run"
 	}
 	return "wait"
-}
-
-// A wholeFile comes to be under its name when it is complete, or not at all: it
-// is written beside and renamed.
-type wholeFile struct {
-	*os.File
-	name string
-}
-
-// createWhole makes the file beside name at once, so that an unwritable folder is
-// found before the work and not after it.
-func createWhole(name string) (*wholeFile, error) {
-	if i, err := os.Stat(name); err == nil && !i.Mode().IsRegular() {
-		return nil, fmt.Errorf("can't write %s: not a file", name)
-	}
-	f, err := os.CreateTemp(filepath.Dir(name), "."+filepath.Base(name)+".part*")
-	if err != nil {
-		return nil, fmt.Errorf("can't write %s: %w", name, err)
-	}
-	return &wholeFile{f, name}, nil
-}
-
-// finish gives the file its name, or removes it where err or its own end is bad.
-func (f *wholeFile) finish(err error) error {
-	if err == nil {
-		err = f.Chmod(0o644)
-	}
-	if err == nil {
-		err = f.Sync()
-	}
-	if e := f.Close(); err == nil {
-		err = e
-	}
-	if err == nil {
-		err = os.Rename(f.Name(), f.name)
-	}
-	if err != nil {
-		os.Remove(f.Name())
-		return fmt.Errorf("can't write %s: %w", f.name, err)
-	}
-	return nil
 }

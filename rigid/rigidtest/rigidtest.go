@@ -10,7 +10,12 @@
 //	}
 //
 // A State has a Margin, which these two ask to be equal: give Lengths a Relative, too,
-// to compare whole States of measured motions.
+// to compare whole States of measured motions. But a Margin belongs to the direction
+// solved: Solve tells of the joint that flattens for a driving crank, a solve back of
+// another. So a State and the same position solved back differ in Margin by definition;
+// leave it out of a round trip:
+//
+//	cmpopts.IgnoreFields(slidercrank.State{}, "Margin")
 //
 // They serve every type of this library (motions, points, paths, terms,
 // coordinates, coefficients, the states of the mechanisms) and any struct, slice,
@@ -67,8 +72,14 @@ import (
 // A direction has no size to be a part of, so Relative counts there in rad, and
 // its vector must be as near to a unit one as the other's. A
 // Margin and a Curvature have no tolerance but Relative·max(1, |x|, |y|). The zero
-// Tolerance asks for equal numbers. NaN equals nothing, an infinity only itself.
-type Tolerance struct{ Pos, Vel, Acc, Relative float64 }
+// Tolerance asks for equal numbers, and math.Inf(1) lets all finite ones pass: so what
+// was not measured is left out. NaN equals nothing, an infinity only itself.
+type Tolerance struct {
+	Pos      float64 `json:"pos"`
+	Vel      float64 `json:"vel"`
+	Acc      float64 `json:"acc"`
+	Relative float64 `json:"relative"`
+}
 
 // Lengths returns the option that compares what is measured in metres: points,
 // origins, velocities and accelerations of points, every Coordinate and

@@ -44,6 +44,14 @@ func TestWhole(t *testing.T) {
 	if data, e := os.ReadFile(path); err != nil || e != nil || string(data) != "whole" || names() != 1 {
 		t.Errorf("%v, %v, %q, %d files", err, e, data, names())
 	}
+	if f, err = files.CreateWhole(path); err != nil {
+		t.Fatal(err)
+	}
+	f.WriteString("half")
+	err = f.Finish(full)
+	if data, e := os.ReadFile(path); !errors.Is(err, full) || e != nil || string(data) != "whole" || names() != 1 {
+		t.Errorf("after the failure of a second: %v, %v, %q, %d files", err, e, data, names())
+	}
 	if _, err := files.CreateWhole(dir); err == nil {
 		t.Error("a folder is taken for a file")
 	}
