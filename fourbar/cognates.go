@@ -29,7 +29,8 @@ type Cognate struct {
 // has its crank at the third pivot, turning with the linkage's crank, on the other
 // Branch: Solve follows.
 //
-// Where the first's crank does not turn fully, one motion of it passes both
+// Where Range has two intervals, the first's Branch is that for the first of them: the
+// other may need the other. Where the first's crank does not turn fully, one motion of it passes both
 // branches, and Dimensions has one of them. The cognates of a parallelogram are
 // kites, which can't be driven through their flattened positions; Branch is then
 // that for crank angles in (0, π). For a coupler point in a pin one cognate

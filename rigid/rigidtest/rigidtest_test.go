@@ -176,6 +176,8 @@ func TestNumbers(t *testing.T) {
 		{"infinite on both sides", inf, inf, tolerance, true},
 		{"infinities of two signs", inf, -inf, rigidtest.Tolerance{Pos: inf, Relative: inf}, false},
 		{"infinite and not", inf, 1, rigidtest.Tolerance{Relative: 1}, false},
+		{"infinite tolerance", -1e300, 1e300, rigidtest.Tolerance{Pos: inf}, true},
+		{"infinite tolerance, NaN", math.NaN(), math.NaN(), rigidtest.Tolerance{Pos: inf, Relative: inf}, false},
 		{"NaN tolerance", 1, 2, rigidtest.Tolerance{Pos: math.NaN(), Relative: math.NaN()}, false},
 	} {
 		x, y := rigid.Coordinate{Pos: c.x}, rigid.Coordinate{Pos: c.y}
