@@ -3,6 +3,15 @@
 // follower or of the coupler it gives the place, velocity and acceleration of
 // every link, and so of every point of it by rigid.Motion's At.
 //
+//	feeder, err := fourbar.New(fourbar.Dimensions{Frame: 0.3, Crank: 0.08, Coupler: 0.28, Follower: 0.2})
+//	…
+//	var st fourbar.State
+//	err = feeder.Solve(&st, rigid.Coordinate{Pos: angle, Vel: speed, Acc: acc})
+//	tool := st.Coupler.At(r2.Vec{X: 0.14, Y: 0.05})
+//
+// [Linkage.Law] is the law of motion of the follower by the crank's angle, with
+// extremes, peaks, strokes and the way back.
+//
 // # Conventions
 //
 // SI units and radians; x right, y up, angles counter-clockwise. In the mechanism's

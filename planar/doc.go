@@ -29,6 +29,9 @@
 //	}
 //	face := st.Point(ram.At(0.03, 0)) // its place, velocity and acceleration
 //
+// Where the number of links is not known beforehand, Design.Link gives them one by one;
+// their guess is then made([]rigid.Placement, len(design.Links)), filled by guess[rod].
+//
 // # Designs
 //
 // A [Design] names the links and lists joints and drives between them. Link 0 is the

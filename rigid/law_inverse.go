@@ -82,7 +82,8 @@ func (l Law) Solve(out Coordinate, stroke Interval) (Coordinate, error) {
 
 // Causes for which an interval is no stroke.
 var (
-	errStill = fmt.Errorf("%w: the stroke has no length, or its ends the same output", ErrInput)
+	errShort = fmt.Errorf("%w: the stroke has no length", ErrInput)
+	errStill = fmt.Errorf("%w: the output is the same at both ends of the stroke: invert one of Strokes", ErrInput)
 	errTurns = fmt.Errorf("%w: the output turns back in the stroke: invert one of Strokes", ErrInput)
 )
 
@@ -114,7 +115,9 @@ func (s *stroke) oneWay() error {
 	least := -LeastMargin * math.Abs(slope)
 	way := math.Copysign(1, slope)
 	switch {
-	case !(s.lo.In < s.hi.In), !(math.Abs(s.hi.Out-s.lo.Out) > rounding*s.size):
+	case !(s.lo.In < s.hi.In):
+		return errShort
+	case !(math.Abs(s.hi.Out-s.lo.Out) > rounding*s.size):
 		return errStill
 	case way*s.lo.First < least, way*s.hi.First < least:
 		return errTurns

@@ -167,7 +167,7 @@ func checkSlot(r, c, e float64, offset string, mount rigid.Placement) error {
 	case r+c-math.Abs(e) <= size:
 		f.Add("", 0, errSlot)
 	case least <= size:
-		f.Add("", 0, rigid.ErrChangePoint)
+		f.Add("", 0, errFlat)
 	}
 	return f.Err()
 }

@@ -1,9 +1,9 @@
 package encoder
 
 import (
-	"errors"
 	"math"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/rigid"
 )
 
@@ -35,22 +35,28 @@ type Rates struct {
 	tau, rest, p, before []float64 // scratch: times, residual, two polynomials
 }
 
+// Causes for which degree and window are refused.
+var (
+	errDegree = dims.Because(rigid.ErrInput, "the degree must be from 1 to 6")
+	errWindow = dims.Because(rigid.ErrInput, "the window must be greater than the degree, and at most 65536 samples")
+)
+
 // NewRates returns a Rates that fits a polynomial of the given degree over the
 // given number of samples. Degree 2 follows a steady acceleration, degree 3 and 4 a
 // changing one with more noise; of degree 1 Acc is 0. A longer window has less noise,
 // and is later and flatter. The degree must be from 1 to 6, the window greater than
-// the degree and at most 65536 samples: else a *rigid.DimensionError for each that
-// isn't, joined, with ErrInput.
+// the degree and at most 65536 samples: else a *rigid.DimensionError with ErrInput, or
+// two joined.
 func NewRates(window, degree int) (*Rates, error) {
-	var errs []error
+	var f dims.Faults
 	if degree < 1 || degree > greatestDegree {
-		errs = append(errs, &rigid.DimensionError{Name: "degree", Value: float64(degree), Err: rigid.ErrInput})
+		f.Add("degree", float64(degree), errDegree)
 	}
 	if window <= degree || window < 2 || window > greatestWindow {
-		errs = append(errs, &rigid.DimensionError{Name: "window", Value: float64(window), Err: rigid.ErrInput})
+		f.Add("window", float64(window), errWindow)
 	}
-	if len(errs) > 0 {
-		return nil, errors.Join(errs...)
+	if !f.OK() {
+		return nil, f.Err()
 	}
 	store := make([]float64, 6*window)
 	part := func(i int) []float64 { return store[i*window : (i+1)*window : (i+1)*window] }

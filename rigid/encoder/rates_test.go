@@ -233,7 +233,10 @@ func TestNewRatesErrors(t *testing.T) {
 		if err == nil {
 			continue
 		}
-		parts := err.(interface{ Unwrap() []error }).Unwrap()
+		parts := []error{err}
+		if joined, ok := err.(interface{ Unwrap() []error }); ok {
+			parts = joined.Unwrap()
+		}
 		if len(parts) != len(c.names) || !errors.Is(err, rigid.ErrInput) {
 			t.Errorf("NewRates(%d, %d): %v", c.window, c.degree, err)
 			continue
