@@ -160,7 +160,7 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 func (k *slotForm) swingBySlide(m *slotMotion, sin float64) {
 	w, v, s := m.turn.Vel, m.slide.Vel, m.slide.Pos
 	i := 1 / (s*s + k.e*k.e)
-	first, second := (1+k.difference*i)/2, k.rc*k.difference*sin*i*i
+	first, second := (1+k.difference*i)/2, -k.minus*k.difference*sin*i*i
 	m.swing.Vel = first*w + k.e*v*i
 	m.swing.Acc = first*m.turn.Acc + second*w*w + k.e*(m.slide.Acc-2*s*v*v*i)*i
 }
@@ -211,9 +211,9 @@ func (c *OscillatingCylinder) DeadCentres() []rigid.Coefficients {
 		return nil
 	}
 	lengths := c.Lengths()
-	out := []rigid.Coefficients{{Out: lengths.Hi, Second: -k.rc / lengths.Hi}}
+	out := []rigid.Coefficients{{Out: lengths.Hi, Second: k.minus / lengths.Hi}}
 	if k.least > 0 {
-		out = append(out, rigid.Coefficients{In: math.Pi, Out: lengths.Lo, Second: k.rc / lengths.Lo})
+		out = append(out, rigid.Coefficients{In: math.Pi, Out: lengths.Lo, Second: -k.minus / lengths.Lo})
 	}
 	return out
 }

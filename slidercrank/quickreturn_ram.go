@@ -74,7 +74,7 @@ func (r *ramMotion) finite() error {
 func (q *QuickReturn) write(dst *QuickReturnState, m *slotMotion, r *ramMotion) {
 	q.form.write(&dst.Crank, &dst.Block, &dst.Lever, m)
 	dst.Turn, dst.Swing, dst.Slide = m.turn, m.swing, m.slide
-	dst.Slot, dst.Knee, dst.Margin = q.given.Slot, m.knee(), r.margin
+	dst.Slot, dst.Knee, dst.Margin = q.given.Slot, knee(m.crank, m.line), r.margin
 	u, pin := q.ram, turned(q.ram, r.arm)
 	axis := u
 	if q.byArm.L != 0 {

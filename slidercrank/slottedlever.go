@@ -1,6 +1,8 @@
 package slidercrank
 
 import (
+	"math"
+
 	"gonum.org/v1/gonum/spatial/r2"
 
 	"example.com/twopoint/internal/trig"
@@ -83,15 +85,54 @@ func (l *SlottedLever) Dimensions() LeverDimensions { return l.given }
 // Range; ErrSingular for rates where Margin is below rigid.LeastMargin;
 // ErrNotFinite; ErrInput for a zero SlottedLever. An error leaves dst as it was.
 func (l *SlottedLever) Solve(dst *LeverState, turn rigid.Coordinate) error {
-	var m slotMotion
+	k := &l.form
 	sh, ch := trig.Sincos(turn.Pos / 2)
+	d2, s2 := k.squares(ch)
+	w, al, w2 := turn.Vel, turn.Acc, turn.Vel*turn.Vel
+	push := k.r * (math.Abs(al) + w2)
+	if !(s2 > k.clear && push > 0) {
+		return l.solveAny(dst, turn, sh, ch)
+	}
+	t, s := 1/(d2*s2), math.Sqrt(s2) // as in place and write, without a slotMotion between, which would go through memory
+	i, j, half := s2*t, d2*t, ch*ch
+	sin, cos := 2*sh*ch, (ch-sh)*(ch+sh)
+	u := k.along(s, half, sin, i)
+	swing1, swing2 := k.swing(s, half, sin, cos, i, j)
+	slide1, slide2 := k.slide(s, half, sin, cos, j)
+	omega, alpha, acc := swing1*w, swing1*al+swing2*w2, slide1*al+slide2*w2
+	if (alpha+acc+push)*0 != 0 {
+		return rigid.ErrNotFinite
+	}
+	dst.Slide.Pos, dst.Slide.Vel, dst.Slide.Acc = s, slide1*w, acc
+	dst.Turn, dst.Slot, dst.Margin = turn, k.e, k.margin(s)
+	dst.Swing.Vel, dst.Swing.Acc = omega, alpha
+
+	crank := turned(k.mount.Axis, r2.Vec{X: cos, Y: sin})
+	x, y := k.r*crank.X, k.r*crank.Y
+	set(&dst.Crank, k.mount.Origin, r2.Vec{}, r2.Vec{}, crank, w, al)
+	line, from := k.mount.Axis, 0.0
+	if k.across < 0 {
+		line, from = crank, turn.Pos
+	}
+	line = turned(line, u)
+	set(&dst.Block, r2.Vec{X: k.mount.Origin.X + x, Y: k.mount.Origin.Y + y},
+		r2.Vec{X: -(w * y), Y: w * x}, r2.Vec{X: -(al*y + w2*x), Y: al*x - w2*y}, line, omega, alpha)
+	set(&dst.Lever, k.pivot, r2.Vec{}, r2.Vec{}, line, omega, alpha)
+	dst.Knee = knee(crank, line)
+	dst.Swing.Pos = from + trig.Angle(u.X, u.Y)
+	return nil
+}
+
+// solveAny is Solve in every case: also for a crank at rest or at a limit.
+func (l *SlottedLever) solveAny(dst *LeverState, turn rigid.Coordinate, sh, ch float64) error {
+	var m slotMotion
 	d2, s2 := l.form.squares(ch)
 	if err := l.form.place(&m, turn, sh, ch, d2, s2); err != nil {
 		return err
 	}
 	l.form.write(&dst.Crank, &dst.Block, &dst.Lever, &m)
 	dst.Turn, dst.Swing, dst.Slide = turn, m.swing, m.slide
-	dst.Slot, dst.Knee, dst.Margin = l.given.Slot, m.knee(), m.margin
+	dst.Slot, dst.Knee, dst.Margin = l.given.Slot, knee(m.crank, m.line), m.margin
 	return nil
 }
 

@@ -26,13 +26,14 @@ type slotForm struct {
 	twice      float64 // 2 × the shorter
 	gap, gap2  float64 // |r − c| and its square
 	least      float64 // gap² − e², of σ²
-	rc         float64
+	minus      float64 // −rc
 	perCrank   float64 // 1/r
 	r2         float64 // r²
 	rc4        float64 // 4rc
 	difference float64 // (r − c)(r + c)
 	slack      float64 // of σ², for positions that are a rounding beyond the limit
 	floor      float64 // of σ², below which it is the rounding of a crank at its limit
+	clear      float64 // of σ², above which a position is clear of every limit
 	size       float64 // the largest length
 	mount      rigid.Pose
 	pivot      r2.Vec // of the line, in the frame
@@ -55,7 +56,8 @@ func newSlotForm(r, c, e float64, mount rigid.Placement) slotForm {
 		r: r, c: c, e: e,
 		across: across, twice: 2 * short, size: size,
 		gap: gap, gap2: gap * gap, least: least, floor: floor,
-		rc: r * c, perCrank: 1 / r, r2: r * r, rc4: 4 * r * c, difference: (r - c) * (r + c),
+		clear: max(floor, 4*rigid.LeastMargin*rigid.LeastMargin*r*r),
+		minus: -r * c, perCrank: 1 / r, r2: r * r, rc4: 4 * r * c, difference: (r - c) * (r + c),
 		slack: 2 * beyond * size * math.Abs(e),
 		mount: m,
 		pivot: m.Point(r2.Vec{X: -c}),
@@ -77,15 +79,44 @@ func (k *slotForm) squares(ch float64) (d2, s2 float64) {
 	return k.gap2 + span, k.least + span
 }
 
-// place solves the position for the crank's angle φ, the sine and cosine of its
-// half, D² and σ². From (d log d)/dφ = ir·exp(iφ)/d, the
-// imaginary part of whose derivative is rc(r² − c²)sin φ/D⁴, and
-// ψ = arg d − asin(e/D),
+// along returns u·exp(−iφ) where k.across is negative, else u, for σ, half = cos²(φ/2),
+// sin φ and i = 1/D²: d is reckoned along the longer of crank and centre line.
+func (k *slotForm) along(s, half, sin, i float64) r2.Vec {
+	dx, dy := k.gap+k.twice*half, k.across*sin
+	return r2.Vec{X: (s*dx + k.e*dy) * i, Y: (s*dy - k.e*dx) * i}
+}
+
+// swing returns the derivatives of ψ by the crank's angle φ, for half and i as along
+// has them and j = 1/σ². From (d log d)/dφ = ir·exp(iφ)/d, the imaginary part of
+// whose derivative is rc(r² − c²)sin φ/D⁴, and ψ = arg d − asin(e/D),
 //
 //	ψ'  = [r(r + c cos φ) − (e/σ)·rc sin φ]/D²
 //	ψ'' = rc{(r² − c²)sin φ/D⁴ − (e/σ)[((r − c)²cos φ + 4rc cos²(φ/2))/D⁴ + rc sin²φ/(D²σ²)]}
+func (k *slotForm) swing(s, half, sin, cos, i, j float64) (first, second float64) {
+	q, e := k.minus*sin, k.e*(s*j)
+	first = (k.r2 - k.minus*cos + e*q) * i
+	return first, k.minus * i * ((e*(k.gap2*cos+k.rc4*half)-k.difference*sin)*i - e*q*sin*j)
+}
+
+// slide returns the derivatives of σ, as swing does those of ψ:
+//
 //	σ'  = −rc sin φ/σ
 //	σ'' = −rc[((r − c)² − e²)cos φ + 4rc cos⁴(φ/2)]/σ³
+func (k *slotForm) slide(s, half, sin, cos, j float64) (first, second float64) {
+	i := s * j // 1/σ
+	return k.minus * sin * i, k.minus * i * j * (k.least*cos + k.rc4*half*half)
+}
+
+// margin returns σ over the crank, at most 1.
+func (k *slotForm) margin(s float64) float64 {
+	if s > k.r {
+		return 1
+	}
+	return s * k.perCrank
+}
+
+// place solves the position for the crank's angle φ, the sine and cosine of its
+// half, D² and σ², all cases of it: move is quicker in the usual one.
 //
 // At the limit of a crank that cannot turn fully σ is 0 and there are no
 // derivatives. The swing is continuous in φ: less the turn of the longer of crank
@@ -102,34 +133,23 @@ func (k *slotForm) place(m *slotMotion, turn rigid.Coordinate, sh, ch, d2, s2 fl
 		s2, by = 0, d2
 	}
 	t, s := 1/(d2*by), math.Sqrt(s2) // one division, beside the root
-	i, j := by*t, d2*t               // 1/D², 1/σ²
-	half := ch * ch
-	span := k.rc4 * half
+	i, j, half := by*t, d2*t, ch*ch
 	sin, cos := 2*sh*ch, (ch-sh)*(ch+sh)
-	dx, dy := k.gap+k.twice*half, k.across*sin
-	u := r2.Vec{X: (s*dx + k.e*dy) * i, Y: (s*dy - k.e*dx) * i}
-	js := s * j // 1/σ
-	q := k.rc * sin
-	ej := k.e * js
-	slide1, slide2 := -q*js, -k.rc*js*j*(k.least*cos+span*half)
-	swing1 := (k.r2 + k.rc*cos - ej*q) * i
-	swing2 := k.rc * i * ((k.difference*sin-ej*(k.gap2*cos+span))*i - ej*q*sin*j)
-	m.margin = s * k.perCrank
-	if m.margin > 1 {
-		m.margin = 1
-	}
+	u := k.along(s, half, sin, i)
+	m.margin = k.margin(s)
 	m.slide.Pos, m.turn = s, turn
 	if w, al := turn.Vel, turn.Acc; w != 0 || al != 0 {
 		if m.margin < rigid.LeastMargin {
 			return rigid.ErrSingular
 		}
+		swing1, swing2 := k.swing(s, half, sin, cos, i, j)
+		slide1, slide2 := k.slide(s, half, sin, cos, j)
 		w2 := w * w
-		a, b := swing1*al+swing2*w2, slide1*al+slide2*w2
-		if (a+b+k.r*(math.Abs(al)+w2))*0 != 0 {
+		m.swing.Vel, m.swing.Acc = swing1*w, swing1*al+swing2*w2
+		m.slide.Vel, m.slide.Acc = slide1*w, slide1*al+slide2*w2
+		if (m.swing.Acc+m.slide.Acc+k.r*(math.Abs(al)+w2))*0 != 0 {
 			return rigid.ErrNotFinite
 		}
-		m.swing.Vel, m.swing.Acc = swing1*w, a
-		m.slide.Vel, m.slide.Acc = slide1*w, b
 	}
 	m.crank = turned(k.mount.Axis, r2.Vec{X: cos, Y: sin})
 	if k.across < 0 {

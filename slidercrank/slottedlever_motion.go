@@ -36,8 +36,8 @@ func (k *slotForm) write(crank, block, line *rigid.Motion, m *slotMotion) {
 // line than its foot, which is at c cos ψ, that is where
 //
 //	σ − c cos ψ = r cos(φ − ψ) > 0
-func (m *slotMotion) knee() rigid.Side {
-	if m.crank.X*m.line.X+m.crank.Y*m.line.Y < 0 {
+func knee(crank, line r2.Vec) rigid.Side {
+	if crank.X*line.X+crank.Y*line.Y < 0 {
 		return rigid.Left
 	}
 	return rigid.Right
