@@ -29,46 +29,60 @@ import (
 // comes from κ' = (ξ cos φ + η sin φ)σ/ξ; the plain one, which sums the normal
 // accelerations of crank and rod, cancels where one is folded on the other.
 func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
+	sin, cos := trig.Sincos(turn.Pos)
 	w, al, w2 := turn.Vel, turn.Acc, turn.Vel*turn.Vel
-	if turn.Pos*0+w*0+al*0 != 0 {
+	x, y := l.crank*cos, float64(l.crank*sin) // y not fused with what follows: see outward
+	eta := l.guide - y
+	p := (l.rod - eta) * (l.rod + eta) // ξ²
+	if !(p > l.clear && (w != 0 || al != 0)) {
+		return l.park(dst, turn, r2.Vec{X: cos, Y: sin}, eta)
+	}
+	j, xi := 1/p, l.side*math.Sqrt(p) // the division beside the root
+	i, k, pos := xi*j, xi*sin-eta*cos, x+xi
+	rod1, slide1 := -x*i, -l.crank*k*i
+	rod2 := (y + rod1*rod1*eta) * i
+	slide2 := -l.crank * j * ((xi*cos+eta*sin)*pos + k*rod1*eta)
+	omega, alpha := rod1*w, rod1*al+rod2*w2
+	slide := rigid.Coordinate{Pos: pos, Vel: slide1 * w, Acc: slide1*al + slide2*w2}
+	if (l.crank*(w2+math.Abs(al))+alpha+slide.Acc)*0 != 0 {
 		return rigid.ErrNotFinite
 	}
-	if l.crank == 0 {
-		return rigid.ErrInput
-	}
-	sin, cos := trig.Sincos(turn.Pos)
-	x, y := l.crank*cos, float64(l.crank*sin) // y not fused with what follows: see outward
-	rod, ok := l.byCrank.Place(l.guide-y, l.side)
-	if !ok {
-		if rod, ok = l.square(l.guide - y); !ok {
-			return rigid.ErrUnreachable
-		}
-	}
-	k := rod.Xi*sin - rod.Eta*cos
-	slide, margin, omega, alpha := rigid.Coordinate{Pos: x + rod.Xi}, l.byCrank.Margin(rod), 0.0, 0.0
-	if w != 0 || al != 0 {
-		if margin < rigid.LeastMargin {
-			return rigid.ErrSingular
-		}
-		i := 1 / rod.Xi
-		rod1, slide1 := -x*i, -l.crank*k*i
-		rod2 := (y + rod1*rod1*rod.Eta) * i
-		slide2 := -l.crank * i * i * ((rod.Xi*cos+rod.Eta*sin)*slide.Pos + k*rod1*rod.Eta)
-		omega, slide.Vel = rod1*w, slide1*w
-		alpha, slide.Acc = rod1*al+rod2*w2, slide1*al+slide2*w2
-		if (l.crank*(w2+math.Abs(al))+alpha+slide.Acc)*0 != 0 {
-			return rigid.ErrNotFinite
-		}
-	}
-	dst.Turn, dst.Slide, dst.Margin = turn, slide, margin
+	dst.Turn, dst.Slide, dst.Margin = turn, slide, math.Abs(xi)*l.perRod
 	dst.Branch, dst.Knee = l.given.Branch, rigid.Left
 	if k < 0 {
 		dst.Knee = rigid.Right
 	}
 	u := turned(l.axis, r2.Vec{X: cos, Y: sin}) // as in links, without the call
 	set(&dst.Crank, l.origin, r2.Vec{}, r2.Vec{}, u, w, al)
-	setPinned(&dst.Rod, l.origin, r2.Scale(l.crank, u), w, al, turned(l.rodAxis, r2.Vec{X: rod.Xi, Y: rod.Eta}), omega, alpha)
+	setPinned(&dst.Rod, l.origin, r2.Scale(l.crank, u), w, al, turned(l.rodAxis, r2.Vec{X: xi, Y: eta}), omega, alpha)
 	setGuided(&dst.Slider, l.origin, l.axis, l.offset, &slide)
+	return nil
+}
+
+// park is Solve for what has no rates: a crank at rest along the unit vector crank,
+// with a rod that rises by eta, a singular position, and every input that is refused.
+func (l *Linkage) park(dst *State, turn rigid.Coordinate, crank r2.Vec, eta float64) error {
+	if turn.Pos*0+turn.Vel*0+turn.Acc*0 != 0 {
+		return rigid.ErrNotFinite
+	}
+	if l.crank == 0 {
+		return rigid.ErrInput
+	}
+	rod, ok := l.byCrank.Place(eta, l.side)
+	if !ok {
+		if rod, ok = l.square(eta); !ok {
+			return rigid.ErrUnreachable
+		}
+	}
+	if turn.Vel != 0 || turn.Acc != 0 {
+		return rigid.ErrSingular
+	}
+	dst.Turn, dst.Slide, dst.Margin = turn, rigid.Coordinate{Pos: l.crank*crank.X + rod.Xi}, math.Abs(rod.Xi)*l.perRod
+	dst.Branch, dst.Knee = l.given.Branch, rigid.Left
+	if rod.Xi*crank.Y < rod.Eta*crank.X {
+		dst.Knee = rigid.Right
+	}
+	l.links(dst, crank, r2.Vec{X: rod.Xi, Y: rod.Eta}, 0, 0, 0, 0)
 	return nil
 }
 

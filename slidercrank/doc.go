@@ -53,7 +53,7 @@
 //
 // An output y of inputs x, the dimensions and the drive's place, rate and
 // acceleration, is off by at most 4ε(|y| + Σ|x ∂y/∂x|), ε = 2⁻⁵²; of the slider-crank
-// no more than a quarter of that was seen, for cranks of 0.01 to 100 rods and sizes
+// no more than two fifths of that was seen, for cranks of 0.01 to 100 rods and sizes
 // of 1e-6 to 1e3 m, down to 1e-6 rad from singular positions. The loop closes within
 // 1e-14 of the largest length.
 //

@@ -213,6 +213,42 @@ func TestInversionsTimeReversal(t *testing.T) {
 	})
 }
 
+// TestInversionsSlowCrank: a crank at rest is placed as one that moves, with margin,
+// and one so slow that the square of its speed underflows has its velocities.
+func TestInversionsSlowCrank(t *testing.T) {
+	each(t, 19, func(t *testing.T, _ maker, m machine, turn rigid.Coordinate) {
+		const slow = 1e-200
+		a, err1 := m.solve(turn)
+		rest, err2 := m.solve(rigid.Coordinate{Pos: turn.Pos})
+		b, err3 := m.solve(rigid.Coordinate{Pos: turn.Pos, Vel: slow * turn.Vel})
+		if err1 != nil || err2 != nil || err3 != nil {
+			t.Fatal(err1, err2, err3)
+		}
+		if math.Abs(a.margin-rest.margin)+math.Abs(a.margin-b.margin) > 1e-15 {
+			t.Errorf("margin %v at rest, %v slow, %v in motion", rest.margin, b.margin, a.margin)
+		}
+		va, vb := numbers(a, 1), numbers(b, 1)
+		for k := range va {
+			if !(math.Abs(vb[k]/slow-va[k]) <= 1e-12*(10+math.Abs(va[k]))) {
+				t.Errorf("velocity %d of a slow crank: %v, want %v", k, vb[k]/slow, va[k])
+			}
+		}
+		moving := append(numbers(rest, 1), append(numbers(rest, 2), numbers(b, 2)...)...)
+		for k, v := range moving {
+			if v != 0 {
+				t.Errorf("number %d of a crank at rest: %v", k, v)
+			}
+		}
+		for i := range a.links {
+			for _, s := range []sample{rest, b} {
+				if d := r2.Norm(r2.Sub(a.links[i].Pose.Axis, s.links[i].Pose.Axis)) + r2.Norm(r2.Sub(a.links[i].Pose.Origin, s.links[i].Pose.Origin)); d > 1e-14 {
+					t.Errorf("link %d is off by %v", i, d)
+				}
+			}
+		}
+	})
+}
+
 // alike compares motions within rounding.
 func alike(t *testing.T, what string, want, got []rigid.Motion) {
 	t.Helper()

@@ -221,3 +221,27 @@ func TestSlottedLeverMargin(t *testing.T) {
 		t.Errorf("margin by the swing %v; %v", st.Margin, err)
 	}
 }
+
+// TestSlottedLeverNearlyChanging: with the pin passing the lever pivot at a distance
+// d of few 1e-8 cranks the lever turns at −r/d times the crank's speed, and no longer
+// where that is below LeastMargin.
+func TestSlottedLeverNearlyChanging(t *testing.T) {
+	for _, d := range []float64{-3e-8, -1.5e-8, -1.01e-8, -0.99e-8, 0.99e-8, 1.01e-8, 1.5e-8, 3e-8} {
+		l := newLever(t, slidercrank.LeverDimensions{Crank: 1, Centre: 1 + d})
+		gap := l.Dimensions().Centre - 1 // exact
+		var st slidercrank.LeverState
+		err := l.Solve(&st, rigid.Coordinate{Pos: math.Pi, Vel: 2})
+		if math.Abs(gap) < rigid.LeastMargin {
+			if err != rigid.ErrSingular || st != (slidercrank.LeverState{}) {
+				t.Errorf("gap %v: %v", gap, err)
+			}
+			continue
+		}
+		if want := -2 / gap; err != nil || math.Abs(st.Swing.Vel/want-1) > 1e-7 || st.Lever.Omega != st.Swing.Vel {
+			t.Errorf("gap %v: the lever turns at %v, want %v; %v", gap, st.Swing.Vel, want, err)
+		}
+		if math.Abs(st.Margin/math.Abs(gap)-1) > 1e-7 {
+			t.Errorf("gap %v: margin %v", gap, st.Margin)
+		}
+	}
+}
