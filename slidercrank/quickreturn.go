@@ -45,18 +45,19 @@ type QuickReturnState struct {
 // slowly and returns fast. The zero QuickReturn gives ErrInput. Any number of
 // goroutines may share one.
 type QuickReturn struct {
-	given QuickReturnDimensions
-	form  slotForm
-	arm   float64
-	bend  r2.Vec // unit vector of the arm in the lever
-	side  float64
-	byArm dyad.RRP
-	byRam dyad.RRR
-	size  float64 // the largest length
-	ram   r2.Vec  // unit vector of the travel, in the frame
-	foot  r2.Vec  // the lever pivot from Guide's origin, in Guide's axes
-	toPin r2.Vec  // turns the lever's unit vector in the frame into the arm's in Guide's axes
-	zero  r2.Vec  // Guide's origin in the frame
+	given  QuickReturnDimensions
+	form   slotForm
+	arm    float64
+	bend   r2.Vec // unit vector of the arm in the lever
+	side   float64
+	byArm  dyad.RRP
+	byRam  dyad.RRR
+	swings [4]float64 // of the lever at its limits
+	size   float64    // the largest length
+	ram    r2.Vec     // unit vector of the travel, in the frame
+	foot   r2.Vec     // the lever pivot from Guide's origin, in Guide's axes
+	toPin  r2.Vec     // turns the lever's unit vector in the frame into the arm's in Guide's axes
+	zero   r2.Vec     // Guide's origin in the frame
 }
 
 // NewQuickReturn checks the dimensions and returns the drive. Errors are
@@ -81,6 +82,7 @@ func NewQuickReturn(d QuickReturnDimensions) (*QuickReturn, error) {
 	}
 	q.size = max(q.size, math.Abs(q.foot.X), math.Abs(q.foot.Y))
 	q.form.size = q.size // of the swing that SolveTravel finds
+	q.swings = q.form.swings()
 	q.toPin = turned(q.bend, r2.Vec{X: q.ram.X, Y: -q.ram.Y})
 	if d.Branch == Behind {
 		q.side = -1
@@ -119,7 +121,8 @@ func (q *QuickReturn) Dimensions() QuickReturnDimensions { return q.given }
 
 // Solve writes into dst the motion of all links for a motion of the crank, turn in
 // rad counter-clockwise from the direction away from the lever pivot. Margin is the
-// lesser of the slotted lever's and |cos| of the angle between rod and guide.
+// lesser of the slotted lever's and |cos| of the angle between rod and guide, 0 at
+// the ends of Range and where no more than rounding keeps the crank from one.
 // Errors: ErrUnreachable outside Range; ErrSingular for rates where Margin is below
 // rigid.LeastMargin; ErrNotFinite; ErrInput for a zero QuickReturn. An error leaves
 // dst as it was.

@@ -23,22 +23,21 @@ type ramMotion struct {
 // and the rod from there to the guide is an RRP dyad; without a rod the ram goes
 // with the pin's x.
 func (q *QuickReturn) push(r *ramMotion, m *slotMotion) error {
-	a := r2.Scale(q.arm, turned(q.toPin, m.line))
-	w, al := m.swing.Vel, m.swing.Acc
-	r.arm = a
-	r.vel = r2.Vec{X: -w * a.Y, Y: w * a.X}
-	r.acc = r2.Vec{X: -al*a.Y - w*w*a.X, Y: al*a.X - w*w*a.Y}
+	q.carry(r, m)
 	r.margin = m.margin
 	if q.byArm.L == 0 {
-		r.travel = rigid.Coordinate{Pos: q.foot.X + a.X, Vel: r.vel.X, Acc: r.acc.X}
+		r.travel = rigid.Coordinate{Pos: q.foot.X + r.arm.X, Vel: r.vel.X, Acc: r.acc.X}
 		return r.finite()
 	}
 	var ok bool
-	if r.rod, ok = q.reach(a); !ok {
+	if r.rod, ok = q.reach(r.arm); !ok {
 		return rigid.ErrUnreachable
 	}
-	r.travel = rigid.Coordinate{Pos: q.foot.X + a.X + r.rod.Xi}
+	r.travel = rigid.Coordinate{Pos: q.foot.X + r.arm.X + r.rod.Xi}
 	r.margin = min(m.margin, q.byArm.Margin(r.rod))
+	if settle(r.rod.Xi, q.byArm.L, q.loose(r.arm, m.slide.Pos)) == 0 {
+		r.margin = 0
+	}
 	if m.turn.Vel == 0 && m.turn.Acc == 0 {
 		return nil
 	}
@@ -50,6 +49,14 @@ func (q *QuickReturn) push(r *ramMotion, m *slotMotion) error {
 	return r.finite()
 }
 
+// carry sets the motion of the output pin, which the lever carries.
+func (q *QuickReturn) carry(r *ramMotion, m *slotMotion) {
+	a, w, al := r2.Scale(q.arm, turned(q.toPin, m.line)), m.swing.Vel, m.swing.Acc
+	r.arm = a
+	r.vel = r2.Vec{X: -w * a.Y, Y: w * a.X}
+	r.acc = r2.Vec{X: -al*a.Y - w*w*a.X, Y: al*a.X - w*w*a.Y}
+}
+
 // reach places the rod for the arm a, square to the guide where it is too short by
 // a rounding, and reports whether it reaches.
 func (q *QuickReturn) reach(a r2.Vec) (dyad.Rod, bool) {
@@ -57,9 +64,15 @@ func (q *QuickReturn) reach(a r2.Vec) (dyad.Rod, bool) {
 	if over := math.Abs(eta) - q.byArm.L; over > 0 && over <= beyond*q.size {
 		eta = math.Copysign(q.byArm.L, eta)
 	}
-	t, ok := q.byArm.Place(eta, q.side)
-	t.Xi = settle(t.Xi, q.byArm.L, math.Abs(q.foot.Y)+math.Abs(a.Y))
-	return t, ok
+	return q.byArm.Place(eta, q.side)
+}
+
+// loose returns the size of what the height of the arm's pin is rounded by: its
+// terms, and what a rounding of the crank's angle moves it by. A lever turns at ξ/σ
+// times the speed of its crank, |ξ| ≤ r: see solveSwing.
+func (q *QuickReturn) loose(a r2.Vec, sigma float64) float64 {
+	k := &q.form
+	return math.Abs(q.foot.Y) + math.Abs(a.Y) + math.Abs(a.X)*(1+(k.r+k.c+math.Abs(k.e))/sigma)
 }
 
 // finite returns ErrNotFinite if a rate overflows.
@@ -109,8 +122,9 @@ func (q *QuickReturn) elbow(r *ramMotion) float64 {
 // Travel, Elbow and Knee give the State back, with Turn.Pos in (−π, π].
 //
 // Margin is the lesser of |sin| of the angle between arm and rod, or travel and
-// arm's normal, and that of SolveSwing. Errors: ErrUnreachable out of reach, and
-// where the pose is that of the other Branch; ErrSingular for rates where Margin is
+// arm's normal, and that of SolveSwing, 0 at the dead centres and where no more than
+// the rounding of the travel keeps the ram from one.
+// Errors: ErrUnreachable out of reach, and where the pose is that of the other Branch; ErrSingular for rates where Margin is
 // below rigid.LeastMargin; ErrNotFinite; ErrInput for a zero QuickReturn or an
 // unknown side. An error leaves dst as it was.
 func (q *QuickReturn) SolveTravel(dst *QuickReturnState, travel rigid.Coordinate, elbow, knee rigid.Side) error {
@@ -130,59 +144,71 @@ func (q *QuickReturn) SolveTravel(dst *QuickReturnState, travel rigid.Coordinate
 		return err
 	}
 	m.swing.Pos = q.form.follow(swing.Pos, m.turn.Pos)
-	margin := min(r.margin, m.margin)
-	if err := q.push(&r, &m); err != nil {
+	q.carry(&r, &m)
+	r.rod = dyad.Rod{Xi: travel.Pos - q.foot.X - r.arm.X, Eta: -q.foot.Y - r.arm.Y}
+	r.travel, r.margin = travel, min(r.margin, m.margin)
+	if err := r.finite(); err != nil {
 		return err
 	}
-	r.travel, r.margin = travel, margin
 	q.write(dst, &m, &r)
 	dst.Elbow, dst.Knee = elbow, knee
 	return nil
 }
 
-// pull finds the lever's motion for one of the ram: the triangle of arm and rod, an
-// RRR dyad between the lever pivot, at rest, and the ram pin; without a rod,
+// pull finds the motion of lever and rod for one of the ram: the triangle of arm and
+// rod, an RRR dyad between the lever pivot, at rest, and the ram pin; without a rod,
 //
 //	arm·exp(iχ) = x + iy,  x = travel − foot.X,  v = −yχ',  a = −yχ'' − xχ'²
-func (q *QuickReturn) pull(r *ramMotion, travel rigid.Coordinate, elbow rigid.Side) (rigid.Coordinate, error) {
-	side := 1 - 2*float64(elbow)
-	var w, al float64
-	x, v, a := travel.Pos-q.foot.X, travel.Vel, travel.Acc
-	rates := v != 0 || a != 0
+//
+// A rounding of the travel turns the arm by loose. Where that is all there is between
+// the lever and a limit of its own, the lever is there.
+func (q *QuickReturn) pull(r *ramMotion, travel rigid.Coordinate, elbow rigid.Side) (swing rigid.Coordinate, err error) {
+	side, x, off := 1-2*float64(elbow), travel.Pos-q.foot.X, equal*(math.Abs(q.foot.X)+q.arm+q.byArm.L)
+	var t dyad.Triangle
+	var loose float64
 	if q.byArm.L == 0 {
 		y, ok := leg(q.arm, x, q.size)
-		y = settle(y, q.arm, math.Abs(travel.Pos)+math.Abs(q.foot.X))
 		if !ok {
-			return rigid.Coordinate{}, rigid.ErrUnreachable
+			return swing, rigid.ErrUnreachable
 		}
+		y = settle(y, q.arm, math.Abs(travel.Pos)+math.Abs(q.foot.X))
 		r.arm, r.margin = r2.Vec{X: x, Y: side * y}, y/q.arm
-		w = -v / r.arm.Y
-		al = -(a + x*w*w) / r.arm.Y
+		loose = off / max(y, math.Sqrt(off*q.arm))
 	} else {
-		var t dyad.Triangle
-		if !q.triangle(&t, r2.Vec{X: x, Y: -q.foot.Y}, side) || -t.Q.X*q.side < -beyond*q.size {
-			return rigid.Coordinate{}, rigid.ErrUnreachable
+		ok := q.triangle(&t, r2.Vec{X: x, Y: -q.foot.Y}, side, off)
+		loose = 2 * off * (math.Abs(t.Q.X) + math.Abs(t.Q.Y)) / max(math.Abs(t.F), math.Sqrt(off*q.arm*q.byArm.L*(q.arm+q.byArm.L)))
+		if !ok || -t.Q.X*q.side < -beyond*q.size*(1+q.arm*loose/off) {
+			return swing, rigid.ErrUnreachable
 		}
-		var rod float64
 		r.arm, r.margin = t.R, q.byRam.Margin(&t)
-		w, rod = t.Rates(r2.Vec{X: -v})
-		al, _ = t.Rates(t.Bias(r2.Vec{X: -a}, w, rod))
 	}
-	swing := rigid.Coordinate{Pos: q.swingAt(r.arm)}
-	if rates {
-		if r.margin < rigid.LeastMargin {
-			return rigid.Coordinate{}, rigid.ErrSingular
+	swing.Pos = q.swingAt(r.arm)
+	for _, limit := range q.swings {
+		if math.Abs(rigid.Wrap(swing.Pos-limit)) <= loose {
+			swing.Pos = limit
 		}
-		swing.Vel, swing.Acc = w, al
+	}
+	if travel.Vel == 0 && travel.Acc == 0 {
+		return swing, nil
+	}
+	if r.margin < rigid.LeastMargin {
+		return swing, rigid.ErrSingular
+	}
+	if q.byArm.L == 0 {
+		swing.Vel = -travel.Vel / r.arm.Y
+		swing.Acc = -(travel.Acc + x*swing.Vel*swing.Vel) / r.arm.Y
+	} else {
+		swing.Vel, r.omega = t.Rates(r2.Vec{X: -travel.Vel})
+		swing.Acc, r.alpha = t.Rates(t.Bias(r2.Vec{X: -travel.Acc}, swing.Vel, r.omega))
 	}
 	return swing, nil
 }
 
 // triangle places arm and rod between the lever pivot and the ram pin, d apart,
-// flat where d is a rounding from the limits of their reach or beyond.
-func (q *QuickReturn) triangle(t *dyad.Triangle, d r2.Vec, side float64) bool {
+// flat where d is no more than off from the limits of their reach, or a rounding beyond.
+func (q *QuickReturn) triangle(t *dyad.Triangle, d r2.Vec, side, off float64) bool {
 	l, b, c := math.Hypot(d.X, d.Y), q.byRam.B, q.byRam.C
-	if min(math.Abs(l-(b+c)), math.Abs(l-math.Abs(b-c))) > equal*q.size && q.byRam.Place(t, d, side) {
+	if min(math.Abs(l-(b+c)), math.Abs(l-math.Abs(b-c))) > off && q.byRam.Place(t, d, side) {
 		return true
 	}
 	if l == 0 || q.byRam.Gap(l) > beyond*q.size {

@@ -136,6 +136,9 @@ func (k *slotForm) place(m *slotMotion, turn rigid.Coordinate, sh, ch, d2, s2 fl
 	i, j, half := by*t, d2*t, ch*ch
 	sin, cos := 2*sh*ch, (ch-sh)*(ch+sh)
 	u := k.along(s, half, sin, i)
+	if s == 0 { // D is |e| no closer than the rounding of σ²
+		u = r2.Unit(u)
+	}
 	m.margin = k.margin(s)
 	m.slide.Pos, m.turn = s, turn
 	if w, al := turn.Vel, turn.Acc; w != 0 || al != 0 {

@@ -21,25 +21,48 @@ func (k *slotForm) turns() []rigid.Interval {
 	return []rigid.Interval{{Lo: -end, Hi: end}}
 }
 
-// deadCentres returns the crank's angles where ψ' = 0, the crank being at right
-// angles to the line: the pin is at ±r on the line's left normal through the crank
-// pivot, so that
-//
-//	e + c sin ψ = ±r,  φ = ψ ± π/2,  ψ'' = ∓r/σ with σ = c cos ψ
-//
-// of which the last is the limit that the derivatives of the way back lead to, ξ
-// going to 0. The lower one comes first, at φ in (−π, 0); the upper one is in (0, π).
+// deadCentres returns the crank's angles where ψ' = 0. The lower one comes first, at φ
+// in (−π, 0); the upper one is in (0, π). ψ” = ∓r/σ is the limit that the derivatives
+// of the way back lead to, ξ going to 0.
 func (k *slotForm) deadCentres() []rigid.Coefficients {
 	var found []rigid.Coefficients
 	for _, side := range [...]float64{-1, 1} {
-		cos, ok := leg(k.c, side*k.r-k.e, 0)
-		if !ok || cos == 0 {
-			continue
+		if swing, sigma := k.deadCentre(side); sigma > 0 {
+			found = append(found, rigid.Coefficients{
+				In: swing + side*math.Pi/2, Out: swing, Second: -side * k.r / sigma,
+			})
 		}
-		swing := math.Atan2(side*k.r-k.e, cos)
-		found = append(found, rigid.Coefficients{
-			In: swing + side*math.Pi/2, Out: swing, Second: -side * k.r / cos,
-		})
 	}
 	return found
+}
+
+// deadCentre returns ψ and σ where the crank is at right angles to the line, the pin
+// at r on the line's left normal through the crank pivot for side = 1, at −r for −1,
+// and σ = 0 where it never is:
+//
+//	e + c sin ψ = ±r,  φ = ψ ± π/2,  σ = c cos ψ
+func (k *slotForm) deadCentre(side float64) (swing, sigma float64) {
+	y := side*k.r - k.e
+	sigma, _ = leg(k.c, y, 0)
+	return math.Atan2(y, sigma), sigma
+}
+
+// swings returns the angles of the line where it turns back, and those at the ends of
+// turns, NaN for each that there is not. At these d = ieu, so that from |d − c| = r
+//
+//	u = (y − ix)/e,  x = (e² + c² − r²)/2c,  y = ±√(e² − x²)
+func (k *slotForm) swings() [4]float64 {
+	var all [4]float64
+	for i, side := range [...]float64{-1, 1} {
+		all[i], all[2+i] = math.NaN(), math.NaN()
+		if swing, sigma := k.deadCentre(side); sigma > 0 {
+			all[i] = swing
+		}
+		if k.least < 0 {
+			x := (k.e*k.e - k.difference) / (2 * k.c)
+			y, _ := leg(math.Abs(k.e), x, k.size)
+			all[2+i] = math.Atan2(-x*k.e, side*y*math.Abs(k.e))
+		}
+	}
+	return all
 }

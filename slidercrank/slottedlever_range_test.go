@@ -76,9 +76,7 @@ func TestInversionsReturnedPositions(t *testing.T) {
 		}
 		for _, x := range m.dead {
 			turns = append(turns, x.In)
-			got, err := m.back(rigid.Coordinate{Pos: x.In, Vel: 1})
-			// of a ram the rounding of its travel may leave a margin, a very small one
-			if err != rigid.ErrSingular && (len(got) == 0 || len(got[0].links) != 5 || got[0].margin > 1e-5) {
+			if _, err := m.back(rigid.Coordinate{Pos: x.In, Vel: 1}); err != rigid.ErrSingular {
 				t.Errorf("the way back with rates from the dead centre %+v: %v", x, err)
 			}
 		}
@@ -98,17 +96,15 @@ func TestInversionsReturnedPositions(t *testing.T) {
 					t.Fatalf("turn %v: %+v", at, s)
 				}
 			}
+			got, err := m.back(rigid.Coordinate{Pos: at})
+			if err != nil {
+				t.Errorf("turn %v: the way back: %v", at, err)
+				continue
+			}
 			if len(s.links) == 5 && elbow(s) < 0.1 {
 				continue // the rounding of the travel is too much for the lever's angle
 			}
-			got, err := m.back(rigid.Coordinate{Pos: at})
-			if len(s.links) == 5 && errors.Is(err, rigid.ErrUnreachable) {
-				// the ram's rounded travel may ask for a lever beyond its limit
-				got, err = m.back(rigid.Coordinate{Pos: at * (1 - 1e-9)})
-			}
-			if err != nil {
-				t.Errorf("turn %v: the way back: %v", at, err)
-			} else if d := math.Remainder(got[0].coords[0].Pos-at, 2*math.Pi); math.Abs(d) > 1e-5 {
+			if d := math.Remainder(got[0].coords[0].Pos-at, 2*math.Pi); math.Abs(d) > 1e-5 {
 				t.Errorf("turn %v: the way back gives %v", at, got[0].coords[0].Pos)
 			}
 		}

@@ -1,0 +1,115 @@
+package slidercrank_test
+
+import (
+	"math"
+	"math/rand/v2"
+	"testing"
+
+	"gonum.org/v1/gonum/spatial/r2"
+
+	"example.com/twopoint/rigid"
+	"example.com/twopoint/slidercrank"
+)
+
+// awkwardRam returns random dimensions of any size, many with crank and centre line, or
+// arm and rod, nearly equal, or with a crank that can only rock.
+func awkwardRam(rng *rand.Rand) slidercrank.QuickReturnDimensions {
+	d := slidercrank.QuickReturnDimensions{
+		Crank: 0.1 + rng.Float64(), Centre: 0.1 + rng.Float64(), Arm: 0.1 + 2*rng.Float64(), Rod: 0.1 + 2*rng.Float64(),
+		Branch: slidercrank.Branch(rng.IntN(2)),
+		Guide:  rigid.Placement{X: 2*rng.Float64() - 1, Y: 0.3 * (2*rng.Float64() - 1), Angle: math.Pi / 2},
+	}
+	switch rng.IntN(7) {
+	case 0:
+		d.Rod = 0
+	case 1:
+		d.Centre = d.Crank * (1 + 1e-3*(2*rng.Float64()-1))
+	case 2:
+		d.Slot = 0.8 * (2*rng.Float64() - 1)
+	case 3:
+		d.Slot, d.ArmAngle = 0.3*(2*rng.Float64()-1), 6*rng.Float64()
+	case 4:
+		d.Rod = d.Arm * (1 + 1e-2*rng.Float64())
+	}
+	if rng.IntN(3) == 0 {
+		d.Guide.Angle = 6 * rng.Float64()
+	}
+	if rng.IntN(2) == 0 {
+		d.Guide.X = -d.Centre + 0.01*rng.Float64()
+	}
+	for scale, f := math.Pow(10, float64(rng.IntN(10)-6)), []*float64{&d.Crank, &d.Centre, &d.Slot, &d.Arm, &d.Rod, &d.Guide.X, &d.Guide.Y}; len(f) > 0; f = f[1:] {
+		*f[0] *= scale
+	}
+	return d
+}
+
+// ramGap returns how far the joints of a state are from closing, over the largest length.
+func ramGap(d slidercrank.QuickReturnDimensions, st *slidercrank.QuickReturnState) float64 {
+	sin, cos := math.Sincos(d.ArmAngle)
+	out := st.Lever.At(r2.Vec{X: d.Arm * cos, Y: d.Arm * sin}).Pos
+	gap := r2.Norm(r2.Sub(st.Crank.At(r2.Vec{X: d.Crank}).Pos, st.Lever.At(r2.Vec{X: st.Slide.Pos, Y: d.Slot}).Pos))
+	gap = max(gap, r2.Norm(r2.Sub(out, st.Rod.Pose.Origin)))
+	if d.Rod > 0 {
+		gap = max(gap, r2.Norm(r2.Sub(st.Rod.At(r2.Vec{X: d.Rod}).Pos, st.Ram.Pose.Origin)))
+	} else {
+		gap = max(gap, math.Abs(r2.Dot(r2.Sub(out, st.Ram.Pose.Origin), st.Ram.Pose.Axis)))
+	}
+	return gap / max(d.Crank, d.Centre, math.Abs(d.Slot), d.Arm, d.Rod, math.Abs(d.Guide.X), math.Abs(d.Guide.Y))
+}
+
+// A position that the library itself returned as a limit is one: the place is answered,
+// rates are not, and a State's own travel gives the State back.
+func TestQuickReturnLimits(t *testing.T) {
+	rng, ends, centres := rand.New(rand.NewPCG(11, 41)), 0, 0
+	machines := []slidercrank.QuickReturnDimensions{
+		// arm and rod nearly in line where the lever turns back
+		{Crank: 0.34234154925269794, Centre: 0.4892498245138875, Arm: 1.05617271923884, Rod: 1.5617133963684722, Guide: across(1.3815126407954452)},
+	}
+	for range 10 * rounds() {
+		machines = append(machines, awkwardRam(rng))
+	}
+	var st, again slidercrank.QuickReturnState
+	for _, d := range machines {
+		q, err := slidercrank.NewQuickReturn(d)
+		if err != nil {
+			continue // the rod reaches the guide nowhere
+		}
+		back := func(at string) {
+			err := q.SolveTravel(&again, rigid.Coordinate{Pos: st.Travel.Pos}, st.Elbow, st.Knee)
+			if err != nil {
+				t.Fatalf("%s, %v of %+v: its own travel %v: %v", at, st.Turn.Pos, d, st.Travel.Pos, err)
+			}
+			if a, b := ramGap(d, &st), ramGap(d, &again); !(a < 2e-14 && b < 2e-14) {
+				t.Fatalf("%s, %v of %+v: open by %v, by its own travel %v", at, st.Turn.Pos, d, a, b)
+			}
+		}
+		for _, over := range q.Range() {
+			if over.Hi-over.Lo >= rigid.Revolution {
+				continue
+			}
+			for _, end := range []float64{over.Lo, over.Hi} {
+				ends++
+				err0, err1, err2 := q.Solve(&st, rigid.Coordinate{Pos: end}), q.Solve(&again, rigid.Coordinate{Pos: end, Vel: 1}), q.Solve(&again, rigid.Coordinate{Pos: end, Acc: 1})
+				if err0 != nil || err1 != rigid.ErrSingular || err2 != rigid.ErrSingular || st.Margin != 0 {
+					t.Fatalf("the end %v of %+v: place %v, speed %v, acceleration %v, margin %v", end, d, err0, err1, err2, st.Margin)
+				}
+				back("end")
+			}
+		}
+		for _, c := range q.DeadCentres() {
+			centres++
+			if err := q.Solve(&st, rigid.Coordinate{Pos: c.In}); err != nil || st.Travel.Pos != c.Out {
+				t.Fatalf("the dead centre %+v of %+v: travel %v, %v", c, d, st.Travel.Pos, err)
+			}
+			if err := q.SolveTravel(&again, rigid.Coordinate{Pos: c.Out, Vel: 1}, st.Elbow, st.Knee); err != rigid.ErrSingular {
+				t.Fatalf("the dead centre %+v of %+v: rates %v", c, d, err)
+			}
+			if back("dead centre"); again.Margin != 0 {
+				t.Fatalf("the dead centre %+v of %+v: margin %v", c, d, again.Margin)
+			}
+		}
+	}
+	if ends < 5*rounds() || centres < 5*rounds() {
+		t.Errorf("only %d ends and %d dead centres", ends, centres)
+	}
+}
