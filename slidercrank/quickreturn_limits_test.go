@@ -64,6 +64,15 @@ func TestQuickReturnLimits(t *testing.T) {
 	machines := []slidercrank.QuickReturnDimensions{
 		// arm and rod nearly in line where the lever turns back
 		{Crank: 0.34234154925269794, Centre: 0.4892498245138875, Arm: 1.05617271923884, Rod: 1.5617133963684722, Guide: across(1.3815126407954452)},
+		// arm and rod nearly in line where the crank, and where the rod, is at its limit
+		{
+			Crank: 1.0568644849957842, Centre: 1.06371632604902, Slot: 0.10422026461800561, Arm: 1.7975979884422233, ArmAngle: 0.4429831320635149,
+			Rod: 1.8037442915836372, Guide: rigid.Placement{X: -1.06371632604902, Y: 0.1849053619984719, Angle: math.Pi / 2},
+		},
+		{
+			Crank: 0.9513243895378383, Centre: 0.952087308242873, Arm: 1.0991349945528952, Rod: 0.12374252197869243,
+			Guide: rigid.Placement{X: -0.01879844751832338, Y: -0.2097633810864273, Angle: math.Pi / 2},
+		},
 	}
 	for range 10 * rounds() {
 		machines = append(machines, awkwardRam(rng))

@@ -19,7 +19,6 @@ type Linkage struct {
 	side         float64 // of the slider pin from the crank pin along the guide: 1 Ahead, −1 Behind
 	size         float64 // the greatest length
 	perRod       float64 // 1/rod
-	clear        float64 // ξ² above which Margin is not below rigid.LeastMargin
 	full         bool    // whether the crank turns fully
 	folds        bool    // whether the crank can lie on the rod
 	outer, inner float64 // |Slide.Pos| with crank and rod stretched, and with one folded on the other
@@ -50,7 +49,6 @@ func New(d Dimensions) (*Linkage, error) {
 		crank: d.Crank, rod: rod, guide: d.Offset, side: 1,
 		size:    size,
 		perRod:  1 / rod,
-		clear:   rigid.LeastMargin * rigid.LeastMargin * rod * rod * (1 + 2*equal),
 		full:    rod >= d.Crank+e,
 		folds:   changes || math.Abs(rod-d.Crank) >= e,
 		byCrank: dyad.RRP{L: rod}, bySlide: dyad.NewRRR(d.Crank, rod),

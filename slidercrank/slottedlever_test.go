@@ -245,3 +245,19 @@ func TestSlottedLeverNearlyChanging(t *testing.T) {
 		}
 	}
 }
+
+// A crank at rest has links at rest, whose rates print as 0 and not as −0.
+func TestSlottedLeverAtRest(t *testing.T) {
+	l := newLever(t, slidercrank.LeverDimensions{Crank: 0.2, Centre: 0.25, Slot: 0.01})
+	var st slidercrank.LeverState
+	for _, turn := range []float64{-3, -1, 1, 3} {
+		if err := l.Solve(&st, rigid.Coordinate{Pos: turn}); err != nil {
+			t.Fatal(err)
+		}
+		for _, rate := range []float64{st.Swing.Vel, st.Swing.Acc, st.Slide.Vel, st.Slide.Acc, st.Lever.Omega, st.Lever.Alpha} {
+			if rate != 0 || math.Signbit(rate) {
+				t.Errorf("turn %v: a rate of %v", turn, rate)
+			}
+		}
+	}
+}
