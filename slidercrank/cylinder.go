@@ -81,8 +81,11 @@ func (c *OscillatingCylinder) Solve(dst *CylinderState, turn rigid.Coordinate) e
 // the cylinder's pin: Right is a Turn in (0, π), Left one in (−π, 0).
 //
 // Turn.Pos is in (−π, π]; Margin is |sin| of the angle at the rod's pin between the
-// directions to the two pivots. Errors: ErrUnreachable for a length that is
-// negative or that the arm cannot give; ErrSingular for rates where Margin is
+// directions to the two pivots. A length that no more than its rounding, 8 × 2⁻⁵² of
+// its square, keeps from a dead centre counts as that, with Margin 0: so it is within
+// about 6e-8·√(Centre/Crank) rad of one, and everywhere where Crank is below 1e-15 of
+// Centre, which changes the length by no more. Errors: ErrUnreachable for a length
+// that is negative or that the arm cannot give; ErrSingular for rates where Margin is
 // below rigid.LeastMargin; ErrNotFinite; ErrInput for a zero OscillatingCylinder or
 // an unknown knee. An error leaves dst as it was.
 func (c *OscillatingCylinder) SolveSlide(dst *CylinderState, slide rigid.Coordinate, knee rigid.Side) error {
@@ -115,11 +118,11 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 	if k.r == 0 || knee != rigid.Left && knee != rigid.Right {
 		return rigid.ErrInput
 	}
-	s, reach, e := slide.Pos, k.r+k.c, math.Abs(k.e)
+	s := slide.Pos
 	slack := 2 * beyond * k.size * s
 	ch, ok := root(s*s-k.least, 2*equal*(s*s+math.Abs(k.least)), slack)
-	sh, within := root((reach-e)*(reach+e)-s*s, 2*equal*(reach-e)*(reach+e), slack)
-	if !(s >= 0 && s <= 2*reach) || !ok || !within { // far beyond, the squares may overflow
+	sh, within := root(k.most-s*s, 2*equal*k.most, slack)
+	if !(s >= 0 && s <= 2*(k.r+k.c)) || !ok || !within { // far beyond, the squares may overflow
 		return rigid.ErrUnreachable
 	}
 	if knee == rigid.Left {
@@ -130,7 +133,7 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 		ch, n = 1, 1
 	}
 	sh, ch = sh/n, ch/n
-	margin := 2 * math.Abs(sh*ch) * k.c / math.Hypot(s, e)
+	margin := 2 * math.Abs(sh*ch) * k.c / math.Hypot(s, k.e)
 	turn := rigid.Coordinate{Pos: rigid.Wrap(2 * math.Atan2(sh, ch))}
 	rates := slide.Vel != 0 || slide.Acc != 0
 	if rates {
@@ -139,7 +142,7 @@ func (k *slotForm) solveSlide(m *slotMotion, slide rigid.Coordinate, knee rigid.
 		}
 		turn.Vel = 1
 	}
-	if err := k.place(m, turn, sh, ch, s*s+e*e, s*s); err != nil {
+	if err := k.place(m, turn, sh, ch, s*s+k.e*k.e, s*s); err != nil {
 		return err
 	}
 	slide1, slide2 := m.slide.Vel, m.slide.Acc
@@ -197,7 +200,7 @@ func (c *OscillatingCylinder) Range() []rigid.Interval { return c.form.turns() }
 func (c *OscillatingCylinder) Lengths() rigid.Interval {
 	k := &c.form
 	lo, _ := root(k.least, 0, 0)
-	hi, _ := root((k.r+k.c-k.e)*(k.r+k.c+k.e), 0, 0)
+	hi, _ := root(k.most, 0, 0)
 	return rigid.Interval{Lo: lo, Hi: hi}
 }
 

@@ -123,3 +123,32 @@ func TestOscillatingCylinderDimensions(t *testing.T) {
 		t.Errorf("lengths %v", got)
 	}
 }
+
+// A crank much shorter than the centre distance hardly changes the length, whose
+// rounding is then all there is between it and a dead centre for some way.
+func TestOscillatingCylinderShortCrank(t *testing.T) {
+	for _, row := range []struct {
+		crank, off float64 // from the dead centre, rad
+		want       error
+	}{
+		{1e-6, 1e-5, rigid.ErrSingular},
+		{1e-6, 1e-3, nil},
+		{1e-10, 1e-3, rigid.ErrSingular},
+		{1e-10, 0.1, nil},
+		{1e-16, 1.5, rigid.ErrSingular},
+	} {
+		c := newCylinder(t, slidercrank.CylinderDimensions{Crank: row.crank, Centre: 1})
+		for _, turn := range []float64{row.off, math.Pi - row.off} {
+			var st, again slidercrank.CylinderState
+			if err := c.Solve(&st, rigid.Coordinate{Pos: turn, Vel: 1}); err != nil {
+				t.Fatal(err)
+			}
+			if err := c.SolveSlide(&again, st.Slide, st.Knee); err != row.want {
+				t.Errorf("crank %v at %v: %v, want %v", row.crank, turn, err, row.want)
+			}
+			if err := c.SolveSlide(&again, rigid.Coordinate{Pos: st.Slide.Pos}, st.Knee); err != nil || (again.Margin == 0) != (row.want != nil) {
+				t.Errorf("crank %v at %v: margin %v, %v", row.crank, turn, again.Margin, err)
+			}
+		}
+	}
+}

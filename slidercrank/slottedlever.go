@@ -61,9 +61,10 @@ type SlottedLever struct {
 // NewSlottedLever checks the dimensions and returns the lever. Errors are
 // *rigid.DimensionError, joined if several: of Crank and Centre, which must be
 // positive lengths; rigid.ErrUnreachable where the pin never comes as far from the
-// lever pivot as |Slot|; rigid.ErrChangePoint where |Crank − Centre| = |Slot|
-// within 4 ε of the longer, ε = 2⁻⁵²: there the pin meets the lever pivot, or the
-// slot's nearest point to it, and the motion could go on in two ways.
+// lever pivot as |Slot|; rigid.ErrChangePoint where |Crank − Centre| = |Slot| within
+// 1e-14 of the longer: there the pin meets the lever pivot, or the slot's nearest
+// point to it, and the motion could go on in two ways. Near to that, without Slot
+// within 1e-8 of the crank, the pin passes but Solve refuses rates there, at π.
 func NewSlottedLever(d LeverDimensions) (*SlottedLever, error) {
 	if err := checkSlot(d.Crank, d.Centre, d.Slot, "Slot", d.Mount); err != nil {
 		return nil, err

@@ -26,6 +26,7 @@ type slotForm struct {
 	twice      float64 // 2 × the shorter
 	gap, gap2  float64 // |r − c| and its square
 	least      float64 // gap² − e², of σ²
+	most       float64 // (r + c)² − e²
 	minus      float64 // −rc
 	perCrank   float64 // 1/r
 	r2         float64 // r²
@@ -46,8 +47,12 @@ func newSlotForm(r, c, e float64, mount rigid.Placement) slotForm {
 	if r > c {
 		long, short, across = r, c, -c
 	}
-	gap, size := long-short, max(long, math.Abs(e))
-	m, least := mount.Pose(), (gap-math.Abs(e))*(gap+math.Abs(e))
+	d := math.Abs(e)
+	gap, size, past := long-short, max(long, d), long-d
+	least := (gap - d) * (gap + d)
+	if d > short { // the longer of the two first: where lengths nearly cancel that difference is exact
+		least = (past - short) * (gap + d)
+	}
 	floor := 0.0
 	if least < 0 { // at the limit 4rc cos²(φ/2) = −least, and dσ²/dφ = −2rc sin φ
 		floor = equal * (-least + 2*math.Sqrt(-least*r*c))
@@ -55,12 +60,12 @@ func newSlotForm(r, c, e float64, mount rigid.Placement) slotForm {
 	return slotForm{
 		r: r, c: c, e: e,
 		across: across, twice: 2 * short, size: size,
-		gap: gap, gap2: gap * gap, least: least, floor: floor,
+		gap: gap, gap2: gap * gap, least: least, most: (past + short) * (long + short + d), floor: floor,
 		clear: max(floor, 4*rigid.LeastMargin*rigid.LeastMargin*r*r),
 		minus: -r * c, perCrank: 1 / r, r2: r * r, rc4: 4 * r * c, difference: (r - c) * (r + c),
-		slack: 2 * beyond * size * math.Abs(e),
-		mount: m,
-		pivot: m.Point(r2.Vec{X: -c}),
+		slack: 2 * beyond * size * d,
+		mount: mount.Pose(),
+		pivot: mount.Pose().Point(r2.Vec{X: -c}),
 	}
 }
 
@@ -185,11 +190,11 @@ func checkSlot(r, c, e float64, offset string, mount rigid.Placement) error {
 	if !f.OK() {
 		return f.Err()
 	}
-	size, least := equal*max(r, c), math.Abs(math.Abs(r-c)-math.Abs(e))
+	longer, d := max(r, c), math.Abs(e)
 	switch {
-	case r+c-math.Abs(e) <= size:
+	case r+c-d <= equal*longer:
 		f.Add("", 0, errSlot)
-	case least <= size:
+	case math.Abs(math.Abs(r-c)-d) <= beyond*longer:
 		f.Add("", 0, errFlat)
 	}
 	return f.Err()

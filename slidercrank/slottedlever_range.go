@@ -16,8 +16,7 @@ func (k *slotForm) turns() []rigid.Interval {
 	if k.least > 0 {
 		return []rigid.Interval{{Lo: -math.Pi, Hi: math.Pi}}
 	}
-	e := math.Abs(k.e)
-	end := 2 * math.Atan2(math.Sqrt((k.r+k.c-e)*(k.r+k.c+e)), math.Sqrt(-k.least))
+	end := 2 * math.Atan2(math.Sqrt(k.most), math.Sqrt(-k.least))
 	return []rigid.Interval{{Lo: -end, Hi: end}}
 }
 

@@ -60,14 +60,18 @@ func (k *slotForm) solveSwing(m *slotMotion, swing rigid.Coordinate, knee rigid.
 		xi = -xi
 	}
 	sigma := k.c*cos + xi
-	if !ok || !(sigma >= -beyond*k.size) {
+	if sigma < 0 {
+		ok = ok && sigma >= -k.rounding(swing.Pos, sin, xi, h)
+		xi, sigma = max(-k.r, min(k.r, -k.c*cos)), 0
+	}
+	if !ok {
 		return rigid.ErrUnreachable
 	}
 	x, y := xi*cos-h*sin, xi*sin+h*cos
 	m.margin = math.Abs(xi) / k.r
 	m.swing = swing
 	m.turn = rigid.Coordinate{Pos: rigid.Wrap(math.Atan2(y, x))}
-	m.slide = rigid.Coordinate{Pos: max(sigma, 0)}
+	m.slide = rigid.Coordinate{Pos: sigma}
 	u := k.mount.Axis
 	m.crank = turned(u, r2.Vec{X: x / k.r, Y: y / k.r})
 	m.line = turned(u, r2.Vec{X: cos, Y: sin})
@@ -85,6 +89,15 @@ func (k *slotForm) solveSwing(m *slotMotion, swing rigid.Coordinate, knee rigid.
 	m.turn.Vel, m.turn.Acc = turn1*w, turn1*al+turn2*w2
 	m.slide.Vel, m.slide.Acc = slide1*w, slide1*al+slide2*w2
 	return m.finite(k.r)
+}
+
+// rounding returns how far σ may lie below 0 and still count as 0: what it is off by for
+// twice the rounding of ψ and of the terms of h, since dσ/dψ = −cy/ξ and dξ/dh = −h/ξ, and
+// a little more. Where the pin comes near to the line's pivot ξ is small at σ = 0.
+func (k *slotForm) rounding(psi, sin, xi, h float64) float64 {
+	terms := math.Abs(k.e) + math.Abs(k.c*sin)
+	xi = max(math.Abs(xi), math.Sqrt(2*k.r*equal*terms)) // below that it is settled
+	return beyond*k.size + 2*equal*(k.c*k.r*math.Abs(psi)+2*math.Abs(h)*terms)/xi
 }
 
 // leg returns the other leg of a right-angled triangle with the given hypotenuse,

@@ -116,6 +116,8 @@ func TestSlottedLeverDimensions(t *testing.T) {
 		{"mount not a number", func(d *slidercrank.LeverDimensions) { d.Mount.Angle = math.NaN() }, "Mount.Angle", rigid.ErrNotFinite},
 		{"crank as long as the centre distance", func(d *slidercrank.LeverDimensions) { d.Crank, d.Slot = 0.25, 0 }, "", rigid.ErrChangePoint},
 		{"the same within rounding", func(d *slidercrank.LeverDimensions) { d.Crank, d.Centre, d.Slot = 0.1+0.2, 0.3, 0 }, "", rigid.ErrChangePoint},
+		{"the same within a few more roundings", func(d *slidercrank.LeverDimensions) { d.Crank, d.Centre, d.Slot = 0.3, 0.3*(1-9e-15), 0 }, "", rigid.ErrChangePoint},
+		{"slot as far within rounding as the pin comes near", func(d *slidercrank.LeverDimensions) { d.Slot = 0.15 * (1 + 1e-14) }, "", rigid.ErrChangePoint},
 		{"slot as far as the pin comes near", func(d *slidercrank.LeverDimensions) { d.Slot = -0.15 }, "", rigid.ErrChangePoint},
 		{"slot beyond the pin's reach", func(d *slidercrank.LeverDimensions) { d.Slot = 0.36 }, "", rigid.ErrUnreachable},
 		{"slot at the end of the pin's reach", func(d *slidercrank.LeverDimensions) { d.Slot = -0.35 }, "", rigid.ErrUnreachable},
