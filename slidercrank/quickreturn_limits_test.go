@@ -73,6 +73,11 @@ func TestQuickReturnLimits(t *testing.T) {
 			Crank: 0.9513243895378383, Centre: 0.952087308242873, Arm: 1.0991349945528952, Rod: 0.12374252197869243,
 			Guide: rigid.Placement{X: -0.01879844751832338, Y: -0.2097633810864273, Angle: math.Pi / 2},
 		},
+		// a lever whose pin passes its pivot so near that the ram's limits hang on how near
+		{
+			Crank: 520.8526339717472, Centre: 541.6060109223436, Slot: -20.336839408215003, Arm: 2082.7434566363604, ArmAngle: 4.873610354076923,
+			Rod: 841.1061184775389, Branch: slidercrank.Behind, Guide: rigid.Placement{X: 427.13675580840714, Y: -29.785927226878425, Angle: math.Pi / 2},
+		},
 	}
 	for range 10 * rounds() {
 		machines = append(machines, awkwardRam(rng))

@@ -185,6 +185,7 @@ func TestSlottedLeverRefuses(t *testing.T) {
 		{"lever drives at its dead centre", swing(swinging, top, 1, 0, rigid.Right), rigid.ErrSingular},
 		{"lever at its dead centre", swing(swinging, top, 0, 0, rigid.Right), nil},
 		{"lever points away", swing(swinging, math.Pi, 0, 0, rigid.Left), rigid.ErrUnreachable},
+		{"lever points away square to the crank", swing(swinging, math.Pi-top, 0, 0, rigid.Right), rigid.ErrUnreachable},
 		{"turning lever on its left", swing(turning, 1, 1, 0, rigid.Left), rigid.ErrUnreachable},
 		{"turning lever on its right", swing(turning, 1, 1, 0, rigid.Right), nil},
 		{"unknown knee", swing(swinging, 0, 0, 0, 2), rigid.ErrInput},
