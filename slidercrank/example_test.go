@@ -168,3 +168,47 @@ func ExampleState() {
 	// die at (0.015, 1.063) m, rising at 0.564 m/s
 	// knee left, branch ahead, margin 0.984
 }
+
+// Which length has to be held most closely for the ram to come down where it should?
+func ExampleSensitivity() {
+	press, err := slidercrank.New(tilePress)
+	if err != nil {
+		log.Fatal(err)
+	}
+	bottom, _, err := press.DeadCentres()
+	if err != nil {
+		log.Fatal(err)
+	}
+	var s slidercrank.Sensitivity
+	if err := press.Sensitivity(&s, rigid.Coordinate{Pos: bottom.Turn}, r2.Vec{}); err != nil {
+		log.Fatal(err)
+	}
+	fmt.Printf("crank %.4f, rod %.4f, offset %.4f mm/mm\n", s.Crank.Slide.Pos, s.Rod.Slide.Pos, s.Offset.Slide.Pos)
+
+	const tolerance = 0.05 // mm, of each length
+	worst, squares := 0.0, 0.0
+	for _, by := range []slidercrank.LengthSensitivity{s.Crank, s.Rod, s.Offset} {
+		x := by.Slide.Pos * tolerance
+		worst, squares = worst+math.Abs(x), squares+x*x
+	}
+	fmt.Printf("ram off by %.3f mm at worst, %.3f mm likely\n", worst, math.Sqrt(squares))
+	// Output:
+	// crank 1.0003, rod 1.0003, offset -0.0250 mm/mm
+	// ram off by 0.101 mm at worst, 0.071 mm likely
+}
+
+func ExampleLengthSensitivity() {
+	press, err := slidercrank.New(tilePress)
+	if err != nil {
+		log.Fatal(err)
+	}
+	var s slidercrank.Sensitivity
+	turn := rigid.Coordinate{Pos: 60 * rigid.Degree, Vel: 40 * rigid.RPM}
+	if err := press.Sensitivity(&s, turn, r2.Vec{X: 0.24}); err != nil {
+		log.Fatal(err)
+	}
+	by, v := s.Crank.Slide, s.Crank.Point.Vel
+	fmt.Printf("1 mm more crank: ram %.3f mm, %.2f mm/s; middle of the rod %.2f, %.2f mm/s\n", by.Pos, by.Vel, v.X, v.Y)
+	// Output:
+	// 1 mm more crank: ram 0.337 mm, -4.50 mm/s; middle of the rod 1.05, 4.06 mm/s
+}

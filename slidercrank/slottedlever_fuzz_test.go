@@ -81,6 +81,8 @@ func FuzzSlottedLever(f *testing.F) {
 		for _, at := range l.Range() {
 			if err := l.Solve(&st, rigid.Coordinate{Pos: at.Hi}); err != nil {
 				t.Errorf("end of the range %v: %v", at, err)
+			} else if err := l.SolveSwing(&st, rigid.Coordinate{Pos: st.Swing.Pos}, st.Knee); err != nil {
+				t.Errorf("end of the range %v: its swing %v: %v", at, st.Swing.Pos, err)
 			}
 		}
 		for _, at := range l.DeadCentres() {

@@ -4,6 +4,8 @@ import (
 	"errors"
 	"math"
 
+	"gonum.org/v1/gonum/spatial/r2"
+
 	"example.com/twopoint/rigid"
 	"example.com/twopoint/slidercrank"
 )
@@ -20,28 +22,26 @@ const (
 // lately found, its lengths as found in the first turn.
 type model struct {
 	press *slidercrank.Linkage
-	st    slidercrank.State
 	at    vector
 }
 
 // row returns the derivatives of the ram's place by the unknowns and what the
-// unknowns, linear, must make up for. With u and v the unit vectors of rod and
-// crank, A and P their pins, the length of the rod demands for small changes
-//
-//	u·(δP − δA) = δrod,  δA = v·δcrank + crank·v⊥·δzero,  δP = (δx, δoffset)
+// unknowns, linear, must make up for.
 func (m *model) row(p point, turned float64) (j vector, y float64, err error) {
-	st := &m.st
-	if err := m.press.Solve(st, rigid.Coordinate{Pos: p.turn + m.at[zero]}); err != nil {
+	turn := p.turn + m.at[zero]
+	place, err := m.press.Coefficients(turn)
+	if err != nil {
 		return j, 0, err
 	}
-	u, v := st.Rod.Pose.Axis, st.Crank.Pose.Axis
-	j[zero] = m.press.Dimensions().Crank * (u.Y*v.X - u.X*v.Y) / u.X
-	j[drift] = j[zero] * turned
+	var by slidercrank.Sensitivity
+	if err := m.press.Sensitivity(&by, rigid.Coordinate{Pos: turn}, r2.Vec{}); err != nil {
+		return j, 0, err
+	}
+	j[zero] = place.First
+	j[drift] = place.First * turned
 	j[ram] = 1
-	j[crank] = (u.X*v.X + u.Y*v.Y) / u.X
-	j[rod] = 1 / u.X
-	j[offset] = -u.Y / u.X
-	y = p.ram - st.Slide.Pos
+	j[crank], j[rod], j[offset] = by.Crank.Slide.Pos, by.Rod.Slide.Pos, by.Offset.Slide.Pos
+	y = p.ram - place.Out
 	for q, x := range m.at {
 		y += j[q] * x
 	}

@@ -28,6 +28,17 @@ def by_slide(r, l, e, slide, pick):
     return wrap(arg(d) - pick * at_pivot), wrap(arg(d) + pick * at_slider)
 
 
+def by_length(r, l, e, turn, side):
+    """The derivatives of the slide's place by each length, as differences of places."""
+    x, out = [r, l, e], []
+    for j in range(3):
+        step = (r + l) * mpf(10) ** -40
+        up, down = x[:], x[:]
+        up[j], down[j] = x[j] + step, x[j] - step
+        out.append((by_crank(*up, turn, side)[1] - by_crank(*down, turn, side)[1]) / (2 * step))
+    return out
+
+
 # ---- rows
 
 def dims():
@@ -105,3 +116,5 @@ if __name__ == "__main__":
     rng.seed("twopoint slidercrank")
     write("crank", by_crank, "turn", ["rod", "slide"], cranks(400))
     write("slide", by_slide, "slide", ["turn", "rod"], slides(400))
+    mp.dps = 200  # the steps of by_length take some
+    write("length", by_length, "turn", ["by_crank", "by_rod", "by_offset"], cranks(200))
