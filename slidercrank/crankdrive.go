@@ -33,7 +33,7 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	w, al, w2 := turn.Vel, turn.Acc, turn.Vel*turn.Vel
 	x, y := l.crank*cos, float64(l.crank*sin) // y not fused with what follows: see outward
 	eta := l.guide - y
-	p := (l.rod - eta) * (l.rod + eta) // ξ²; next to 0 it is 2⁻⁵² l², which Margin has its root of: more than rigid.LeastMargin
+	p := (l.rod - eta) * (l.rod + eta) // ξ²: of float64 numbers 0 or at least 2⁻⁵² l², with Margin above rigid.LeastMargin
 	if !(p > 0 && (w != 0 || al != 0)) {
 		return l.park(dst, turn, r2.Vec{X: cos, Y: sin}, eta)
 	}

@@ -124,9 +124,10 @@ func (q *QuickReturn) elbow(r *ramMotion) float64 {
 // Margin is the lesser of |sin| of the angle between arm and rod, or travel and
 // arm's normal, and that of SolveSwing, 0 at the dead centres and where no more than
 // the rounding of the travel keeps the ram from one.
-// Errors: ErrUnreachable out of reach, and where the pose is that of the other Branch; ErrSingular for rates where Margin is
-// below rigid.LeastMargin; ErrNotFinite; ErrInput for a zero QuickReturn or an
-// unknown side. An error leaves dst as it was.
+// Errors: ErrUnreachable out of reach, and where the pose is that of the other
+// Branch; ErrSingular for rates where Margin is below rigid.LeastMargin;
+// ErrNotFinite; ErrInput for a zero QuickReturn or an unknown side. An error leaves
+// dst as it was.
 func (q *QuickReturn) SolveTravel(dst *QuickReturnState, travel rigid.Coordinate, elbow, knee rigid.Side) error {
 	if travel.Pos*0+travel.Vel*0+travel.Acc*0 != 0 {
 		return rigid.ErrNotFinite

@@ -94,7 +94,8 @@ func (l *SlottedLever) Solve(dst *LeverState, turn rigid.Coordinate) error {
 	if !(s2 > k.clear && push > 0) {
 		return l.solveAny(dst, turn, sh, ch)
 	}
-	t, s := 1/(d2*s2), math.Sqrt(s2) // as in place and write, without a slotMotion between, which would go through memory
+	// As place and write do, but without a slotMotion between, which goes through memory.
+	t, s := 1/(d2*s2), math.Sqrt(s2)
 	i, j, half := s2*t, d2*t, ch*ch
 	sin, cos := 2*sh*ch, (ch-sh)*(ch+sh)
 	u := k.along(s, half, sin, i)

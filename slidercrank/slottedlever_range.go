@@ -21,8 +21,11 @@ func (k *slotForm) turns() []rigid.Interval {
 }
 
 // deadCentres returns the crank's angles where ψ' = 0. The lower one comes first, at φ
-// in (−π, 0); the upper one is in (0, π). ψ” = ∓r/σ is the limit that the derivatives
-// of the way back lead to, ξ going to 0.
+// in (−π, 0); the upper one is in (0, π). The derivatives of the way back lead to
+//
+//	ψ'' = ∓r/σ
+//
+// as ξ goes to 0.
 func (k *slotForm) deadCentres() []rigid.Coefficients {
 	var found []rigid.Coefficients
 	for _, side := range [...]float64{-1, 1} {

@@ -60,7 +60,7 @@ func (k *slotForm) solveSwing(m *slotMotion, swing rigid.Coordinate, knee rigid.
 		xi = -xi
 	}
 	sigma := k.c*cos + xi
-	if sigma < 0 {
+	if sigma < 0 { // the end of Range: there ξ = −c cos ψ
 		ok = ok && sigma >= -k.rounding(swing.Pos, sin, xi, h)
 		xi, sigma = max(-k.r, min(k.r, -k.c*cos)), 0
 	}
