@@ -1,8 +1,10 @@
 package planar
 
 import (
+	"math"
 	"slices"
 
+	"example.com/twopoint/rigid"
 	"gonum.org/v1/gonum/mat"
 )
 
@@ -35,4 +37,39 @@ func Higher(s *State) []Jacobian {
 		all = append(all, j)
 	}
 	return all
+}
+
+// Factors are those of a square of slopes: its determinant's sign, the square of that
+// over the product of the columns' lengths, and the solution, which takes the place
+// of the right side. They are nil where it is singular.
+func Factors(slopes *mat.Dense) (sign, square float64, solve func(x []float64)) {
+	n, _ := slopes.Dims()
+	d := (&newton{n: n}).desk(make([]float64, 20*(n+1)*(n+1)))
+	for i := range n {
+		copy(d.j[i*n:], slopes.RawRowView(i))
+	}
+	if !d.factor() {
+		return d.last[detSign], d.last[detSquare], nil
+	}
+	return d.last[detSign], d.last[detSquare], d.solve
+}
+
+// Foresight returns by how much the free angles of the first group of higher class
+// are off, at an input that the one drive goes on to, where its path is drawn on.
+func Foresight(s *State, in float64) (float64, error) {
+	c := s.Clone()
+	n, p, d := c.l.program.newtons[0], &c.now.desks[0], &c.next.desks[0]
+	if !c.now.foresee(in - c.now.in[0].Pos) {
+		return 0, rigid.ErrInput
+	}
+	n.predict(p, d)
+	drawn := slices.Clone(d.dir)
+	if err := c.Move(rigid.Coordinate{Pos: in}); err != nil {
+		return 0, err
+	}
+	off := 0.0
+	for i, v := range c.now.desks[0].dir {
+		off = math.Max(off, math.Abs(v-drawn[i]))
+	}
+	return off, nil
 }

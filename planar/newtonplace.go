@@ -25,28 +25,30 @@ const (
 // before. Its rates, times pathScale, are path rates: in one unit of time the inputs
 // there go to those of to, at constant speed, so that the predictor is
 //
-//	q = q₀ + q̇₀ + q̈₀/2 + q⃛₀/6
+//	q = q₀ + q̇₀ + q̈₀/2 + …
 //
-// with the third derivative 0 where no step before tells it.
+// with what desk.later tells of the rest, where a step before tells it.
 //
 // It returns solved, or tooLong where the first correction is over 0.1, the second
 // over a quarter of the first, or the determinant changes its sign.
 func (n *newton) place(to *scene, p, d *desk) status {
 	n.predict(p, d)
 	n.prepare(to, d)
+	n.lay(to, d)
 	sign := p.last[detSign]
-	if !n.slopes(to, d, sign) {
+	if !d.keeps(sign) {
 		return n.fail(d)
 	}
 	size := n.correct(d, nil, 0)
 	if !(size <= widest) {
 		return n.fail(d)
 	}
-	fresh := true
-	for turn := 0; !(fresh && size <= settled); turn++ {
-		if fresh = size > reused; !fresh {
-			n.lay(to, d)
-		} else if !n.slopes(to, d, sign) {
+	for turn := 0; ; turn++ {
+		n.lay(to, d)
+		if size <= settled || n.closes(d) {
+			break
+		}
+		if size > reused && !d.keeps(sign) {
 			return n.fail(d)
 		}
 		next := n.correct(d, nil, 0)
@@ -54,41 +56,56 @@ func (n *newton) place(to *scene, p, d *desk) status {
 			return n.fail(d)
 		}
 		if next <= settled && (next*next <= rounding*size || next > contracts*size) {
+			n.lay(to, d)
 			break
 		}
 		size = next
 	}
-	if !n.slopes(to, d, sign) {
+	if !d.keeps(sign) {
 		return n.fail(d)
 	}
 	n.pose(to, d)
 	return solved
 }
 
-// slopes writes what the loops miss and the factors of their slopes, and reports
-// whether their determinant has the sign given, or that is 0.
-func (n *newton) slopes(to *scene, d *desk, sign float64) bool {
-	n.lay(to, d)
-	return d.factor() && d.last[detSign]*sign >= 0
+// keeps factors the slopes, and reports whether their determinant has the sign given,
+// or that is 0.
+func (d *desk) keeps(sign float64) bool { return d.factor() && d.last[detSign]*sign >= 0 }
+
+// closes reports whether what the loops miss is rounding.
+func (n *newton) closes(d *desk) bool {
+	const eps = 1 << 52
+	for _, v := range d.miss {
+		if !(math.Abs(v)*eps <= n.length) {
+			return false
+		}
+	}
+	return true
 }
 
 func (n *newton) predict(p, d *desk) {
 	n.remember(p, d)
-	k := p.last[pathScale]
-	half, sixth := k*k/2, k*k*k/6
+	k, far := p.last[pathScale], 1.0
 	if math.Abs(k) > 8 {
-		sixth = 0 // a step so short before tells too little
+		far = 0 // a step so short before tells too little
 	}
-	for i := range n.free {
-		h := k*p.vel[i] + half*p.acc[i] + sixth*p.jerk[i]
-		turnBy(d.dir[2*i:2*i+2], p.dir[2*i:2*i+2], h/2*(1+h*h/12)) // tan(h/2)
-		d.angle[i] = p.angle[i] + h
-	}
-	for i := range n.slides {
-		c := n.free + i
-		d.slide[i] = p.slide[i] + (k*p.vel[c]+half*p.acc[c]+sixth*p.jerk[c])*n.length
+	for i, v := range p.vel {
+		l := p.later[3*i : 3*i+3]
+		h := k * (v + k*(p.acc[i]/2+k*far*(l[0]+k*(l[1]+k*l[2]))))
+		if i < n.free {
+			turnBy(d.dir[2*i:2*i+2], p.dir[2*i:2*i+2], tanHalf(h))
+			d.angle[i] = p.angle[i] + h
+		} else {
+			d.slide[i-n.free] = p.slide[i-n.free] + h*n.length
+		}
 	}
 	n.rewind(d)
+}
+
+// tanHalf returns tan(h/2) to h⁹.
+func tanHalf(h float64) float64 {
+	h2 := h * h
+	return h / 2 * (1 + h2*(1./12+h2*(1./120+h2*(17./20160))))
 }
 
 func (n *newton) fail(d *desk) status {

@@ -42,7 +42,7 @@ func (n *newton) rates(sc *scene, d *desk) {
 func (d *desk) still() {
 	clear(d.vel)
 	clear(d.acc)
-	clear(d.jerk)
+	clear(d.later)
 	d.last[pathSpeed], d.last[pathScale] = 0, 0
 }
 
@@ -212,17 +212,35 @@ func (n *newton) spread(sc *scene, d *desk) {
 
 // agrees reports whether path rates at both ends of a step fit each other:
 // |v₁ − v₀ − a₀| ≤ 0.1 of every unknown, with the rates by the same unit of time as
-// in place, those of the start in p. It notes how the accelerations grew.
-func (d *desk) agrees(p *desk) bool {
+// in place, those of the start in p. It notes how the path goes on, by the quintic
+// through both ends with their rates, for t from −1 at the start to 0:
+//
+//	q = q₁ + v₁t + a₁t²/2 + c₃t³ + c₄t⁴ + c₅t⁵
+//
+// of which q, v and a at the start leave
+//
+//	x = −c₃ + c₄ − c₅,  y = 3c₃ − 4c₄ + 5c₅,  z = −6c₃ + 12c₄ − 20c₅
+func (n *newton) agrees(d, p *desk) bool {
 	k := p.last[pathScale]
 	known := d.last[pathSpeed] != 0
 	for i, v := range d.vel {
-		if !(math.Abs(v-k*(p.vel[i]+k*p.acc[i])) <= widest) {
+		v0, a0, a := k*p.vel[i], k*k*p.acc[i], d.acc[i]
+		if !(math.Abs(v-v0-a0) <= widest) {
 			return false
 		}
 		if known {
-			d.jerk[i] = d.acc[i] - k*k*p.acc[i]
+			x, y, z := v-a/2-n.gone(d, p, i), v0-v+a, a0-a
+			l := d.later[3*i : 3*i+3]
+			l[0], l[1], l[2] = -10*x-4*y-z/2, -15*x-7*y-z, -6*x-3*y-z/2
 		}
 	}
 	return true
+}
+
+// gone returns how far an unknown went from p to d.
+func (n *newton) gone(d, p *desk, i int) float64 {
+	if i < n.free {
+		return d.angle[i] - p.angle[i]
+	}
+	return (d.slide[i-n.free] - p.slide[i-n.free]) / n.length
 }

@@ -19,7 +19,7 @@ type desk struct {
 	gap    []float64 // of every loop: C
 	vel    []float64 // of the unknowns; slides in units of the group's length
 	acc    []float64
-	jerk   []float64 // by how much acc grew in the last step, for a single drive
+	later  []float64 // of every unknown: third, fourth and fifth coefficient of its path, for a single drive
 	miss   []float64 // of the equations
 	j      []float64 // slopes of the equations, by rows
 	lu     []float64 // factors; of the pivots the inverses
@@ -42,7 +42,7 @@ func (n *newton) sizes() [24]int {
 	m, c := len(n.members), n.parts
 	return [...]int{
 		2 * n.free, n.free, n.slides, 3 * m, 2 * m, 3 * m, 2 * len(n.chords), 2 * len(n.loops), 2 * len(n.loops),
-		n.n, n.n, n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, lasts,
+		n.n, n.n, 3 * n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, lasts,
 		c.memory, c.rows, c.rows, c.slopes, c.arms,
 	}
 }
@@ -76,7 +76,7 @@ func (n *newton) desk(w []float64) (d desk) {
 	sizes := n.sizes()
 	for i, part := range [...]*[]float64{
 		&d.dir, &d.angle, &d.slide, &d.rest, &d.axis, &d.turn, &d.chords, &d.fixed, &d.gap,
-		&d.vel, &d.acc, &d.jerk, &d.miss, &d.j, &d.lu, &d.perm, &d.square, &d.temp, &d.last,
+		&d.vel, &d.acc, &d.later, &d.miss, &d.j, &d.lu, &d.perm, &d.square, &d.temp, &d.last,
 		&d.memory, &d.weight, &d.natural, &d.slopes, &d.arms,
 	} {
 		*part, w = w[:sizes[i]:sizes[i]], w[sizes[i]:]
@@ -102,6 +102,9 @@ const (
 // of the rest, by Hadamard's inequality for the rest.
 func (d *desk) factor() bool {
 	n := len(d.perm)
+	if n == 4 {
+		return d.factorFour()
+	}
 	j, lu, square := d.j, d.lu[:len(d.j)], d.square[:n]
 	clear(square)
 	for i := 0; i+n <= len(j); i += n {
@@ -157,6 +160,10 @@ func (d *desk) factor() bool {
 func (d *desk) solve(x []float64) {
 	n := len(d.perm)
 	x = x[:n]
+	if n == 4 {
+		d.solveFour((*[4]float64)(x))
+		return
+	}
 	for k, p := range d.perm {
 		if p := int(p); p != k {
 			x[k], x[p] = x[p], x[k]

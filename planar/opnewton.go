@@ -38,7 +38,7 @@ func (o *group) rates(sc *scene) bool {
 		d.still()
 		return false
 	}
-	clear(d.jerk)
+	clear(d.later)
 	d.last[pathSpeed], d.last[pathScale] = 0, 1
 	if len(sc.in) == 1 && sc.in[0].Acc == 0 {
 		d.last[pathSpeed] = sc.in[0].Vel

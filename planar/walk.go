@@ -142,7 +142,7 @@ func (w *walk) step(t float64) (st status, op int, cut float64) {
 		return tooLong, op, cut
 	}
 	for i, o := range p.ops {
-		if g, ok := o.(*group); ok && rated == len(p.ops) && !w.to.desks[g.at].agrees(&w.from.desks[g.at]) {
+		if g, ok := o.(*group); ok && rated == len(p.ops) && !g.n.agrees(&w.to.desks[g.at], &w.from.desks[g.at]) {
 			return tooLong, i, 0.5
 		}
 	}
