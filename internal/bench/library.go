@@ -177,8 +177,8 @@ func ofFourBar(set *cases) (subject, error) {
 	}, err
 }
 
-// ofBody makes a linkage of pins between bodies, driven by the turn of body 1.
-func ofBody(name string, s sweep, pins [][6]float64, q0 []float64, out [3]float64) (subject, error) {
+// bodies is a linkage of pins between bodies, not driven.
+func bodies(pins [][6]float64, q0 []float64) planar.Design {
 	d := planar.Design{Guess: make([]rigid.Placement, len(q0)/3+1)}
 	for i := range len(q0) / 3 {
 		d.Link("body " + strconv.Itoa(i+1))
@@ -187,6 +187,12 @@ func ofBody(name string, s sweep, pins [][6]float64, q0 []float64, out [3]float6
 	for _, p := range pins {
 		d.Joints = append(d.Joints, planar.Revolute{A: planar.Link(p[0]).At(p[1], p[2]), B: planar.Link(p[3]).At(p[4], p[5])})
 	}
+	return d
+}
+
+// ofBody makes a linkage of pins between bodies, driven by the turn of body 1.
+func ofBody(name string, s sweep, pins [][6]float64, q0 []float64, out [3]float64) (subject, error) {
+	d := bodies(pins, q0)
 	d.Drives = []planar.Drive{planar.Turn{Of: 1, From: planar.Frame}}
 	l, err := planar.New(d)
 	if err != nil {

@@ -10,7 +10,8 @@
 // to the nonlinear solver of SUNDIALS. cases.json has the geometry and the sweep,
 // ref.json results to 50 digits, made by verify.py: first every peer and the
 // library are held against those, then against the clock. Without a C compiler
-// the library runs alone.
+// the library runs alone. Last comes a group of higher class, beside the same
+// linkage driven so that it is solved dyad by dyad.
 package main
 
 import (
@@ -45,6 +46,10 @@ func run(rounds int, general bool, slice time.Duration) error {
 	if err != nil {
 		return err
 	}
+	group, err := newGroupTime(set)
+	if err != nil {
+		return err
+	}
 	var all []result
 	for range rounds {
 		for _, p := range peers {
@@ -61,6 +66,13 @@ func run(rounds int, general bool, slice time.Duration) error {
 			}
 			all = append(all, r)
 		}
+		if err := group.time(slice); err != nil {
+			return err
+		}
 	}
-	return report(os.Stdout, set, all)
+	if err := report(os.Stdout, set, all); err != nil {
+		return err
+	}
+	group.report(os.Stdout)
+	return nil
 }
