@@ -1,6 +1,8 @@
 package planar
 
 import (
+	"math"
+
 	"example.com/twopoint/rigid"
 	"gonum.org/v1/gonum/spatial/r2"
 )
@@ -51,14 +53,29 @@ func (o *group) gap(sc *scene) float64    { return sc.desks[o.at].open() }
 func (o *group) choose(sc *scene) status  { return o.n.assemble(sc, &sc.desks[o.at]) }
 
 // stuck says what it means that an op can't take the least step: a group of higher
-// class of which the margin is nearly used up is at a limit, which it nears as the
-// root of the distance.
+// class of which the margin is nearly used up is at a limit, or where two motions
+// part. An unknown nears a limit as the root of the distance, x = c√δ, so that
+//
+//	ẍ/ẋ² = 1/x
+//
+// which is about 1/margin; where motions part the rates stay as they are.
 func (p *program) stuck(op int, at *scene) status {
-	const low = 0.05
-	if g, ok := p.ops[op].(*group); ok && g.margin(at) < low {
-		return unreachable
+	const low, parts = 0.05, 0.03
+	g, ok := p.ops[op].(*group)
+	if !ok {
+		return tooLong
 	}
-	return tooLong
+	d, margin, v, a := &at.desks[g.at], g.margin(at), 0.0, 0.0
+	for i := range d.vel {
+		v, a = math.Max(v, math.Abs(d.vel[i])), math.Max(a, math.Abs(d.acc[i]))
+	}
+	switch {
+	case !(margin < low):
+		return tooLong
+	case a*margin < parts*v*v:
+		return singular
+	}
+	return unreachable
 }
 
 // foresee reports whether the path rates of all groups at a place are known for a
