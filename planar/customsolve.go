@@ -109,6 +109,7 @@ func (n *newton) remember(p, d *desk) {
 	d.last[broken] = 0
 	copy(d.memory, p.memory)
 	copy(d.weight, p.weight)
+	copy(d.cells, p.cells)
 }
 
 // weigh chooses by what the equations of Constraints are multiplied: so that they

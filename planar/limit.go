@@ -43,8 +43,8 @@ func (k *LimitKind) UnmarshalText(text []byte) error { return limitKinds.Read(k,
 // Limits returns how far the one drive can go from where it stands, down and up, to
 // the first position in the interval that is singular for it, to 1e-10 of a radian
 // or of the largest length. For a crank that turns, an interval of a turn to either
-// side tells. Parallelograms pass their flattened positions, which are no limits.
-// The State stays where it is.
+// side tells. Parallelograms pass their flattened positions, which are no limits, but
+// for the contrary motion of one inside a group of higher class. The State stays where it is.
 //
 // An error that wraps rigid.ErrInput for a linkage with another number of drives, and
 // where the drive does not stand in the interval; rigid.ErrNotFinite for an interval

@@ -22,8 +22,9 @@ var ErrIncomplete = errors.New("twopoint: assembly modes not complete")
 // its parallel motion before its contrary one, of a group of higher class in no order
 // of meaning but always the same. A dyad that is stretched or folded has one mode, not
 // two. The two motions of a parallelogram cell count as two even where it is flat and
-// both are in one place, for they part from there. Gears and racks that are as
-// assembled have the phase of the Design's Guess, or 0 without one.
+// both are in one place, for they part from there; inside a group of higher class it is
+// the parallel one there. Gears and racks that are as assembled have the phase of the
+// Design's Guess, or 0 without one.
 //
 // Modes of a group of revolutes, guides and slots are all real solutions of its
 // equations. They are at most C(2L, L) for L closed loops: 2, 6, 20, 70, … For two
@@ -226,14 +227,18 @@ func (q *search) solutions(i int, o *group) bool {
 	if err != nil && q.lacks[i] == nil {
 		q.lacks[i] = &groupError{q.s.l.names(q.s.l.program.groupOf[i]), fmt.Errorf("%w: %w", ErrIncomplete, err)}
 	}
+	var seen [][]float64
 	for _, at := range places {
 		if q.tries++; q.tries > mostTries {
 			q.yield(nil, fmt.Errorf("%w: no mode among %d branches", ErrIncomplete, mostTries))
 			return false
 		}
-		o.n.restore(d, at)
-		o.n.prepare(sc, d)
-		o.n.lay(sc, d)
+		o.n.unfold(sc, d, at)
+		if n := len(seen); o.n.cells > 0 {
+			if seen = o.n.gather(seen, d, o.n.extent(d)); len(seen) == n {
+				continue
+			}
+		}
 		d.factor()
 		o.n.pose(sc, d)
 		if !q.from(i + 1) {

@@ -30,6 +30,7 @@ type newton struct {
 	customs         []ruled // the equations of Constraints, after those of the loops
 	parts           customParts
 	closed          int // loops that are equations; those after them are the arms of customs
+	cells           int // of loops that are parallelograms
 }
 
 // A member is a body of the group's equations.
@@ -80,7 +81,9 @@ type loop struct {
 	from, to int // known members
 	// of newton.chords: those fixed in known bodies, then those that the unknowns move
 	still, moved, end int
-	mixed             bool // one of them is
+	mixed             bool   // one of them is
+	cell              int    // of a parallelogram its number, else −1
+	sides             [4]int // the chords of that, in their order around
 }
 
 // A chord is a vector fixed in a member; with a slide, so many times the vector.
@@ -121,7 +124,11 @@ func newNewton(s *system, b *block) (*newton, error) {
 	if n.length == 0 {
 		n.length = s.length
 	}
-	n.span(s, b.rows)
+	order, rings := ringed(s.rows, b.rows)
+	n.span(s, order)
+	for i := range n.loops {
+		n.cellOf(&n.loops[i], rings)
+	}
 	n.closed = len(n.loops)
 	n.rule(s, b.rows)
 	n.n = n.free + n.slides

@@ -2,6 +2,7 @@ package planar
 
 import (
 	"math"
+	"slices"
 
 	"gonum.org/v1/gonum/mat"
 	"gonum.org/v1/gonum/spatial/r2"
@@ -19,17 +20,28 @@ func (n *newton) assemble(sc *scene, d *desk) status {
 	n.rough(sc, d)
 	n.weigh(sc, d)
 	start := n.save(d, nil)
-	if !n.lead(sc, d) {
-		n.restore(d, start)
-		if !n.damped(sc, d) {
+	if n.align(sc, d, 0); !slices.Contains(d.cells, 1) || !n.bring(sc, d, start) || !n.aligned(d) {
+		clear(d.cells)
+		if !n.bring(sc, d, start) {
 			n.fail(d)
 			return unreachable
 		}
+		n.align(sc, d, nearly)
 	}
 	n.lay(sc, d)
 	d.factor()
 	n.pose(sc, d)
 	return solved
+}
+
+// bring makes the loops close from the unknowns given.
+func (n *newton) bring(sc *scene, d *desk, start []float64) bool {
+	n.restore(d, start)
+	if n.lead(sc, d) {
+		return true
+	}
+	n.restore(d, start)
+	return n.damped(sc, d)
 }
 
 // rough reads the unknowns off the poses in sc.

@@ -8,6 +8,11 @@ func (n *newton) lay(sc *scene, d *desk) {
 	row := 0
 	for i := range n.closed {
 		l := &n.loops[i]
+		if l.parallel(d) {
+			n.layCell(d, i, row)
+			row += 2
+			continue
+		}
 		if l.kind == rowX {
 			x, y := d.j[row*n.n:(row+1)*n.n], d.j[(row+1)*n.n:(row+2)*n.n]
 			n.sum(d, i, x, y)

@@ -94,6 +94,10 @@ func (n *newton) loopVel(sc *scene, d *desk, l *loop) r2.Vec {
 // ones, and returns its number of equations.
 func (n *newton) driftVel(sc *scene, d *desk, i, row int) int {
 	l := &n.loops[i]
+	if l.parallel(d) {
+		n.driftCell(d, i, 0, d.vel[row:])
+		return 2
+	}
 	c := n.loopVel(sc, d, l)
 	if l.kind == rowX {
 		d.vel[row], d.vel[row+1] = -c.X, -c.Y
@@ -145,6 +149,10 @@ func (n *newton) loopAcc(sc *scene, d *desk, l *loop) (v, c r2.Vec) {
 //	(u·C)″ = u·C″ + 2ω n·C′ + α n·C − ω² u·C
 func (n *newton) driftAcc(sc *scene, d *desk, i, row int) int {
 	l := &n.loops[i]
+	if l.parallel(d) {
+		n.driftCell(d, i, 1, d.acc[row:])
+		return 2
+	}
 	v, c := n.loopAcc(sc, d, l)
 	if l.kind == rowX {
 		d.acc[row], d.acc[row+1] = -c.X, -c.Y

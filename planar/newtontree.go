@@ -95,6 +95,7 @@ func (n *newton) connect(s *system, l loop, pa, pb r2.Vec) {
 	}
 	l.end = len(n.chords)
 	n.firsts(&l)
+	l.cell = -1
 	n.loops = append(n.loops, l)
 }
 

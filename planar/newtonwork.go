@@ -26,6 +26,7 @@ type desk struct {
 	perm   []float64
 	square []float64 // of the lengths of the columns of j
 	temp   []float64 // two of every unknown
+	cells  []float64 // of every cell: 1 in its parallel motion
 	last   []float64
 
 	// of customs
@@ -38,11 +39,11 @@ type desk struct {
 }
 
 // sizes of the parts of a desk, in their order.
-func (n *newton) sizes() [24]int {
+func (n *newton) sizes() [25]int {
 	m, c := len(n.members), n.parts
 	return [...]int{
 		2 * n.free, n.free, n.slides, 3 * m, 2 * m, 3 * m, 2 * len(n.chords), 2 * len(n.loops), 2 * len(n.loops),
-		n.n, n.n, 3 * n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, lasts,
+		n.n, n.n, 3 * n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, n.cells, lasts,
 		c.memory, c.rows, c.rows, c.slopes, c.arms,
 	}
 }
@@ -76,7 +77,7 @@ func (n *newton) desk(w []float64) (d desk) {
 	sizes := n.sizes()
 	for i, part := range [...]*[]float64{
 		&d.dir, &d.angle, &d.slide, &d.rest, &d.axis, &d.turn, &d.chords, &d.fixed, &d.gap,
-		&d.vel, &d.acc, &d.later, &d.miss, &d.j, &d.lu, &d.perm, &d.square, &d.temp, &d.last,
+		&d.vel, &d.acc, &d.later, &d.miss, &d.j, &d.lu, &d.perm, &d.square, &d.temp, &d.cells, &d.last,
 		&d.memory, &d.weight, &d.natural, &d.slopes, &d.arms,
 	} {
 		*part, w = w[:sizes[i]:sizes[i]], w[sizes[i]:]
