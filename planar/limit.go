@@ -44,7 +44,8 @@ func (k *LimitKind) UnmarshalText(text []byte) error { return limitKinds.Read(k,
 // the first position in the interval that is singular for it, to 1e-10 of a radian
 // or of the largest length. For a crank that turns, an interval of a turn to either
 // side tells. Parallelograms pass their flattened positions, which are no limits, but
-// for the contrary motion of one inside a group of higher class. The State stays where it is.
+// for the contrary motion of one inside a group of higher class. The State stays where
+// it is.
 //
 // An error that wraps rigid.ErrInput for a linkage with another number of drives, and
 // where the drive does not stand in the interval; rigid.ErrNotFinite for an interval

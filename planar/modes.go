@@ -234,7 +234,7 @@ func (q *search) solutions(i int, o *group) bool {
 			return false
 		}
 		o.n.unfold(sc, d, at)
-		if n := len(seen); o.n.cells > 0 {
+		if n := len(seen); len(o.n.cells) > 0 {
 			if seen = o.n.gather(seen, d, o.n.extent(d)); len(seen) == n {
 				continue
 			}

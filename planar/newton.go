@@ -29,8 +29,8 @@ type newton struct {
 	chords          []chord // of all loops, in their order
 	customs         []ruled // the equations of Constraints, after those of the loops
 	parts           customParts
-	closed          int // loops that are equations; those after them are the arms of customs
-	cells           int // of loops that are parallelograms
+	closed          int      // loops that are equations; those after them are the arms of customs
+	cells           [][4]int // of loops that are parallelograms: the chords that are their sides, in the order around
 }
 
 // A member is a body of the group's equations.
@@ -81,9 +81,8 @@ type loop struct {
 	from, to int // known members
 	// of newton.chords: those fixed in known bodies, then those that the unknowns move
 	still, moved, end int
-	mixed             bool   // one of them is
-	cell              int    // of a parallelogram its number, else −1
-	sides             [4]int // the chords of that, in their order around
+	mixed             bool // one of them is
+	cell              int  // index into newton.cells, else −1
 }
 
 // A chord is a vector fixed in a member; with a slide, so many times the vector.

@@ -94,14 +94,15 @@ func (n *newton) cellOf(l *loop, rings [][4]int) {
 		return
 	}
 	for _, ring := range rings {
+		var sides [4]int
 		for k, body := range ring {
-			l.sides[k] = l.still + slices.IndexFunc(n.chords[l.still:l.end], func(c chord) bool {
+			sides[k] = l.still + slices.IndexFunc(n.chords[l.still:l.end], func(c chord) bool {
 				return c.slide < 0 && n.members[c.member].body == body
 			})
 		}
-		if !slices.Contains(l.sides[:], l.still-1) {
-			l.cell = n.cells
-			n.cells++
+		if !slices.Contains(sides[:], l.still-1) {
+			l.cell = len(n.cells)
+			n.cells = append(n.cells, sides)
 			return
 		}
 	}
@@ -112,7 +113,7 @@ func (l *loop) parallel(d *desk) bool { return l.cell >= 0 && d.cells[l.cell] !=
 
 // side returns a side of a cell, in the frame.
 func (n *newton) side(d *desk, l *loop, k int) r2.Vec {
-	k = l.sides[k&3]
+	k = n.cells[l.cell][k]
 	if k < l.moved {
 		return r2.Vec{X: d.chords[2*k], Y: d.chords[2*k+1]}
 	}
@@ -123,6 +124,7 @@ func (n *newton) side(d *desk, l *loop, k int) r2.Vec {
 // and keeps in d.gap by what they are multiplied.
 func (n *newton) layCell(d *desk, i, row int) {
 	l := &n.loops[i]
+	sides := &n.cells[l.cell]
 	for k := range 2 {
 		p, q := n.side(d, l, k), n.side(d, l, k+2)
 		length := r2.Norm(p)
@@ -130,10 +132,10 @@ func (n *newton) layCell(d *desk, i, row int) {
 		d.miss[row+k], d.gap[2*i+k] = cross(p, q)/length, turns
 		j := d.j[(row+k)*n.n:][:n.n]
 		clear(j)
-		for _, t := range n.members[n.chords[l.sides[k]].member].own {
+		for _, t := range n.members[n.chords[sides[k]].member].own {
 			j[t.Index] += t.Coef * turns
 		}
-		for _, t := range n.members[n.chords[l.sides[k+2]].member].own {
+		for _, t := range n.members[n.chords[sides[k+2]].member].own {
 			j[t.Index] -= t.Coef * turns
 		}
 	}
@@ -143,9 +145,9 @@ func (n *newton) layCell(d *desk, i, row int) {
 // change by without the unknown rates: what is 0 for velocities in d.turn, 1 for
 // accelerations.
 func (n *newton) driftCell(d *desk, i, what int, to []float64) {
-	l := &n.loops[i]
+	sides := &n.cells[n.loops[i].cell]
 	for k := range 2 {
-		p, q := n.chords[l.sides[k]].member, n.chords[l.sides[k+2]].member
+		p, q := n.chords[sides[k]].member, n.chords[sides[k+2]].member
 		to[k] = -d.gap[2*i+k] * (d.turn[3*p+what] - d.turn[3*q+what])
 	}
 }
@@ -157,7 +159,7 @@ func (n *newton) driftCell(d *desk, i, what int, to []float64) {
 func (n *newton) align(sc *scene, d *desk, most float64) {
 	clear(d.cells)
 	n.lay(sc, d)
-	if n.cells == 0 {
+	if len(n.cells) == 0 {
 		return
 	}
 	for i := range n.loops[:n.closed] {
@@ -182,9 +184,6 @@ func (n *newton) even(d *desk, l *loop, most float64) bool {
 // parted reports whether a cell has come to its parallel motion from another, which a
 // step over the flattened position may lead to.
 func (n *newton) parted(d *desk) bool {
-	if n.cells == 0 {
-		return false
-	}
 	for i := range n.loops[:n.closed] {
 		if l := &n.loops[i]; l.cell >= 0 && d.cells[l.cell] == 0 && n.even(d, l, nearly) {
 			return true

@@ -61,7 +61,7 @@ func (n *newton) place(to *scene, p, d *desk) status {
 		}
 		size = next
 	}
-	if !d.keeps(sign) || n.parted(d) {
+	if !d.keeps(sign) || len(n.cells) > 0 && n.parted(d) {
 		return n.fail(d)
 	}
 	n.pose(to, d)

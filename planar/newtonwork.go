@@ -43,7 +43,7 @@ func (n *newton) sizes() [25]int {
 	m, c := len(n.members), n.parts
 	return [...]int{
 		2 * n.free, n.free, n.slides, 3 * m, 2 * m, 3 * m, 2 * len(n.chords), 2 * len(n.loops), 2 * len(n.loops),
-		n.n, n.n, 3 * n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, n.cells, lasts,
+		n.n, n.n, 3 * n.n, n.n, n.n * n.n, n.n * n.n, n.n, n.n, 2 * n.n, len(n.cells), lasts,
 		c.memory, c.rows, c.rows, c.slopes, c.arms,
 	}
 }
