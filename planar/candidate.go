@@ -77,10 +77,15 @@ func (r *relaxation) spare(c candidate) bool {
 	}
 	for i, s := range r.positions {
 		t := &survey{position: s.position, left: s.left}
-		for _, weight := range c.weights(i) {
+		weights := c.weights(i)
+		last := len(weights) - 1
+		for _, weight := range weights[:last] {
 			if !t.take(c.rows, weight) {
 				return false
 			}
+		}
+		if pivot, _ := t.pivot(c.rows, weights[last]); pivot == nil {
+			return false
 		}
 	}
 	return true
@@ -146,24 +151,11 @@ func (c *candidate) weights(position int) [][]float64 {
 //
 // Rows x and y of a pin, with multipliers (λx, λy), count λ·u times along u.
 func (s *survey) take(rows []int, weight []float64) bool {
-	const least = 1e-6
-	size := func(v *mat.VecDense) float64 {
-		sum := 0.0
-		for k, row := range rows {
-			sum += weight[k] * v.AtVec(row)
-		}
-		return sum
-	}
-	if len(s.left) == 0 {
+	pivot, size := s.pivot(rows, weight)
+	if pivot == nil {
 		return false
 	}
-	pivot := slices.MaxFunc(s.left, func(v, w *mat.VecDense) int {
-		return cmp.Compare(math.Abs(size(v)), math.Abs(size(w)))
-	})
 	by := size(pivot)
-	if math.Abs(by) < least {
-		return false
-	}
 	var left []*mat.VecDense
 	for _, v := range s.left {
 		if v != pivot {
@@ -175,6 +167,26 @@ func (s *survey) take(rows []int, weight []float64) bool {
 	}
 	s.left = left
 	return true
+}
+
+// pivot returns the vector of the left null space that has most of a combination of
+// rows, nil where none has any, and how much one has.
+func (s *survey) pivot(rows []int, weight []float64) (most *mat.VecDense, size func(*mat.VecDense) float64) {
+	const least = 1e-6
+	size = func(v *mat.VecDense) float64 {
+		sum := 0.0
+		for k, row := range rows {
+			sum += weight[k] * v.AtVec(row)
+		}
+		return sum
+	}
+	best := least
+	for _, v := range s.left {
+		if by := math.Abs(size(v)); by >= best && (most == nil || by > best) {
+			most, best = v, by
+		}
+	}
+	return most, size
 }
 
 // candidates lists the units, in the order of preference and then of joints.

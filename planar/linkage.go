@@ -21,7 +21,7 @@ type Linkage struct {
 // Lengths lie between 1e-60 and 1e60 m. Joints that repeat others and agree with them
 // by their dimensions, as the third crank of a double parallelogram, are checked on
 // each Move instead of solved: to see that they agree, New needs a Guess, of at most
-// 100 links.
+// 200 links: for 40 it takes a third of a second, for 200 about twelve seconds.
 func New(d Design) (*Linkage, error) {
 	d = d.clone()
 	if err := d.validate(); err != nil {

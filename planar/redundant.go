@@ -68,7 +68,7 @@ func (p *position) survey() (*survey, bool) {
 // look closes the guess, moves the drives both ways and keeps the positions of
 // largest rank.
 func (r *relaxation) look() error {
-	const limit = 100 // bodies: matrices are dense here
+	const limit = 200 // bodies: matrices are dense here
 	if r.b.bodies() > limit {
 		return r.refuse(fmt.Errorf("%w, and of %d bodies, more than %d, which can be left out is not looked for", ErrOverconstrained, r.b.bodies(), limit))
 	}

@@ -165,6 +165,7 @@ func TestContradictions(t *testing.T) {
 		{"third crank that fits in one place", offCrank(), ErrInconsistent, []int{0, 1, 2, 3, 4, 5}, nil, "at the guess alone"},
 		{"straight line beside the guide", guidedPeaucellier(0.01), ErrInconsistent, nil, nil, "they miss each other by 0.00"},
 		{"two drives of one motion", twice, ErrOverconstrained, nil, []int{0, 1}, "not free of each other"},
+		{"more than are looked through", cranks(200, 1), ErrOverconstrained, nil, nil, "more than 200"},
 		{"redundant and no drive", idle, ErrUnderconstrained, nil, nil, "1 drive or joint missing"},
 	}
 	for _, test := range tests {
