@@ -4,6 +4,7 @@ import (
 	"math"
 	"slices"
 
+	"example.com/twopoint/rigid"
 	"gonum.org/v1/gonum/mat"
 	"gonum.org/v1/gonum/spatial/r2"
 )
@@ -77,6 +78,34 @@ func (n *newton) rough(sc *scene, d *desk) {
 			d.slide[l.slide] = -r2.Dot(turned(to.Pose.Axis, l.u), gap)
 		} else {
 			d.slide[l.slide] = r2.Dot(turned(from.Pose.Axis, l.u), gap)
+		}
+	}
+}
+
+// read reads the phases of meshes that are unread off the poses in sc. Those of gears
+// leave the direction of a member open, by whole turns of it and no others.
+func (n *newton) read(sc *scene, d *desk, unread []bool) {
+	n.rough(sc, d)
+	for i := range n.members {
+		m := &n.members[i]
+		for _, t := range m.rest.phase {
+			if unread[t.Index] {
+				unread[t.Index] = false
+				sc.phase[t.Index] += rigid.Wrap(sc.m[m.body].Pose.Angle()-n.total(sc, d, i)) / t.Coef
+				n.prepare(sc, d)
+			}
+		}
+	}
+	n.lay(sc, d)
+	row := 0
+	for i := range n.closed {
+		l := &n.loops[i]
+		if l.phase >= 0 && unread[l.phase] {
+			unread[l.phase] = false
+			sc.phase[l.phase] += d.miss[row]
+		}
+		if row++; l.kind == rowX {
+			row++
 		}
 	}
 }

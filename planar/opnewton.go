@@ -48,6 +48,8 @@ func (o *group) rates(sc *scene) bool {
 	return true
 }
 
+func (o *group) read(sc *scene, unread []bool) { o.n.read(sc, &sc.desks[o.at], unread) }
+
 func (o *group) margin(sc *scene) float64 { return o.n.margin(&sc.desks[o.at]) }
 func (o *group) gap(sc *scene) float64    { return sc.desks[o.at].open() }
 func (o *group) choose(sc *scene) status  { return o.n.assemble(sc, &sc.desks[o.at]) }
