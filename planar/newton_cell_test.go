@@ -100,15 +100,18 @@ func (w *swayed) same(t *testing.T, s, plain *State) {
 	if w.carried {
 		carrier = *s.Motion(6)
 	}
-	speed := max(1, math.Abs(want.Omega))
-	surge := max(speed*speed, math.Abs(want.Alpha))
-	if !(math.Abs(plate.Omega-carrier.Omega) <= 1e-15*speed && math.Abs(plate.Alpha-carrier.Alpha) <= 1e-15*surge && math.Abs(rigid.Wrap(plate.Pose.Angle()-carrier.Pose.Angle()+w.skew)) < 1e-14) {
+	margin, speed := plain.Margin(), max(1, math.Abs(want.Omega), math.Abs(carrier.Omega))
+	surge := max(speed*speed, math.Abs(want.Alpha), math.Abs(carrier.Alpha))
+	turned := func(a, b *rigid.Motion, skew float64) bool {
+		return math.Abs(rigid.Wrap(a.Pose.Angle()-b.Pose.Angle()-skew)) < 1e-14 &&
+			math.Abs(a.Omega-b.Omega) <= 1e-15*speed/margin && math.Abs(a.Alpha-b.Alpha) <= 1e-15*surge/margin
+	}
+	if !turned(plate, &carrier, -w.skew) {
 		t.Fatalf("the plate turns: %+v", *plate)
 	}
-	if !(math.Abs(crank.Omega-rocker.Omega) <= 1e-15*speed && math.Abs(crank.Alpha-rocker.Alpha) <= 1e-15*surge) || !(math.Abs(rigid.Wrap(crank.Pose.Angle()-rocker.Pose.Angle()-2*w.skew)) < 1e-14) {
+	if !turned(crank, rocker, 2*w.skew) {
 		t.Fatalf("cranks are not parallel: %+v, %+v", *crank, *rocker)
 	}
-	margin := plain.Margin()
 	if !(math.Abs(rigid.Wrap(crank.Pose.Angle()-want.Pose.Angle())) < 1e-13/margin &&
 		math.Abs(crank.Omega-want.Omega) < 1e-12*speed/margin/margin && math.Abs(crank.Alpha-want.Alpha) < 1e-12*surge/margin/margin/margin) {
 		t.Fatalf("margin %v: crank %+v, want %+v", margin, *crank, *want)

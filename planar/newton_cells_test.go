@@ -11,8 +11,37 @@ import (
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
-// Random ones, of any size, rhombic and with links in axes of their own; whichever way
-// the cell lies, it follows the four-bar as far as that goes.
+// randomSwayed makes a swayed linkage of any size, rhombic one in three times, and its
+// four-bar where the wheel stands at a random angle. The inputs are those of the cell,
+// whose wheel has axes of its own; the State is nil where the four-bar is nearly flat.
+func randomSwayed(t testing.TB, random *rand.Rand) (w *swayed, cell *Linkage, easy *State, in []rigid.Coordinate) {
+	spread := func() float64 { return 2*random.Float64() - 1 }
+	w = &swayed{crank: 0.3 + random.Float64(), base: 0.3 + 2*random.Float64(), tilt: 3 * spread(), pin: r2.Vec{X: 2 * spread(), Y: 2 * spread()}, skew: spread()}
+	if w.carried = random.IntN(2) == 0; random.IntN(3) == 0 {
+		w.base = w.crank
+	}
+	w.far = r2.Vec{X: 3 * spread(), Y: 3 * spread()}
+	w.wheel = 0.2 + 0.5*random.Float64()
+	at, crank := 3*spread(), 3*spread()
+	tip := r2.Add(w.pin, rigid.NewPose(0, 0, crank).Point(r2.Vec{X: w.crank}))
+	end := rigid.NewPose(w.far.X, w.far.Y, at).Point(r2.Vec{X: w.wheel})
+	d := r2.Sub(end, tip)
+	w.rod = r2.Norm(d)
+	cell, plain := w.linkages(t)
+	guess := []rigid.Placement{{}, {X: w.pin.X, Y: w.pin.Y, Angle: crank}, {X: tip.X, Y: tip.Y, Angle: math.Atan2(d.Y, d.X)}, {X: w.far.X, Y: w.far.Y, Angle: at}, {}}
+	in = []rigid.Coordinate{{Pos: at}, {}}
+	if !w.carried {
+		guess, in = guess[:4], in[:1]
+	}
+	easy, err := plain.Assemble(guess, in...)
+	if err != nil || easy.Margin() < 0.05 {
+		easy = nil
+	}
+	in[0].Pos -= 4 * w.skew
+	return w, cell, easy, in
+}
+
+// Random ones, whichever way the cell lies, follow the four-bar as far as that goes.
 func TestRandomParallelogramsInGroup(t *testing.T) {
 	random := rand.New(rand.NewPCG(35, 5))
 	n := 400
@@ -21,29 +50,11 @@ func TestRandomParallelogramsInGroup(t *testing.T) {
 	}
 	moved, flat := 0, 0
 	for i := range n {
-		spread := func() float64 { return 2*random.Float64() - 1 }
-		w := &swayed{crank: 0.3 + random.Float64(), base: 0.3 + 2*random.Float64(), tilt: 3 * spread(), pin: r2.Vec{X: 2 * spread(), Y: 2 * spread()}, skew: spread()}
-		if w.carried = i%2 == 0; i%3 == 0 {
-			w.base = w.crank
-		}
-		w.far = r2.Vec{X: 3 * spread(), Y: 3 * spread()}
-		w.wheel = 0.2 + 0.5*random.Float64()
-		at, crank := 3*spread(), 3*spread()
-		tip := r2.Add(w.pin, rigid.NewPose(0, 0, crank).Point(r2.Vec{X: w.crank}))
-		end := rigid.NewPose(w.far.X, w.far.Y, at).Point(r2.Vec{X: w.wheel})
-		d := r2.Sub(end, tip)
-		w.rod = r2.Norm(d)
-		cell, plain := w.linkages(t)
-		guess := []rigid.Placement{{}, {X: w.pin.X, Y: w.pin.Y, Angle: crank}, {X: tip.X, Y: tip.Y, Angle: math.Atan2(d.Y, d.X)}, {X: w.far.X, Y: w.far.Y, Angle: at}, {}}
-		in := []rigid.Coordinate{{Pos: at}, {}}
-		if !w.carried {
-			guess, in = guess[:4], in[:1]
-		}
-		easy, err := plain.Assemble(guess, in...)
-		if err != nil || easy.Margin() < 0.05 {
+		w, cell, easy, in := randomSwayed(t, random)
+		if easy == nil {
 			continue
 		}
-		in[0].Pos -= 4 * w.skew // the wheel's own axes
+		at := in[0].Pos
 		s, err := cell.Assemble(w.guess(easy), in...)
 		if err != nil {
 			t.Errorf("machine %d: %v", i, err)
@@ -52,12 +63,12 @@ func TestRandomParallelogramsInGroup(t *testing.T) {
 		way, last := 0.05+0.1*random.Float64(), 0.0
 		for k := 1; k < 150; k++ {
 			for i := range in {
-				in[i] = rigid.Coordinate{Pos: way * float64(k) * float64(1-2*i), Vel: spread(), Acc: spread()}
+				in[i] = rigid.Coordinate{Pos: way * float64(k) * float64(1-2*i), Vel: random.NormFloat64(), Acc: random.NormFloat64()}
 			}
 			in[0].Pos += at
-			errPlain := easy.Move(in...)
-			in[0].Pos -= 4 * w.skew
 			err := s.Move(in...)
+			in[0].Pos += 4 * w.skew
+			errPlain := easy.Move(in...)
 			if errPlain != nil {
 				if err == nil {
 					t.Errorf("machine %d: went on past %v", i, errPlain)
@@ -176,5 +187,36 @@ func TestTwoParallelogramsInGroup(t *testing.T) {
 	t.Logf("%s: %d and %d times flat", groups(hard), flat[0], flat[1])
 	if flat[0] < 10 || flat[1] < 10 {
 		t.Errorf("%d and %d times flat", flat[0], flat[1])
+	}
+}
+
+// From a guess with links at any angle a cell is put together, or not at all: its sides
+// may not lie p = q for p = −q.
+func TestParallelogramsFromAnyGuess(t *testing.T) {
+	random := rand.New(rand.NewPCG(30, 31))
+	n, closed := 600, 0
+	if testing.Short() {
+		n = 100
+	}
+	for i := range n {
+		w, cell, easy, in := randomSwayed(t, random)
+		if easy == nil {
+			continue
+		}
+		guess := w.guess(easy)
+		for k := range guess[1:] {
+			guess[k+1].Angle = math.Pi * (2*random.Float64() - 1)
+		}
+		s, err := cell.Assemble(guess, in...)
+		if err != nil {
+			continue
+		}
+		closed++
+		if o := open(cell, s, in); !(o.pos < 1e-14) {
+			t.Errorf("machine %d: %+v", i, o)
+		}
+	}
+	if closed < n/2 {
+		t.Errorf("%d of %d put together", closed, n)
 	}
 }

@@ -162,32 +162,38 @@ func TestRollingGroups(t *testing.T) {
 	}
 }
 
-// TestFarGuesses assembles dyads, triads and rolling groups from guesses that are up
+// TestFarGuesses assembles dyads, triads, rolling groups and parallelograms from guesses that are up
 // to 30° and 30 % of their size off: what is assembled closes to 1e-14 of the size,
 // and what is not is told, by an error that names links.
 func TestFarGuesses(t *testing.T) {
-	n, closed, failed := 1200, [3]int{}, [3]int{} // of dyads, triads and rolling groups
+	n, closed, failed := 1600, [4]int{}, [4]int{}
 	if testing.Short() {
-		n = 150
+		n = 200
 	}
 	random := rand.New(rand.NewPCG(30, 30))
 	for i := range n {
 		var d Design
 		var guess []rigid.Placement
 		var in []rigid.Coordinate
-		switch i % 3 {
+		switch i % 4 {
 		case 0:
-			g := grow(uint64(i), i/3%10, random.IntN(growths))
+			g := grow(uint64(i), i/4%10, random.IntN(growths))
 			d, guess, in = g.Design, g.guess(), g.in
 		case 1:
-			p := newPlatform(random, []string{"ccc", "ccl", "ccm", "cll", "clm", "cmm", "llm", "lmm"}[i/3%8])
+			p := newPlatform(random, []string{"ccc", "ccl", "ccm", "cll", "clm", "cmm", "llm", "lmm"}[i/4%8])
 			d, guess = p.Design, p.guess()
 			for _, x := range p.in {
 				in = append(in, rigid.Coordinate{Pos: x, Vel: 1, Acc: 2})
 			}
 		case 2:
-			g := rollingGroup(uint64(i), i/3%rollings)
+			g := rollingGroup(uint64(i), i/4%rollings)
 			d, guess, in = g.Design, g.guess(), g.in
+		case 3:
+			w, cell, easy, at := randomSwayed(t, random)
+			if easy == nil {
+				continue
+			}
+			d, guess, in = cell.Design(), w.guess(easy), at
 		}
 		l, err := New(d)
 		if err != nil {
@@ -204,14 +210,14 @@ func TestFarGuesses(t *testing.T) {
 		}
 		s, err := l.Assemble(guess, in...)
 		if err != nil {
-			failed[i%3]++
+			failed[i%4]++
 			known := errors.Is(err, rigid.ErrUnreachable) || errors.Is(err, rigid.ErrSingular) || errors.Is(err, ErrTooFar)
 			if !known || !strings.Contains(err.Error(), "links ") {
 				t.Errorf("machine %d: %v", i, err)
 			}
 			continue
 		}
-		closed[i%3]++
+		closed[i%4]++
 		if o := open(l, s, in); !(o.pos < 1e-14 && o.vel < 1e-13/s.Margin() && o.acc < 1e-13/s.Margin()/s.Margin()) {
 			t.Errorf("machine %d: %+v, margin %.2g", i, o, s.Margin())
 		}
