@@ -164,6 +164,10 @@ func TestParallelogramInGroup(t *testing.T) {
 	if lo, hi, err := s.Limits(rigid.Interval{Lo: 1.6 - 7, Hi: 1.6 + 7}); lo.Kind != NoLimit || hi.Kind != NoLimit || err != nil {
 		t.Errorf("limits %v, %v, %v", lo, hi, err)
 	}
+	in := rigid.Coordinate{Pos: 1.6}
+	if n := testing.AllocsPerRun(100, func() { in.Pos += 0.1; err = s.Move(in) }); n != 0 || err != nil {
+		t.Errorf("%v allocations, %v", n, err)
+	}
 }
 
 // flatAt is where the wheel of swingThrough stands with the crank at 0: by mpmath,

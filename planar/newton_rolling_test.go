@@ -166,7 +166,7 @@ func TestRollingGroups(t *testing.T) {
 // to 30° and 30 % of their size off: what is assembled closes to 1e-14 of the size,
 // and what is not is told, by an error that names links.
 func TestFarGuesses(t *testing.T) {
-	n, closed, failed := 1600, [4]int{}, [4]int{}
+	n, closed, failed := 1000, [4]int{}, [4]int{}
 	if testing.Short() {
 		n = 200
 	}
