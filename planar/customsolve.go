@@ -4,7 +4,6 @@ import (
 	"math"
 	"slices"
 
-	"example.com/twopoint/rigid"
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
@@ -273,31 +272,4 @@ func (n *newton) customAcc(sc *scene, d *desk, row int) {
 		}
 		row += len(u.nth)
 	}
-}
-
-// margin returns the margin of the group: that of its slopes or, if less, how much
-// of the length of a Constraint's slopes the unknowns keep, an angle counting on an arm
-// of the group's length. Where a pin in a slot goes along it that is 0, even if there
-// is but one unknown.
-func (n *newton) margin(d *desk) float64 { return math.Min(d.margin(), n.kept(d)) }
-
-func (n *newton) kept(d *desk) float64 {
-	least := 1.0
-	first := n.n - len(d.natural)
-	for k, size := range d.natural {
-		sum := 0.0
-		for _, v := range d.j[(first+k)*n.n:][:n.n] {
-			sum += v * v
-		}
-		least = math.Min(least, math.Sqrt(sum)/(d.weight[k]*size))
-	}
-	if !(least >= 0) {
-		return 0
-	}
-	return least
-}
-
-// regular reports whether the rates are determined.
-func (n *newton) regular(d *desk) bool {
-	return d.regular() && n.kept(d) >= rigid.LeastMargin
 }

@@ -2,8 +2,6 @@ package planar
 
 import (
 	"math"
-
-	"example.com/twopoint/rigid"
 )
 
 // A desk is the workspace of a newton, laid out.
@@ -188,38 +186,6 @@ func (d *desk) solve(x []float64) {
 		}
 		known[0] = sum * row[0]
 	}
-}
-
-// margin returns the least sine between a column of the slopes and the span of the
-// rest: 1 over the length of the column and that of its row in the inverse.
-func (d *desk) margin() float64 {
-	n := len(d.perm)
-	if d.last[detSign] == 0 {
-		return 0
-	}
-	x, square := d.temp[:n], d.temp[n:]
-	clear(square)
-	for k := range n {
-		clear(x)
-		x[k] = 1
-		d.solve(x)
-		for i, v := range x {
-			square[i] += v * v
-		}
-	}
-	least := 1.0
-	for i, s := range square {
-		least = math.Min(least, 1/math.Sqrt(s*d.square[i]))
-	}
-	if !(least >= 0) {
-		return 0
-	}
-	return least
-}
-
-// regular reports whether the rates are determined.
-func (d *desk) regular() bool {
-	return d.last[detSquare] >= rigid.LeastMargin*rigid.LeastMargin || d.margin() >= rigid.LeastMargin
 }
 
 // open returns how far the loops were from closing, in m, at the last trial of a
