@@ -70,3 +70,53 @@ func placed(l *Linkage, s *State) []rigid.Placement {
 	}
 	return out
 }
+
+// wattI and its like drive one link of the six-bar by its angle to the frame. The
+// chains are from the theory of machines: in Watt's the two links with three pins
+// are neighbours, in Stephenson's they are not.
+func wattI(driven int) Design {
+	var p plan
+	l := p.links("base", "arm", "coupler", "rocker", "link")
+	// The frame is a link of two pins, arm and base have three.
+	p.pinned([2]Link{0, l[0]}, [2]Link{l[0], l[2]}, [2]Link{l[2], l[1]}, [2]Link{l[1], 0},
+		[2]Link{l[0], l[3]}, [2]Link{l[2], l[4]}, [2]Link{l[3], l[4]})
+	p.turn(l[driven], Frame)
+	return p.Design
+}
+
+func wattII(driven int) Design {
+	var p plan
+	l := p.links("crank", "rod", "beam", "link", "rocker")
+	p.pinned([2]Link{0, l[0]}, [2]Link{l[0], l[1]}, [2]Link{l[1], l[2]}, [2]Link{l[2], 0},
+		[2]Link{l[2], l[3]}, [2]Link{l[3], l[4]}, [2]Link{l[4], 0})
+	p.turn(l[driven], Frame)
+	return p.Design
+}
+
+func stephensonI(driven int) Design {
+	var p plan
+	l := p.links("left", "bar", "right", "link", "tie")
+	// left and right have three pins each; frame and bar join them, link and tie too.
+	p.pinned([2]Link{0, l[0]}, [2]Link{l[0], l[1]}, [2]Link{l[1], l[2]}, [2]Link{l[2], 0},
+		[2]Link{l[0], l[3]}, [2]Link{l[3], l[4]}, [2]Link{l[4], l[2]})
+	p.turn(l[driven], Frame)
+	return p.Design
+}
+
+func stephensonII(driven int) Design {
+	var p plan
+	l := p.links("base", "one", "two", "plate", "crank")
+	p.pinned([2]Link{0, l[0]}, [2]Link{l[0], l[1]}, [2]Link{l[0], l[2]}, [2]Link{l[1], l[3]},
+		[2]Link{l[2], l[3]}, [2]Link{l[3], l[4]}, [2]Link{l[4], 0})
+	p.turn(l[driven], Frame)
+	return p.Design
+}
+
+func stephensonIII(driven int) Design {
+	var p plan
+	l := p.links("crank", "plate", "rocker", "link", "lever")
+	p.pinned([2]Link{0, l[0]}, [2]Link{l[0], l[1]}, [2]Link{l[1], l[2]}, [2]Link{l[2], 0},
+		[2]Link{l[1], l[3]}, [2]Link{l[3], l[4]}, [2]Link{l[4], 0})
+	p.turn(l[driven], Frame)
+	return p.Design
+}
