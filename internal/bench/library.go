@@ -22,6 +22,7 @@ import (
 type subject struct {
 	name string
 	sweep
+	begin func() error // goes back to the turns near 0, where that makes a difference
 	solve func(in rigid.Coordinate) error
 	out   func() [8]float64
 	run   func(in []rigid.Coordinate, by float64, sum *sums) (failed int)
@@ -35,6 +36,11 @@ type subject struct {
 func (c subject) time(d time.Duration) (result, error) {
 	r := result{Peer: library, Case: c.name, Check: map[string][8]float64{}}
 	in := make([]rigid.Coordinate, c.Steps)
+	if c.begin != nil {
+		if err := c.begin(); err != nil {
+			return r, fmt.Errorf("%s: %w", c.name, err)
+		}
+	}
 	for k := range in {
 		in[k].Pos, in[k].Vel, in[k].Acc = c.input(k)
 		if err := c.solve(in[k]); err != nil {
@@ -202,10 +208,12 @@ func ofBody(name string, s sweep, pins [][6]float64, q0 []float64, out [3]float6
 	if err != nil {
 		return subject{}, fmt.Errorf("%s: %w", name, err)
 	}
+	home := st.Clone()
 	tool := planar.Link(out[0])
 	at := tool.At(out[1], out[2])
 	return subject{
 		name: name, sweep: s,
+		begin: func() error { return st.Set(home) },
 		solve: func(in rigid.Coordinate) error {
 			in.Pos = rigid.Nearest(in.Pos, st.Turn(1, planar.Frame).Pos)
 			return st.Move(in)
