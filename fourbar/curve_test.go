@@ -22,11 +22,12 @@ func TestCurveOnWattsSextic(t *testing.T) {
 		}
 		x, y := p.Point.Pos.X, p.Point.Pos.Y
 		rr := x*x + y*y
-		// with a sin θ = a y/r: (b² − r² − c² + a² − 2a² sin²θ)² = 4 a² sin²θ (c² − a² cos²θ)
+		// with sin θ = y/r: (b² − r² − c² + a² − 2a² sin²θ)² = 4 a² sin²θ (c² − a² cos²θ),
+		// times r⁴, since the curve passes through the origin
 		const a2, b2, c2 = 1.44, 1, 0.25
-		s2 := y * y / rr
-		left := b2 - rr - c2 + a2*(1-2*s2)
-		if off := left*left - 4*a2*s2*(c2-a2*(1-s2)); math.Abs(off) > 1e-13 {
+		yy := y * y
+		left := (b2-rr-c2+a2)*rr - 2*a2*yy
+		if off := left*left - 4*a2*yy*(c2*rr-a2*x*x); math.Abs(off) > 2e-15 {
 			t.Errorf("turn %v: off the sextic by %v", p.Turn, off)
 		}
 		n++

@@ -77,5 +77,6 @@ func (l *Line) Bias(s, v float64) r2.Vec {
 	return r2.Vec{X: l.A.X + along*u.X - left*u.Y, Y: l.A.Y + along*u.Y + left*u.X}
 }
 
-// cross returns a×b.
-func cross(a, b r2.Vec) float64 { return a.X*b.Y - a.Y*b.X }
+// cross returns a×b, exactly 0 for a = b: the products are rounded before they are
+// subtracted, on every processor.
+func cross(a, b r2.Vec) float64 { return float64(a.X*b.Y) - float64(a.Y*b.X) }

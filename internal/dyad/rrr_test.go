@@ -81,9 +81,15 @@ func TestRRRMoving(t *testing.T) {
 		// of rigid links, all in one
 		var p, q dyad.Link
 		var same dyad.Triangle
-		if !k.Move(&same, &p, &q, m.d(0), w, z, side) || same != tri || p.Axis != one || q.Axis != two {
-			t.Errorf("Move finds %+v, Place %+v", same, tri)
+		if !k.Move(&same, &p, &q, m.d(0), w, z, side) {
+			t.Error("Move finds no place")
 		}
+		near(t, "Move: R", r2.Norm(r2.Sub(same.R, tri.R)), 0, 1e-14*b)
+		near(t, "Move: Q", r2.Norm(r2.Sub(same.Q, tri.Q)), 0, 1e-14*c)
+		near(t, "Move: X", same.X, tri.X, 1e-14*(b*b+c*c))
+		near(t, "Move: F", same.F, tri.F, 1e-14*(b*b+c*c)/k.Margin(&tri))
+		near(t, "Move: axis of AB", r2.Norm(r2.Sub(p.Axis, one)), 0, 1e-14)
+		near(t, "Move: axis of CB", r2.Norm(r2.Sub(q.Axis, two)), 0, 1e-14)
 		w1, w2 = tri.Rates(w)
 		a1, a2 = tri.Rates(tri.Bias(z, w1, w2))
 		size = 1e-13 * (1 + w1*w1 + w2*w2 + math.Abs(a1) + math.Abs(a2)) / k.Margin(&tri)
