@@ -59,13 +59,14 @@ func NewBelt(d BeltDimensions) (*Belt, error) {
 	var r report
 	r.Mount(d.Mount)
 	r.Length("Centres", d.Centres)
-	if (d.TeethA != 0) != (d.TeethB != 0) {
+	if d.TeethA != 0 || d.TeethB != 0 {
 		r.teeth("TeethA", d.TeethA)
 		r.teeth("TeethB", d.TeethB)
+		r.Length("Pitch", d.Pitch)
 	}
 	p := &Belt{dim: d}
-	p.radiusA, p.perTurn = pitchRadius(&r, "RadiusA", d.RadiusA, "TeethA", d.TeethA, d.Pitch)
-	p.radiusB, _ = pitchRadius(&r, "RadiusB", d.RadiusB, "TeethB", d.TeethB, d.Pitch)
+	p.radiusA, p.perTurn = pitchRadius(&r, "RadiusA", d.RadiusA, d.TeethA, d.Pitch)
+	p.radiusB, _ = pitchRadius(&r, "RadiusB", d.RadiusB, d.TeethB, d.Pitch)
 	if r.OK() && d.Centres <= p.radiusA+p.radiusB {
 		r.Add("Centres", d.Centres, errTouch)
 	}

@@ -20,6 +20,7 @@ var (
 	errAgree = dims.Because(rigid.ErrInput, "it contradicts the other dimensions")
 	errTeeth = dims.Because(rigid.ErrNotPositive, "a gear must have a tooth at least")
 	errMany  = dims.Because(rigid.ErrInput, "no more than 1e9 are taken")
+	errSize  = dims.Because(rigid.ErrNotPositive, "teeth without radii need the distance of the centres")
 	errBends = dims.Because(rigid.ErrInput, "a track must have a bend at least")
 	errBent  = dims.Because(rigid.ErrInput, "length × curvature must not be over 1e4 rad")
 	errTouch = dims.Because(rigid.ErrUnreachable, "the pulleys would touch")

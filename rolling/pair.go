@@ -71,16 +71,22 @@ func NewPair(d PairDimensions) (*Pair, error) {
 			r.Add("TeethB", float64(d.TeethB), errFills)
 		}
 	}
-	if d.Centres != 0 || (toothed && d.RadiusA == 0 && d.RadiusB == 0) {
+	byTeeth := toothed && d.RadiusA == 0 && d.RadiusB == 0
+	switch {
+	case byTeeth && d.Centres == 0:
+		r.Add("Centres", 0, errSize)
+	case d.Centres != 0:
 		r.Length("Centres", d.Centres)
 	}
 	p := &Pair{dim: d, radiusA: d.RadiusA, radiusB: d.RadiusB}
-	if r.OK() && toothed && d.RadiusA == 0 && d.RadiusB == 0 {
+	if r.OK() && byTeeth {
 		sum := math.Abs(float64(d.TeethA) + p.sign()*float64(d.TeethB))
 		p.radiusA, p.radiusB = d.Centres*(float64(d.TeethA)/sum), d.Centres*(float64(d.TeethB)/sum)
 	}
-	r.Length("RadiusA", p.radiusA)
-	r.Length("RadiusB", p.radiusB)
+	if r.OK() || !byTeeth {
+		r.Length("RadiusA", p.radiusA)
+		r.Length("RadiusB", p.radiusB)
+	}
 	if r.OK() && d.Internal && same(p.radiusA, p.radiusB) {
 		r.Add("RadiusB", d.RadiusB, errFills)
 	}

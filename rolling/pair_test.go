@@ -173,6 +173,28 @@ func TestNewPairErrors(t *testing.T) {
 	}
 }
 
+// TestSayOnce: what is missing is named once, and nothing that follows from it.
+func TestSayOnce(t *testing.T) {
+	_, pair := rolling.NewPair(rolling.PairDimensions{TeethA: 20, TeethB: 40})
+	_, belt := rolling.NewBelt(rolling.BeltDimensions{TeethA: 20, TeethB: 40, Centres: 1})
+	_, teeth := rolling.NewBelt(rolling.BeltDimensions{RadiusA: 0.1, TeethB: -4, RadiusB: 0.1, Pitch: 0.01, Centres: 1})
+	_, rack := rolling.NewRack(rolling.RackDimensions{Teeth: 20})
+	for _, row := range []struct {
+		err  error
+		want string
+	}{
+		{pair, "twopoint: dimension Centres = 0: teeth without radii need the distance of the centres"},
+		{belt, "twopoint: dimension Pitch = 0: must be positive"},
+		{teeth, "twopoint: dimension TeethA = 0: a gear must have a tooth at least\n" +
+			"twopoint: dimension TeethB = -4: a gear must have a tooth at least"},
+		{rack, "twopoint: dimension Pitch = 0: must be positive"},
+	} {
+		if row.err == nil || row.err.Error() != row.want {
+			t.Errorf("%v\nwant %s", row.err, row.want)
+		}
+	}
+}
+
 // TestPairsRefuse: every solver of pair, rack and belt refuses numbers that are not
 // finite, results that overflow and a zero value, and leaves the state as it was.
 func TestPairsRefuse(t *testing.T) {

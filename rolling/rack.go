@@ -3,6 +3,7 @@ package rolling
 import (
 	"gonum.org/v1/gonum/spatial/r2"
 
+	"example.com/twopoint/internal/dims"
 	"example.com/twopoint/rigid"
 )
 
@@ -57,7 +58,11 @@ func NewRack(d RackDimensions) (*Rack, error) {
 	var r report
 	r.Mount(d.Mount)
 	p := &Rack{dim: d}
-	p.radius, p.perTurn = pitchRadius(&r, "Radius", d.Radius, "Teeth", d.Teeth, d.Pitch)
+	if d.Teeth != 0 {
+		r.teeth("Teeth", d.Teeth)
+		r.Length("Pitch", d.Pitch)
+	}
+	p.radius, p.perTurn = pitchRadius(&r, "Radius", d.Radius, d.Teeth, d.Pitch)
 	if !r.OK() {
 		return nil, r.Err()
 	}
@@ -71,14 +76,12 @@ func NewRack(d RackDimensions) (*Rack, error) {
 var oneOver2Pi = double{0x1.45f306dc9c883p-3, -0x1.6b01ec5417056p-57}
 
 // pitchRadius returns a radius as given or, where there are teeth, as teeth·pitch/2π,
-// also to 32 digits.
-func pitchRadius(r *report, name string, radius float64, teethName string, teeth int, pitch float64) (float64, double) {
+// also to 32 digits. Of teeth or a pitch that are wrong, which its caller reports, once,
+// there is none.
+func pitchRadius(r *report, name string, radius float64, teeth int, pitch float64) (float64, double) {
 	exact := double{hi: radius}
 	if teeth != 0 {
-		before := len(r.Faults)
-		r.teeth(teethName, teeth)
-		r.Length("Pitch", pitch)
-		if len(r.Faults) > before {
+		if teeth < 1 || dims.Length(pitch) != nil {
 			return radius, exact
 		}
 		exact = product(float64(teeth), pitch).by(oneOver2Pi)
