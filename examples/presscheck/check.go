@@ -10,8 +10,6 @@ import (
 	"example.com/twopoint/examples/internal/presslog"
 )
 
-var errOrder = errors.New("time_s is not after that of the line before")
-
 // A checker takes a log sample by sample; nothing in it grows with the log.
 type checker struct {
 	c       *config
@@ -66,7 +64,7 @@ func (k *checker) take(s presslog.Sample) error {
 	if k.log.Samples == 0 {
 		k.begin = s.Time
 	} else if s.Time <= k.last {
-		return &presslog.LineError{Line: s.Line, Err: errOrder}
+		return &presslog.LineError{Line: s.Line, Err: presslog.ErrOrder}
 	}
 	k.last = s.Time
 	k.log.Samples++

@@ -65,6 +65,7 @@ type follower struct {
 	inner, outer slidercrank.DeadCentre
 	st, back     slidercrank.State
 	near         *place
+	last         float64 // time of the last sample taken, s
 	sum          summary
 }
 
@@ -106,6 +107,9 @@ func (f *follower) take(s presslog.Sample) error {
 		return &presslog.LineError{Line: s.Line, Err: fmt.Errorf("crank_counts %d: %w", s.Counts, err)}
 	}
 	turn := float64(turns)*rigid.Revolution + angle
+	if f.sum.Samples > 0 && s.Time <= f.last {
+		return &presslog.LineError{Line: s.Line, Err: presslog.ErrOrder}
+	}
 	if err := f.press.Solve(&f.st, rigid.Coordinate{Pos: turn}); err != nil {
 		return &presslog.LineError{Line: s.Line, Err: err}
 	}
@@ -122,6 +126,7 @@ func (f *follower) take(s presslog.Sample) error {
 		f.out.tick(t)
 	}
 	f.sum.Samples++
+	f.last = s.Time
 	return nil
 }
 

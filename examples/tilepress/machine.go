@@ -30,8 +30,11 @@ func readMachine(path string) (*machine, error) {
 		return nil, fmt.Errorf("%s: press: %w", name, err)
 	}
 	m := &machine{press: press, encoder: file.Encoder}
-	if _, _, err := m.encoder.Angle(0); err != nil {
-		return nil, fmt.Errorf("%s: encoder: %w", name, err)
+	if n := m.encoder.PerTurn; n < 1 {
+		return nil, fmt.Errorf("%s: encoder.perTurn: %d: must be at least 1", name, n)
+	}
+	if _, _, err := press.DeadCentres(); err != nil {
+		return nil, fmt.Errorf("%s: press: the ram must have two dead centres: %w", name, err)
 	}
 	return m, nil
 }

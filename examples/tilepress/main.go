@@ -19,6 +19,7 @@ import (
 	"flag"
 	"fmt"
 	"io"
+	"math"
 	"os"
 )
 
@@ -97,6 +98,9 @@ func parse(args []string, stderr io.Writer) (options, error) {
 	}
 	if !(o.margin >= 0 && o.margin <= 1) {
 		return o, fmt.Errorf("-margin %v: must be from 0 to 1", o.margin)
+	}
+	if math.IsNaN(o.ramSpeed) || math.IsInf(o.ramSpeed, 0) {
+		return o, fmt.Errorf("-ram-speed %v: must be a finite number", o.ramSpeed)
 	}
 	return o, nil
 }

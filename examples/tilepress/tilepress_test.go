@@ -128,16 +128,17 @@ func TestMalformedLines(t *testing.T) {
 		"0.3,-9223372036854775808,0.5\n" + // less Zero beyond int64
 		"0.4,\"50\"75,0.5\n" + // a quote inside
 		"NaN?,5080,0.5\n" +
+		"0.0,5080,0.5\n" + // no later than the first
 		"0.5,5085,0.5995\n"
 	out, errs, err := press(t, log, "-log", "-", "-json", "-window", "3")
 	if err != nil {
 		t.Fatal(err)
 	}
 	all := jsonLines(t, out)
-	if s := all[len(all)-1].Summary; s.Samples != 2 || s.Skipped != 5 {
+	if s := all[len(all)-1].Summary; s.Samples != 2 || s.Skipped != 6 {
 		t.Errorf("summary %+v, said %s", s, errs)
 	}
-	for n := 3; n <= 7; n++ {
+	for n := 3; n <= 8; n++ {
 		if !strings.Contains(errs, fmt.Sprintf("line %d:", n)) {
 			t.Errorf("line %d is not reported: %s", n, errs)
 		}
@@ -159,7 +160,8 @@ func TestMachine(t *testing.T) {
 	for _, c := range []struct{ why, text, want string }{
 		{"an unknown field", `{"press": {"crank": 0.1, "rodd": 0.4}}`, "rodd"},
 		{"a wrong dimension", `{"press": {"crank": 0.1, "rod": -0.4}, "encoder": {"perTurn": 100}}`, "Rod"},
-		{"no encoder", `{"press": {"crank": 0.1, "rod": 0.4}}`, "encoder"},
+		{"no encoder", `{"press": {"crank": 0.1, "rod": 0.4}}`, "encoder.perTurn: 0"},
+		{"no inner dead centre", `{"press": {"crank": 0.1, "rod": 0.1, "offset": 0.01}, "encoder": {"perTurn": 100}}`, "two dead centres"},
 		{"two values", `{"press": {"crank": 0.1, "rod": 0.4}, "encoder": {"perTurn": 100}} {}`, "more than one"},
 		{"no JSON", `crank: 0.1`, "machine.json"},
 	} {
@@ -174,7 +176,7 @@ func TestMachine(t *testing.T) {
 }
 
 func TestFlags(t *testing.T) {
-	for _, args := range [][]string{{"-every", "0"}, {"-margin", "2"}, {"-window", "1"}, {"log.csv"}, {"-log", "none.csv"}} {
+	for _, args := range [][]string{{"-every", "0"}, {"-margin", "2"}, {"-window", "1"}, {"-ram-speed", "NaN"}, {"-ram-speed", "-Inf"}, {"log.csv"}, {"-log", "none.csv"}} {
 		if _, _, err := press(t, "", args...); err == nil {
 			t.Errorf("%v is taken", args)
 		}

@@ -23,6 +23,10 @@ type Sample struct {
 	Ram    float64 // m, measured
 }
 
+// ErrOrder: the time of a sample is not after that of the last one taken, which is for
+// the reader's caller to tell, who may have refused that one.
+var ErrOrder = errors.New("time_s is not after that of the line before")
+
 // A LineError is a malformed line; reading goes on after it.
 type LineError struct {
 	Line int
