@@ -131,6 +131,9 @@ func prepare(ctx context.Context, c *config, o options) (*rig, error) {
 	if err != nil {
 		return nil, err
 	}
+	if end := pl.length() * float64(o.cycles); o.at > end {
+		return nil, fmt.Errorf("-at %v: the program is over after %.3f s", o.at, end)
+	}
 	r := &rig{plan: pl, axis: newSimulated(c, motor.Pos)}
 	if r.loop, err = newLoop(ctx, c, b, pl, o.cycles); err != nil {
 		return nil, err
@@ -184,6 +187,12 @@ func parse(args []string, stderr io.Writer) (options, error) {
 	}
 	if o.every < 1 {
 		return o, fmt.Errorf("-every %d: must be at least 1", o.every)
+	}
+	if math.IsNaN(o.at) || math.IsInf(o.at, 0) {
+		return o, fmt.Errorf("-at %v: must be a finite number", o.at)
+	}
+	if o.at >= 0 && o.fault == "" {
+		return o, fmt.Errorf("-at %v: needs -fault, which says what to inject", o.at)
 	}
 	if o.cycles < 1 || o.cycles > 1e6 {
 		return o, fmt.Errorf("-cycles %d: must be from 1 to 1000000", o.cycles)

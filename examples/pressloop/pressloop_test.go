@@ -70,7 +70,8 @@ func TestConfig(t *testing.T) {
 }
 
 func TestFlags(t *testing.T) {
-	for _, args := range [][]string{{"-every", "0"}, {"-cycles", "0"}, {"run.csv"}, {"-fault", "flood"}, {"-nonsense"}} {
+	for _, args := range [][]string{{"-every", "0"}, {"-cycles", "0"}, {"run.csv"}, {"-fault", "flood"}, {"-nonsense"},
+		{"-at", "0.3"}, {"-fault", "jam", "-at", "NaN"}, {"-fault", "jam", "-at", "Inf"}, {"-fault", "jam", "-at", "1.8"}} {
 		if _, _, err := press(t, args...); err == nil || err == errStopped {
 			t.Errorf("%v: %v", args, err)
 		}
