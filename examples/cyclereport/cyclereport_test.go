@@ -153,6 +153,7 @@ func TestConfig(t *testing.T) {
 		{"a wrong field of the design", `"slot"`, `"slott"`, "slott"},
 		{"an unknown link", `"poles": "rod"`, `"poles": "rood"`, "rood"},
 		{"a hole without a joint", `"x": 0.12, "y": 0}, "part"`, `"x": 0.13, "y": 0}, "part"`, "no joint"},
+		{"a negative tolerance", `"by": 5e-5`, `"by": -5e-5`, "tolerances[0].by"},
 		{"no cycle", `"to": 6.283185307179586`, `"to": 0`, "no cycle"},
 		{"too short a rod", `"x": 0.20, "y": 0}, "b"`, `"x": 0.02, "y": 0}, "b"`, "rod"},
 	} {

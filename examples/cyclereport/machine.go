@@ -101,6 +101,9 @@ func (m *machine) build() (err error) {
 		if len(hole.Of) == 0 {
 			return fmt.Errorf("tolerances[%d]: no joint at (%v, %v) of %s", i, t.Hole.X, t.Hole.Y, t.Hole.Link)
 		}
+		if t.By < 0 {
+			return fmt.Errorf("tolerances[%d].by: %v, must not be negative", i, t.By)
+		}
 		m.dimensions, m.tolerances = append(m.dimensions, hole), append(m.tolerances, t.By)
 	}
 	if m.linkage, err = planar.New(m.Design); err != nil {
