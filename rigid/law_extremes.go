@@ -60,7 +60,8 @@ func (l Law) Peaks(over Interval) (speed, acc []Coefficients, err error) {
 // end pieces included. On each the output rises all the way, or falls, or stands
 // still, so that Solve and Inverse have one answer there. Stretches in which the law
 // has no value are left out, their edges taken to the next float64; a piece that is
-// nothing but rounding is left out too.
+// nothing but rounding is left out too. Of a law that goes on over whole turns, a
+// whole turn that starts at a dead centre has no end pieces: all are whole strokes.
 //
 // Dead centres, steps and errors are as for Extremes.
 func (l Law) Strokes(over Interval) ([]Interval, error) {

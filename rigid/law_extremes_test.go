@@ -179,6 +179,26 @@ func TestExtremesDwell(t *testing.T) {
 	}
 }
 
+// A whole turn from a dead centre, off by its rounding, is the two whole strokes.
+func TestStrokesWhole(t *testing.T) {
+	for phase := -3.0; phase < 3; phase += 0.01 {
+		law := rigid.Linear(1, phase).Then(sineLaw)
+		dead, err := law.Extremes(turn)
+		if err != nil || len(dead) != 2 {
+			t.Fatalf("phase %v: %v, %v", phase, dead, err)
+		}
+		for i, d := range dead {
+			strokes, err := law.Strokes(rigid.Interval{Lo: d.In, Hi: d.In + rigid.Revolution})
+			if err != nil || len(strokes) != 2 {
+				t.Fatalf("phase %v: %v, %v", phase, strokes, err)
+			}
+			if between := dead[1-i].In + float64(i)*rigid.Revolution; math.Abs(strokes[0].Hi-between) > 1e-12 {
+				t.Errorf("phase %v: %v, want a dead centre at %v", phase, strokes, between)
+			}
+		}
+	}
+}
+
 // Laws with gaps: what lies between them is found, up to the last float64.
 func TestStrokesGaps(t *testing.T) {
 	limits := []rigid.Interval{{Lo: -2.5, Hi: -1}, {Lo: 0.2, Hi: 1.6}, {Lo: 2, Hi: 2.0625}}

@@ -9,13 +9,16 @@
 //		t.Errorf("ram (-want +got):\n%s", diff)
 //	}
 //
-// A State has a Margin, which these two ask to be equal: give Lengths a Relative, too,
-// to compare whole States of measured motions. But a Margin belongs to the direction
-// solved: Solve tells of the joint that flattens for a driving crank, a solve back of
-// another. So a State and the same position solved back differ in Margin by definition;
-// leave it out of a round trip:
+// A State has a Margin, which these two ask to be equal. Leave it out to compare whole
+// States of measured motions,
 //
 //	cmpopts.IgnoreFields(slidercrank.State{}, "Margin")
+//
+// or give Lengths a Relative, too, which then counts for every length and rate: with
+// 1e-3 a place 0.5 m from the origin may be off by 0.5 mm, however small Pos is. A
+// Margin belongs to the direction solved: Solve tells of the joint that flattens for a
+// driving crank, a solve back of another. So a State and the same position solved back
+// differ in Margin by definition: leave it out of a round trip.
 //
 // They serve every type of this library (motions, points, paths, terms,
 // coordinates, coefficients, the states of the mechanisms) and any struct, slice,
