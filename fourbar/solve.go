@@ -10,8 +10,9 @@ import (
 )
 
 // Solve writes into dst the motion of all links for a motion of the crank, in rad,
-// rad/s and rad/s². Turn is the input as given. It gives every field of dst;
-// where it returns an error it leaves dst as it was:
+// rad/s and rad/s². Turn is the input as given, Swing goes on over any number of
+// turns, as Coefficients has it. Solve gives every field of dst; where it returns an
+// error it leaves dst as it was:
 //
 //   - ErrUnreachable: Turn.Pos lies outside Range;
 //   - ErrSingular: Margin is below rigid.LeastMargin, at a limit of the crank or a

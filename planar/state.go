@@ -197,7 +197,8 @@ func (s *State) Pole(a, b Link) (r2.Vec, error) {
 	return rigid.RelativePole(s.Motion(a), s.Motion(b))
 }
 
-// Inputs returns the motions of the drives, in their order.
+// Inputs returns the motions of the drives, in their order, in a new list. In a loop
+// Turn and Slide read a driven turn or displacement without allocation.
 func (s *State) Inputs() []rigid.Coordinate {
 	if s.l == nil {
 		return nil

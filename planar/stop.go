@@ -34,8 +34,8 @@ func (s *State) fail(op int, st status, done, blocked float64, tried *scene) err
 }
 
 // Stop returns why the last Move failed, false if it didn't. It finds how far the
-// linkage can go by trying, so it takes as long as some dozens of Moves; the State
-// stays as it is.
+// linkage can go by trying, so it takes as long as some dozens of Moves, and
+// allocates; the State stays as it is.
 func (s *State) Stop() (Stop, bool) {
 	if s.stop.err == nil {
 		return Stop{}, false
