@@ -76,12 +76,14 @@
 // # Errors
 //
 // What runs in a loop returns one of five values, without allocation:
-// [ErrUnreachable], [ErrSingular], [ErrNoPole], [ErrNotFinite], [ErrInput]. What
+// [ErrUnreachable], [ErrSingular], [ErrNoPole], [ErrNotFinite], [ErrInput]. Package
+// planar wraps them to name the links that are stuck, and has causes of its own. What
 // builds something from dimensions returns a pointer to a [DimensionError] that
 // names the one to blame, or several joined; its cause, like that of texts and of laws
 // that can't be made, may say more than the value it stands for, so match it by
-// errors.Is. A number returned with a nil error is finite. Nothing panics but a nil receiver or destination. Methods that return no
-// error give NaN or an infinity where they are given one, or overflow.
+// errors.Is. A number returned with a nil error is finite. Nothing panics but a nil
+// receiver or destination. Methods that return no error give NaN or an infinity where
+// they are given one, or overflow.
 //
 // Structs may gain fields: write literals with keys.
 //

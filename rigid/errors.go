@@ -8,7 +8,8 @@ import (
 )
 
 // The causes for which the library refuses. Solvers, laws and poles return these
-// very values, which cost nothing, so == and errors.Is both serve.
+// very values, which cost nothing, so == and errors.Is both serve; those of package
+// planar may wrap them, for errors.Is.
 var (
 	// ErrUnreachable: no position of the links fits the given one.
 	ErrUnreachable = errors.New("twopoint: out of reach of the links")

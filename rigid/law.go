@@ -8,7 +8,8 @@ import "iter"
 // without allocation, as do the laws made from it.
 //
 // Out is to be continuous over the input, whole revolutions counted, as the library's
-// own laws are. The methods that search a law believe its derivatives.
+// own laws are. The methods that search a law believe its derivatives;
+// those of a nil Law give ErrInput.
 type Law func(in float64) (Coefficients, error)
 
 // LawOf makes a Law of any output of a mechanism: solve returns that output's
@@ -96,6 +97,9 @@ func (l Law) Sweep(over Interval, n int) iter.Seq2[Coefficients, error] {
 // at is the law as its searches read it: In is in whatever the law says, and a
 // number that is not finite is an error. With an error only In is given.
 func (l Law) at(in float64) (Coefficients, error) {
+	if l == nil {
+		l = noLaw
+	}
 	c, err := l(in)
 	switch {
 	case err != nil:

@@ -251,6 +251,7 @@ func TestExtremesErrors(t *testing.T) {
 		{"no value anywhere", part, rigid.Interval{Lo: 0, Hi: 1}, rigid.ErrUnreachable},
 		{"a value just beyond", part, rigid.Interval{Lo: 4, Hi: 4.9999}, rigid.ErrUnreachable},
 		{"a law of NaN", sick, turn, rigid.ErrNotFinite},
+		{"nil", nil, turn, rigid.ErrInput},
 		{"law of nil", rigid.LawOf(nil), turn, rigid.ErrInput},
 		{"no length", sineLaw, rigid.Interval{Lo: 1, Hi: 1}, nil},
 		{"next to none", sineLaw, rigid.Interval{Lo: 1, Hi: math.Nextafter(1, 2)}, nil},

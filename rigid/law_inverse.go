@@ -19,9 +19,10 @@ import (
 // where First of l grows without bound, the inverse is regular, its First near 0.
 //
 // Errors: ErrNotFinite for a stroke that is not finite; one that wraps ErrInput for a
-// stroke that has no length, over which the output does not move, or over which it
-// turns, as far as 1 024 steps show; l's own error where it has no value in the stroke. An end of the
-// stroke may be an end of l's range, even if l has no value exactly there.
+// stroke whose Lo is not below its Hi, whichever way the output goes, over which the
+// output does not move, or over which it turns, as far as 1 024 steps show; l's own
+// error where it has no value in the stroke. An end of the stroke may be an end of l's
+// range, even if l has no value exactly there.
 func (l Law) Inverse(stroke Interval) (Law, error) {
 	s, err := newStroke(l, stroke)
 	if err == nil {

@@ -42,6 +42,7 @@ func TestInverseErrors(t *testing.T) {
 		{"hole, not met", hole, half, rigid.Coordinate{}, rigid.ErrSingular, nil},
 		{"hole", hole, half, rigid.Coordinate{Pos: math.Sin(0.45)}, rigid.ErrSingular, rigid.ErrSingular},
 		{"law of nil", rigid.LawOf(nil), half, rigid.Coordinate{}, rigid.ErrInput, rigid.ErrInput},
+		{"nil", nil, half, rigid.Coordinate{}, rigid.ErrInput, rigid.ErrInput},
 		{"NaN Pos", sineLaw, half, rigid.Coordinate{Pos: nan}, nil, rigid.ErrNotFinite},
 		{"NaN Vel", sineLaw, half, rigid.Coordinate{Vel: nan}, nil, rigid.ErrNotFinite},
 		{"infinite Acc", sineLaw, half, rigid.Coordinate{Acc: inf}, nil, rigid.ErrNotFinite},
