@@ -77,7 +77,6 @@ func newLoop(ctx context.Context, c *config, b back, pl *plan, cycles int64) (*l
 // run ticks until the stop command and the run-down after it are over.
 func (l *loop) run() {
 	var before, after runtime.MemStats
-	runtime.GC()
 	runtime.ReadMemStats(&before)
 	for l.stopped.why == goOn || l.last < l.stopped.tick+l.rundown {
 		tick := l.clock.next()

@@ -26,6 +26,7 @@ import (
 	"math"
 	"os"
 	"os/signal"
+	"runtime"
 	"syscall"
 	"time"
 
@@ -143,8 +144,14 @@ func prepare(ctx context.Context, c *config, o options) (*rig, error) {
 	return r, nil
 }
 
+// settle is how long the runtime has, after the collection before the loop, to end work
+// of its own, whose allocations would count as the loop's.
+const settle = 10 * time.Millisecond
+
 // drive runs the loop, and returns by how much the ticker was late at worst.
 func (r *rig) drive(o options) time.Duration {
+	runtime.GC()
+	time.Sleep(settle)
 	if !o.real {
 		r.loop.run()
 		return 0
