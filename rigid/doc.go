@@ -57,7 +57,9 @@
 // [Coefficients] are the first and second derivative of an output of a mechanism by
 // its input. They depend on the position alone; [Coefficients.Output] puts in speed
 // and acceleration. A [Law] gives them for every position, and can be searched for
-// extremes, inverted and chained.
+// extremes, inverted and chained. [LawOf] makes one of any output, such as the x of
+// a gripper on a coupler; [Linear](1/i, 0).Then(law) puts a gear before it, of which
+// the motor makes i turns in one of the crank.
 //
 // # Dead centre and singular position
 //
