@@ -24,10 +24,11 @@ type Cognate struct {
 //	−ja·u2 + jc·u4 = −jd + jb·u3    pivots O6 and O4
 //
 // The first has its crank where the linkage has its, turning with the linkage's
-// coupler; its own coupler turns with the linkage's crank, so SolveCoupler with
-// lean Left for Open, Right for Crossed, follows the linkage in time. The second
-// has its crank at the third pivot, turning with the linkage's crank, on the other
-// Branch: Solve follows.
+// coupler; its own coupler turns with the linkage's crank, so SolveCoupler of the
+// linkage's Turn, with lean Left for Open, Right for Crossed, follows the linkage in
+// time. The second has its crank at the third pivot, turning with the linkage's crank,
+// on the other Branch: Solve of the linkage's Turn follows. The Mounts turn the axes in
+// which these angles are alike.
 //
 // Where Range has two intervals, the first's Branch is that for the first of them: the
 // other may need the other. Where the first's crank does not turn fully, one motion of it passes both
