@@ -23,7 +23,9 @@ const (
 // orthogonal over the times of the samples at hand, made by the recurrence of G. E.
 // Forsythe, Generation and use of orthogonal polynomials for data-fitting with a
 // digital computer, J. SIAM 5, 1957 (from memory), on times centred and scaled to
-// [−1, 1], so that neither a long uptime nor a short tick costs digits.
+// [−1, 1], so that neither a long uptime nor a short tick costs digits but those that
+// the times themselves have lost: after a day a float64 of s steps by 1.5e-11 s, at the
+// 1.8e9 s of a calendar by 2.4e-7 s. Count the times from the start of the program.
 type Rates struct {
 	degree int
 	time   []float64 // the last samples; the next goes to place next
