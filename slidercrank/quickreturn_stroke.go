@@ -198,21 +198,49 @@ func (q *QuickReturn) ends() (from, to rigid.Coefficients, err error) {
 // inside, where it has a peak, or at an end.
 func (q *QuickReturn) stroke(from, to rigid.Coefficients) (RamStroke, error) {
 	s := RamStroke{Turn: rigid.Interval{Lo: from.In, Hi: to.In}, From: from.Out, To: to.Out}
-	speed, acc, err := rigid.Law(q.Coefficients).Peaks(s.Turn)
-	if err != nil {
-		return RamStroke{}, err
-	}
-	for _, c := range speed {
-		if math.Abs(c.First) > math.Abs(s.Speed.First) {
-			s.Speed = c
+	accs := []rigid.Coefficients{from, to}
+	cuts := q.cuts(s.Turn)
+	for i, lo := range cuts[:len(cuts)-1] {
+		speeds, more, err := rigid.Law(q.Coefficients).Peaks(rigid.Interval{Lo: lo, Hi: cuts[i+1]})
+		if err != nil {
+			return RamStroke{}, err
 		}
+		for _, c := range speeds {
+			if math.Abs(c.First) > math.Abs(s.Speed.First) {
+				s.Speed = c
+			}
+		}
+		accs = append(accs, more...)
 	}
-	for _, c := range append(acc, from, to) {
+	for _, c := range accs {
 		if math.Abs(c.Second) > math.Abs(s.Acc.Second) {
 			s.Acc = c
 		}
 	}
 	return s, nil
+}
+
+// cuts returns the ends of a stroke, and between them where to cut it for Peaks to see
+// all of it. Where the pin passes the lever pivot closely the lever turns over within a
+// small part of the turn: off π the crank doubles
+//
+//	σ² = least + 4rc cos²(φ/2)  at about √(least/rc)
+//
+// and what the ram does that far off it does within as much.
+func (q *QuickReturn) cuts(stroke rigid.Interval) []float64 {
+	k := &q.form
+	at := []float64{stroke.Lo, stroke.Hi}
+	for off := 16 * math.Sqrt(k.least/(k.r*k.c)); off < 1; off *= 16 {
+		for _, nearest := range [...]float64{-math.Pi, math.Pi, 3 * math.Pi} {
+			for _, x := range [...]float64{nearest - off, nearest + off} {
+				if stroke.Lo < x && x < stroke.Hi {
+					at = append(at, x)
+				}
+			}
+		}
+	}
+	slices.Sort(at)
+	return at
 }
 
 // TimeRatio returns the crank's angle of the cutting stroke over that of the return,

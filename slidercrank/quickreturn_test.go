@@ -92,6 +92,50 @@ func TestQuickReturnStrokes(t *testing.T) {
 	}
 }
 
+// With crank and centre line nearly equal the ram is fastest, and sharpest, in a part of
+// the stroke that is far shorter than a step of it.
+func TestQuickReturnQuickLever(t *testing.T) {
+	rng, made := rand.New(rand.NewPCG(11, 42)), 0
+	for range rounds() / 3 {
+		d := slidercrank.QuickReturnDimensions{Crank: 0.2, Arm: 0.1 + 0.5*rng.Float64(), ArmAngle: 6 * rng.Float64(), Guide: across(0.1)}
+		gap := 0.2 * math.Pow(10, -6*rng.Float64()) * (1 - 2*float64(rng.IntN(2)))
+		if d.Centre = d.Crank + gap; d.Centre < 0.01 { // no lever
+			continue
+		}
+		d.Slot = 0.9 * gap * (2*rng.Float64() - 1)
+		if rng.IntN(2) == 0 {
+			d.Rod = 2 + rng.Float64()
+		}
+		q := newQuickReturn(t, d)
+		cutting, back, err := q.Strokes()
+		if err != nil {
+			continue // more than two dead centres
+		}
+		made++
+		for _, s := range []slidercrank.RamStroke{cutting, back} {
+			var speed, acc float64
+			for _, nearest := range []float64{-math.Pi, math.Pi, 3 * math.Pi} {
+				for off := 1e-8; off < 3; off *= 1.01 {
+					for _, x := range []float64{nearest - off, nearest + off} {
+						if c, err := q.Coefficients(x); err == nil && s.Turn.Contains(x) {
+							speed, acc = max(speed, math.Abs(c.First)), max(acc, math.Abs(c.Second))
+						}
+					}
+				}
+			}
+			if got := math.Abs(s.Speed.First); !(got > (1-1e-6)*speed) || !s.Turn.Contains(s.Speed.In) {
+				t.Errorf("%+v: peak speed %v at %v, a sweep has %v", d, got, s.Speed.In, speed)
+			}
+			if got := math.Abs(s.Acc.Second); !(got > (1-1e-6)*acc) {
+				t.Errorf("%+v: peak acceleration %v at %v, a sweep has %v", d, got, s.Acc.In, acc)
+			}
+		}
+	}
+	if made < rounds()/10 {
+		t.Errorf("only %d drives", made)
+	}
+}
+
 // With crank and centre line nearly equal the lever turns over within a small part of
 // the crank's turn, so that a rounding of the turn shows in the rod's reach.
 func TestQuickReturnRangeIsReached(t *testing.T) {
