@@ -52,7 +52,7 @@ func each(t *testing.T, seed uint64, f func(t *testing.T, make maker, m machine,
 // numbers lists the places of a sample, or with order 1 or 2 their rates or
 // accelerations: x, y and angle of each link, then the Coordinates.
 func numbers(s sample, order int) []float64 {
-	var out []float64
+	out := make([]float64, 0, 3*len(s.links)+len(s.coords))
 	for i := range s.links {
 		m := &s.links[i]
 		switch order {
