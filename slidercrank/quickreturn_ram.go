@@ -26,7 +26,7 @@ func (q *QuickReturn) push(r *ramMotion, m *slotMotion) error {
 	q.carry(r, m)
 	r.margin = m.margin
 	if q.byArm.L == 0 {
-		r.travel = rigid.Coordinate{Pos: q.foot.X + r.arm.X, Vel: r.vel.X, Acc: r.acc.X}
+		r.travel = rigid.Coordinate{Pos: q.foot.X + r.arm.X, Vel: 0 + r.vel.X, Acc: 0 + r.acc.X} // no −0 at rest
 		return r.finite()
 	}
 	var ok bool
@@ -51,10 +51,8 @@ func (q *QuickReturn) push(r *ramMotion, m *slotMotion) error {
 
 // carry sets the motion of the output pin, which the lever carries.
 func (q *QuickReturn) carry(r *ramMotion, m *slotMotion) {
-	a, w, al := r2.Scale(q.arm, turned(q.toPin, m.line)), m.swing.Vel, m.swing.Acc
-	r.arm = a
-	r.vel = r2.Vec{X: -w * a.Y, Y: w * a.X}
-	r.acc = r2.Vec{X: -al*a.Y - w*w*a.X, Y: al*a.X - w*w*a.Y}
+	r.arm = r2.Scale(q.arm, turned(q.toPin, m.line))
+	r.vel, r.acc = swung(r.arm, m.swing.Vel, m.swing.Acc)
 }
 
 // reach places the rod for the arm a, square to the guide where it is too short by
@@ -93,9 +91,9 @@ func (q *QuickReturn) write(dst *QuickReturnState, m *slotMotion, r *ramMotion) 
 	if q.byArm.L != 0 {
 		axis = q.byArm.Axis(r.rod, u)
 	}
-	set(&dst.Rod, r2.Add(q.form.pivot, pin), turned(u, r.vel), turned(u, r.acc), axis, r.omega, r.alpha)
-	t := &r.travel
-	set(&dst.Ram, r2.Add(q.zero, r2.Scale(t.Pos, u)), r2.Scale(t.Vel, u), r2.Scale(t.Acc, u), u, 0, 0)
+	setPinned(&dst.Rod, q.form.pivot, pin, m.swing.Vel, m.swing.Acc, axis, r.omega, r.alpha)
+	setGuided(&dst.Ram, q.zero, u, r2.Vec{}, &r.travel)
+	unsign(&dst.Rod, &dst.Ram)
 	dst.Travel = r.travel
 	dst.Elbow = rigid.Left
 	if q.elbow(r) < 0 {

@@ -165,8 +165,9 @@ func (s *SliderRod) write(dst *RodState, axis r2.Vec, turn, a, b rigid.Coordinat
 	if (a.Vel+a.Acc+b.Vel+b.Acc+turn.Vel+turn.Acc+w2+s.l*(math.Abs(turn.Acc)+w2))*0 != 0 {
 		return rigid.ErrNotFinite
 	}
-	s.slider(&dst.A, s.mount.Axis, &a)
-	s.slider(&dst.B, s.guideB, &b)
+	setGuided(&dst.A, s.mount.Origin, s.mount.Axis, r2.Vec{}, &a)
+	setGuided(&dst.B, s.mount.Origin, s.guideB, r2.Vec{}, &b)
+	unsign(&dst.A, &dst.B)
 	set(&dst.Rod, dst.A.Pose.Origin, dst.A.Vel, dst.A.Acc, turned(s.mount.Axis, axis), turn.Vel, turn.Acc)
 	dst.Turn, dst.SlideA, dst.SlideB, dst.Margin = turn, a, b, margin
 	dst.KneeA, dst.KneeB = rigid.Right, rigid.Right
@@ -177,11 +178,6 @@ func (s *SliderRod) write(dst *RodState, axis r2.Vec, turn, a, b rigid.Coordinat
 		dst.KneeB = rigid.Left
 	}
 	return nil
-}
-
-// slider writes the motion of a slider on the guide along u.
-func (s *SliderRod) slider(m *rigid.Motion, u r2.Vec, at *rigid.Coordinate) {
-	set(m, r2.Add(s.mount.Origin, r2.Scale(at.Pos, u)), r2.Scale(at.Vel, u), r2.Scale(at.Acc, u), u, 0, 0)
 }
 
 // Coefficients returns SlideB and its derivatives by the rod's angle, turn in rad:

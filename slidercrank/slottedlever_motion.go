@@ -23,11 +23,10 @@ func (m *slotMotion) finite(r float64) error {
 // with the line, adding Mount's origin last.
 func (k *slotForm) write(crank, block, line *rigid.Motion, m *slotMotion) {
 	w, al := m.turn.Vel, m.turn.Acc
-	x, y, w2 := k.r*m.crank.X, k.r*m.crank.Y, w*w
 	o := k.mount.Origin
 	set(crank, o, r2.Vec{}, r2.Vec{}, m.crank, w, al)
-	set(block, r2.Vec{X: o.X + x, Y: o.Y + y}, r2.Vec{X: -w * y, Y: w * x}, r2.Vec{X: -al*y - w2*x, Y: al*x - w2*y},
-		m.line, m.swing.Vel, m.swing.Acc)
+	setPinned(block, o, r2.Scale(k.r, m.crank), w, al, m.line, m.swing.Vel, m.swing.Acc)
+	unsign(block)
 	set(line, k.pivot, r2.Vec{}, r2.Vec{}, m.line, m.swing.Vel, m.swing.Acc)
 }
 

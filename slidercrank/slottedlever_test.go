@@ -249,18 +249,24 @@ func TestSlottedLeverNearlyChanging(t *testing.T) {
 	}
 }
 
-// A crank at rest has links at rest, whose rates print as 0 and not as −0.
-func TestSlottedLeverAtRest(t *testing.T) {
-	l := newLever(t, slidercrank.LeverDimensions{Crank: 0.2, Centre: 0.25, Slot: 0.01})
-	var st slidercrank.LeverState
-	for _, turn := range []float64{-3, -1, 1, 3} {
-		if err := l.Solve(&st, rigid.Coordinate{Pos: turn}); err != nil {
-			t.Fatal(err)
-		}
-		for _, rate := range []float64{st.Swing.Vel, st.Swing.Acc, st.Slide.Vel, st.Slide.Acc, st.Lever.Omega, st.Lever.Alpha} {
-			if rate != 0 || math.Signbit(rate) {
-				t.Errorf("turn %v: a rate of %v", turn, rate)
+// A drive at rest leaves links at rest, whose rates print as 0 and not as −0, on the way
+// back as well.
+func TestInversionsAtRest(t *testing.T) {
+	each(t, 22, func(t *testing.T, make maker, _ machine, turn rigid.Coordinate) {
+		for _, mount := range []rigid.Placement{{}, {Angle: 2.5}} {
+			m := make(t, 1, false, mount)
+			rest, err1 := m.solve(rigid.Coordinate{Pos: turn.Pos})
+			back, err2 := m.back(rigid.Coordinate{Pos: turn.Pos})
+			if err1 != nil || err2 != nil {
+				t.Fatal(err1, err2)
+			}
+			for _, s := range append(back, rest) {
+				for k, rate := range append(numbers(s, 1), numbers(s, 2)...) {
+					if rate != 0 || math.Signbit(rate) {
+						t.Errorf("mounted %+v: rate %d is %v", mount, k, rate)
+					}
+				}
 			}
 		}
-	}
+	})
 }

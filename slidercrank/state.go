@@ -40,6 +40,7 @@ func (l *Linkage) links(dst *State, crank, rod r2.Vec, w, al, omega, alpha float
 	set(&dst.Crank, l.origin, r2.Vec{}, r2.Vec{}, u, w, al)
 	setPinned(&dst.Rod, l.origin, r2.Scale(l.crank, u), w, al, turned(l.rodAxis, rod), omega, alpha)
 	setGuided(&dst.Slider, l.origin, l.axis, l.offset, &dst.Slide)
+	unsign(&dst.Rod, &dst.Slider)
 }
 
 // setPinned writes the motion of a link along axis whose origin is pinned to the
@@ -47,9 +48,15 @@ func (l *Linkage) links(dst *State, crank, rod r2.Vec, w, al, omega, alpha float
 func setPinned(m *rigid.Motion, o, a r2.Vec, w, al float64, axis r2.Vec, omega, alpha float64) {
 	m.Pose.Origin.X, m.Pose.Origin.Y = o.X+a.X, o.Y+a.Y
 	m.Pose.Axis = axis
-	m.Vel.X, m.Vel.Y = -w*a.Y, w*a.X
-	m.Acc.X, m.Acc.Y = -al*a.Y-w*w*a.X, al*a.X-w*w*a.Y
+	m.Vel, m.Acc = swung(a, w, al)
 	m.Omega, m.Alpha = omega, alpha
+}
+
+// swung returns the velocity and the acceleration of the end a of a link that turns
+// about its other end.
+func swung(a r2.Vec, w, al float64) (vel, acc r2.Vec) {
+	w2 := w * w
+	return r2.Vec{X: -w * a.Y, Y: w * a.X}, r2.Vec{X: -al*a.Y - w2*a.X, Y: al*a.X - w2*a.Y}
 }
 
 // setGuided writes the motion of a slider on a guide along u, which passes o at
@@ -60,4 +67,12 @@ func setGuided(m *rigid.Motion, o, u, offset r2.Vec, s *rigid.Coordinate) {
 	m.Vel.X, m.Vel.Y = s.Vel*u.X, s.Vel*u.Y
 	m.Acc.X, m.Acc.Y = s.Acc*u.X, s.Acc*u.Y
 	m.Omega, m.Alpha = 0, 0
+}
+
+// unsign makes 0 of −0 in the rates of links, which links at rest would have from the
+// products with their rates.
+func unsign(links ...*rigid.Motion) {
+	for _, m := range links {
+		m.Vel, m.Acc = r2.Add(m.Vel, r2.Vec{}), r2.Add(m.Acc, r2.Vec{})
+	}
 }

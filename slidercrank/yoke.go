@@ -94,7 +94,7 @@ func (y *ScotchYoke) Solve(dst *YokeState, turn rigid.Coordinate) error {
 // harmonic returns the motion of a·cos φ + b·sin φ.
 func harmonic(a, b, sin, cos, w, al float64) rigid.Coordinate {
 	x, first := a*cos+b*sin, b*cos-a*sin
-	return rigid.Coordinate{Pos: x, Vel: first * w, Acc: first*al - x*w*w}
+	return rigid.Coordinate{Pos: x, Vel: 0 + first*w, Acc: 0 + first*al - x*w*w} // no −0 at rest
 }
 
 // SolveSlide writes into dst the motion of all links for a motion of the yoke,
@@ -150,10 +150,10 @@ func (y *ScotchYoke) write(dst *YokeState, axis r2.Vec, turn, slide, run rigid.C
 	}
 	o, u := y.mount.Origin, y.mount.Axis
 	crank := turned(u, axis)
-	p := r2.Scale(y.r, crank)
 	set(&dst.Crank, o, r2.Vec{}, r2.Vec{}, crank, w, al)
-	set(&dst.Block, r2.Add(o, p), r2.Vec{X: -w * p.Y, Y: w * p.X}, r2.Vec{X: -al*p.Y - w2*p.X, Y: al*p.X - w2*p.Y}, u, 0, 0)
-	set(&dst.Yoke, r2.Add(o, r2.Scale(slide.Pos, u)), r2.Scale(slide.Vel, u), r2.Scale(slide.Acc, u), u, 0, 0)
+	setPinned(&dst.Block, o, r2.Scale(y.r, crank), w, al, u, 0, 0)
+	setGuided(&dst.Yoke, o, u, r2.Vec{}, &slide)
+	unsign(&dst.Block, &dst.Yoke)
 	dst.Turn, dst.Slide, dst.Run, dst.Margin = turn, slide, run, margin
 	dst.Knee = rigid.Right
 	if axis.Y*y.cos-axis.X*y.sin < 0 {
