@@ -62,14 +62,18 @@ func TestOscillatingCylinderRefuses(t *testing.T) {
 	c := newCylinder(t, slidercrank.CylinderDimensions{Crank: 0.3, Centre: 0.5})
 	rocking := newCylinder(t, slidercrank.CylinderDimensions{Crank: 0.3, Centre: 0.5, Offset: 0.4})
 	large := newCylinder(t, slidercrank.CylinderDimensions{Crank: 1, Centre: 1e32})
+	wide := newCylinder(t, slidercrank.CylinderDimensions{Crank: 1e10, Centre: 3e10})
+	near, nearLarge := newCylinder(t, slidercrank.CylinderDimensions{Crank: 1, Centre: 1 + 1e-6}), newCylinder(t, slidercrank.CylinderDimensions{Crank: 1e5, Centre: 1e5 + 10})
 	zero := new(slidercrank.OscillatingCylinder)
 	slide := func(c *slidercrank.OscillatingCylinder, pos, vel, acc float64, knee rigid.Side) func(*slidercrank.CylinderState) error {
 		return func(st *slidercrank.CylinderState) error {
 			return c.SolveSlide(st, rigid.Coordinate{Pos: pos, Vel: vel, Acc: acc}, knee)
 		}
 	}
-	turn := func(c *slidercrank.OscillatingCylinder, pos, vel float64) func(*slidercrank.CylinderState) error {
-		return func(st *slidercrank.CylinderState) error { return c.Solve(st, rigid.Coordinate{Pos: pos, Vel: vel}) }
+	turn := func(c *slidercrank.OscillatingCylinder, pos, vel, acc float64) func(*slidercrank.CylinderState) error {
+		return func(st *slidercrank.CylinderState) error {
+			return c.Solve(st, rigid.Coordinate{Pos: pos, Vel: vel, Acc: acc})
+		}
 	}
 	for _, row := range []struct {
 		name string
@@ -92,9 +96,12 @@ func TestOscillatingCylinderRefuses(t *testing.T) {
 		{"driven at length 0", slide(rocking, 0, 1, 0, rigid.Right), rigid.ErrSingular},
 		{"unknown knee", slide(c, 0.5, 0, 0, -1), rigid.ErrInput},
 		{"zero cylinder", slide(zero, 0.5, 0, 0, 0), rigid.ErrInput},
-		{"turn not a number", turn(c, math.NaN(), 0), rigid.ErrNotFinite},
-		{"beyond the range", turn(rocking, rocking.Range()[0].Hi+1e-9, 0), rigid.ErrUnreachable},
-		{"turn of a zero cylinder", turn(zero, 1, 0), rigid.ErrInput},
+		{"turn not a number", turn(c, math.NaN(), 0, 0), rigid.ErrNotFinite},
+		{"beyond the range", turn(rocking, rocking.Range()[0].Hi+1e-9, 0, 0), rigid.ErrUnreachable},
+		{"turn of a zero cylinder", turn(zero, 1, 0, 0), rigid.ErrInput},
+		{"the cylinder's acceleration would overflow", turn(near, math.Pi-1e-6, 1e150, 0), rigid.ErrNotFinite},
+		{"that of its length would", turn(nearLarge, math.Pi, 1e151, 0), rigid.ErrNotFinite},
+		{"that of the pin would", turn(wide, 0, 0, 1e300), rigid.ErrNotFinite},
 	} {
 		st := outcome(t, row.name, slidercrank.CylinderState{Margin: 7}, row.run, row.want)
 		if row.want == nil && (st.Turn.Pos*0+st.Swing.Pos*0+st.Crank.Pose.Axis.X*0+st.Cylinder.Pose.Axis.X*0 != 0) {

@@ -152,6 +152,8 @@ func TestSlottedLeverRefuses(t *testing.T) {
 	turning := newLever(t, slidercrank.LeverDimensions{Crank: 0.25, Centre: 0.1})
 	rocking := newLever(t, slidercrank.LeverDimensions{Crank: 0.1, Centre: 0.25, Slot: 0.2})
 	narrow := newLever(t, slidercrank.LeverDimensions{Crank: 0.1, Centre: 0.1 * (1 + 1e-10)})
+	near, nearLarge := newLever(t, slidercrank.LeverDimensions{Crank: 1, Centre: 1 + 1e-6}), newLever(t, slidercrank.LeverDimensions{Crank: 1e5, Centre: 1e5 + 10})
+	large := newLever(t, slidercrank.LeverDimensions{Crank: 1e10, Centre: 3e10})
 	end, top := rocking.Range()[0].Hi, math.Asin(0.4)
 	nan, inf := math.NaN(), math.Inf(1)
 	turn := func(l *slidercrank.SlottedLever, pos, vel, acc float64) func(*slidercrank.LeverState) error {
@@ -173,6 +175,9 @@ func TestSlottedLeverRefuses(t *testing.T) {
 		{"speed infinite", turn(swinging, 1, inf, 1), rigid.ErrNotFinite},
 		{"acceleration not a number", turn(swinging, 1, 1, nan), rigid.ErrNotFinite},
 		{"acceleration would overflow", turn(swinging, 1, 1e200, 0), rigid.ErrNotFinite},
+		{"that of the lever alone", turn(near, math.Pi-1e-6, 1e150, 0), rigid.ErrNotFinite},
+		{"that of the block in its slot alone", turn(nearLarge, math.Pi, 1e151, 0), rigid.ErrNotFinite},
+		{"that of the pin alone", turn(large, 0, 0, 1e300), rigid.ErrNotFinite},
 		{"beyond the range", turn(rocking, end+1e-9, 0, 0), rigid.ErrUnreachable},
 		{"rates at the end of the range", turn(rocking, end, 1, 0), rigid.ErrSingular},
 		{"acceleration at the end of the range", turn(rocking, -end, 0, 1), rigid.ErrSingular},
