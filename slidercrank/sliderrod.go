@@ -103,59 +103,39 @@ func (s *SliderRod) slideB(sin, cos float64, turn rigid.Coordinate) rigid.Coordi
 // rigid.LeastMargin; ErrNotFinite; ErrInput for a zero SliderRod or an unknown
 // knee. An error leaves dst as it was.
 func (s *SliderRod) SolveA(dst *RodState, slide rigid.Coordinate, knee rigid.Side) error {
-	// from A, B lies at sin γ·SlideA left of its guide's direction and at xi along it
-	axis, turn, margin, err := s.lean(slide, knee, r2.Vec{X: s.cos, Y: s.sin}, 1)
+	axis, turn, other, margin, err := s.lean(slide, knee, r2.Vec{X: s.cos, Y: s.sin}, 1)
 	if err != nil {
 		return err
 	}
-	return s.write(dst, axis, turn, slide, s.slideB(axis.Y, axis.X, turn), margin)
+	return s.write(dst, axis, turn, slide, other, margin)
 }
 
 // SolveB is SolveA with A and B exchanged: knee picks the place of A on its guide,
 // Left where SlideA is less than at the foot of the perpendicular from B.
 func (s *SliderRod) SolveB(dst *RodState, slide rigid.Coordinate, knee rigid.Side) error {
-	axis, turn, margin, err := s.lean(slide, knee, r2.Vec{X: 1}, -1)
+	axis, turn, other, margin, err := s.lean(slide, knee, r2.Vec{X: 1}, -1)
 	if err != nil {
 		return err
 	}
-	return s.write(dst, axis, turn, s.slideA(axis.Y, axis.X, turn), slide, margin)
+	return s.write(dst, axis, turn, other, slide, margin)
 }
 
 // lean solves the rod for a motion of one end, with the other on the guide along u.
-// Seen along u the driven end is at ∓s sin γ to the left of the guide, so that the
-// vector to the other end is (ξ, η), η = ±s sin γ, ξ² = L² − η²; sign is +1 where
-// the driven end is A, from which the rod's axis points, and −1 where it is B,
+// Seen along u the driven end is at ∓s sin γ to the left of that guide and the foot of
+// its perpendicular at s cos γ, so that the vector to the other end is (ξ, η), with
+// η = ±s sin γ, and that end at s cos γ + ξ; sign is +1 where the driven end is A, from
+// which the rod's axis points, and −1 where it is B,
 //
-//	axis·L = sign·(ξ + iη)·u,  η' = ξ·θ',  η'' = ξ·θ'' − η·θ'²
-func (s *SliderRod) lean(slide rigid.Coordinate, knee rigid.Side, u r2.Vec, sign float64) (axis r2.Vec, turn rigid.Coordinate, margin float64, err error) {
-	v, a := slide.Vel, slide.Acc
-	if slide.Pos*0+v*0+a*0 != 0 {
-		return axis, turn, 0, rigid.ErrNotFinite
-	}
-	if s.l == 0 || knee != rigid.Left && knee != rigid.Right {
-		return axis, turn, 0, rigid.ErrInput
-	}
+//	axis·L = sign·(ξ + iη)·u
+func (s *SliderRod) lean(slide rigid.Coordinate, knee rigid.Side, u r2.Vec, sign float64) (axis r2.Vec, turn, other rigid.Coordinate, margin float64, err error) {
 	k := sign * s.sin
-	eta := k * slide.Pos
-	xi, ok := leg(s.l, eta, s.l)
-	xi = settle(xi, s.l, s.l)
-	if !ok {
-		return axis, turn, 0, rigid.ErrUnreachable
+	xi, turn, err := legs(s.l, k, slide, knee)
+	if err != nil {
+		return axis, turn, other, 0, err
 	}
-	if knee == rigid.Left {
-		xi = -xi
-	}
-	margin = math.Abs(xi) / s.l
-	axis = turned(u, r2.Vec{X: sign * xi / s.l, Y: sign * eta / s.l})
+	axis = turned(u, r2.Vec{X: sign * xi.Pos / s.l, Y: sign * k * slide.Pos / s.l})
 	turn.Pos = rigid.Wrap(math.Atan2(axis.Y, axis.X))
-	if v != 0 || a != 0 {
-		if margin < rigid.LeastMargin {
-			return axis, turn, 0, rigid.ErrSingular
-		}
-		turn.Vel = k * v / xi
-		turn.Acc = (k*a + eta*turn.Vel*turn.Vel) / xi
-	}
-	return axis, turn, margin, nil
+	return axis, turn, past(s.cos, slide, xi), math.Abs(xi.Pos) / s.l, nil
 }
 
 // write writes the state, or leaves it and returns ErrNotFinite where a rate

@@ -109,36 +109,14 @@ func harmonic(a, b, sin, cos, w, al float64) rigid.Coordinate {
 // where Margin is below rigid.LeastMargin; ErrNotFinite; ErrInput for a zero
 // ScotchYoke or an unknown knee. An error leaves dst as it was.
 func (y *ScotchYoke) SolveSlide(dst *YokeState, slide rigid.Coordinate, knee rigid.Side) error {
-	v, a := slide.Vel, slide.Acc
-	if slide.Pos*0+v*0+a*0 != 0 {
-		return rigid.ErrNotFinite
+	xi, back, err := legs(y.r, y.cos, slide, knee)
+	if err != nil {
+		return err
 	}
-	if y.r == 0 || knee != rigid.Left && knee != rigid.Right {
-		return rigid.ErrInput
-	}
-	h := slide.Pos * y.cos // of the slot from the crank pivot
-	xi, ok := leg(y.r, h, y.r)
-	xi = settle(xi, y.r, y.r)
-	if !ok {
-		return rigid.ErrUnreachable
-	}
-	if knee == rigid.Left {
-		xi = -xi
-	}
-	pin := turned(r2.Vec{X: y.cos, Y: y.sin}, r2.Vec{X: h, Y: xi})
-	turn := rigid.Coordinate{Pos: rigid.Wrap(math.Atan2(pin.Y, pin.X))}
-	margin := math.Abs(xi) / y.r
-	if v != 0 || a != 0 {
-		if margin < rigid.LeastMargin {
-			return rigid.ErrSingular
-		}
-		// h = r cos(φ − τ), ξ = r sin(φ − τ):  v cos τ = −ξω,  a cos τ = −ξα − hω²
-		turn.Vel = -v * y.cos / xi
-		turn.Acc = -(a*y.cos + h*turn.Vel*turn.Vel) / xi
-	}
-	axis := r2.Vec{X: pin.X / y.r, Y: pin.Y / y.r}
-	run := harmonic(0, y.r/y.cos, axis.Y, axis.X, turn.Vel, turn.Acc)
-	return y.write(dst, axis, turn, slide, run, margin)
+	// in the axes of the slot's normal the pin is at h = slide·cos τ = r cos(φ − τ), ξ = r sin(φ − τ)
+	axis := turned(r2.Vec{X: y.cos, Y: y.sin}, r2.Vec{X: slide.Pos * y.cos / y.r, Y: xi.Pos / y.r})
+	turn := rigid.Coordinate{Pos: rigid.Wrap(math.Atan2(axis.Y, axis.X)), Vel: 0 - back.Vel, Acc: 0 - back.Acc}
+	return y.write(dst, axis, turn, slide, past(y.sin, slide, xi), math.Abs(xi.Pos)/y.r)
 }
 
 // write writes the state, or leaves it and returns ErrNotFinite where a rate

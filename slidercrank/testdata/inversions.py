@@ -228,7 +228,7 @@ def by_length(n):
 
 def tilts(n):
     for _ in range(n):
-        yield rng.choice([0.0, rng.uniform(-1.5, 1.5), small()])
+        yield rng.choice([0.0, rng.uniform(-1.5, 1.5), small(), float(pi) / 2 - abs(small()), -float(pi) / 2 - 10 ** rng.uniform(-8, -1)])
 
 
 def yokes(n):
@@ -247,7 +247,7 @@ def yokes_back(n):
 
 def angles(n):
     for _ in range(n):
-        yield rng.choice([float(pi) / 2, rng.uniform(0.05, 3.1), -rng.uniform(0.05, 3.1), rng.uniform(-9, -7)])
+        yield rng.choice([float(pi) / 2, rng.uniform(0.05, 3.1), -rng.uniform(0.05, 3.1), rng.uniform(-9, -7), small(), float(pi) - 10 ** rng.uniform(-8, -1)])
 
 
 def rods(n):
