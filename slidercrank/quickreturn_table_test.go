@@ -26,7 +26,7 @@ func quickReturn(t *testing.T, r row) *slidercrank.QuickReturn {
 
 func TestQuickReturnTable(t *testing.T) {
 	var st slidercrank.QuickReturnState
-	compare(t, "ram", 9, 6, func(r row) ([]rigid.Coordinate, error) {
+	compare(t, "ram", 9, 4, func(r row) ([]rigid.Coordinate, error) {
 		err := quickReturn(t, r).Solve(&st, r.drive)
 		return []rigid.Coordinate{st.Swing, st.Travel}, err
 	})

@@ -29,8 +29,8 @@ type slotForm struct {
 	most       float64 // (r + c)² − e²
 	minus      float64 // −rc
 	perCrank   float64 // 1/r
-	r2         float64 // r²
-	rc4        float64 // 4rc
+	near       float64 // r(r − c)
+	rc2, rc4   float64 // 2rc, 4rc
 	difference float64 // (r − c)(r + c)
 	slack      float64 // of σ², for positions that are a rounding beyond the limit
 	floor      float64 // of σ², below which it is the rounding of a crank at its limit
@@ -62,7 +62,7 @@ func newSlotForm(r, c, e float64, mount rigid.Placement) slotForm {
 		across: across, twice: 2 * short, size: size,
 		gap: gap, gap2: gap * gap, least: least, most: (past + short) * (long + short + d), floor: floor,
 		clear: max(floor, 4*rigid.LeastMargin*rigid.LeastMargin*r*r),
-		minus: -r * c, perCrank: 1 / r, r2: r * r, rc4: 4 * r * c, difference: (r - c) * (r + c),
+		minus: -r * c, perCrank: 1 / r, near: r * (r - c), rc2: 2 * r * c, rc4: 4 * r * c, difference: (r - c) * (r + c),
 		slack: 2 * beyond * size * d,
 		mount: mount.Pose(),
 		pivot: mount.Pose().Point(r2.Vec{X: -c}),
@@ -95,12 +95,13 @@ func (k *slotForm) along(s, half, sin, i float64) r2.Vec {
 // has them and j = 1/σ². From (d log d)/dφ = ir·exp(iφ)/d, the imaginary part of
 // whose derivative is rc(r² − c²)sin φ/D⁴, and ψ = arg d − asin(e/D),
 //
-//	ψ'  = [r(r + c cos φ) − (e/σ)·rc sin φ]/D²
+//	ψ'  = [r(r − c) + 2rc cos²(φ/2) − (e/σ)·rc sin φ]/D²
 //	ψ'' = rc{(r² − c²)sin φ/D⁴ − (e/σ)[((r − c)²cos φ + 4rc cos²(φ/2))/D⁴ + rc sin²φ/(D²σ²)]}
 func (k *slotForm) swing(s, half, sin, cos, i, j float64) (first, second float64) {
 	q, e := k.minus*sin, k.e*(s*j)
-	first = (k.r2 - k.minus*cos + e*q) * i
-	return first, k.minus * i * ((e*(k.gap2*cos+k.rc4*half)-k.difference*sin)*i - e*q*sin*j)
+	along := k.rc2 * half
+	first = (k.near + along + e*q) * i
+	return first, k.minus * i * ((e*(k.gap2*cos+(along+along))-k.difference*sin)*i - e*q*sin*j)
 }
 
 // slide returns the derivatives of σ, as swing does those of ψ:

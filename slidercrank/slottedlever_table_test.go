@@ -125,7 +125,7 @@ func lever(t *testing.T, r row) *slidercrank.SlottedLever {
 
 func TestSlottedLeverTable(t *testing.T) {
 	var st slidercrank.LeverState
-	compare(t, "turn", 3, 6, func(r row) ([]rigid.Coordinate, error) {
+	compare(t, "turn", 3, 4, func(r row) ([]rigid.Coordinate, error) {
 		err := lever(t, r).Solve(&st, r.drive)
 		return []rigid.Coordinate{st.Swing, st.Slide}, err
 	})
@@ -133,7 +133,7 @@ func TestSlottedLeverTable(t *testing.T) {
 
 func TestSlottedLeverSwingTable(t *testing.T) {
 	var st slidercrank.LeverState
-	compare(t, "swing", 3, 6, func(r row) ([]rigid.Coordinate, error) {
+	compare(t, "swing", 3, 4, func(r row) ([]rigid.Coordinate, error) {
 		err := lever(t, r).SolveSwing(&st, r.drive, r.side())
 		return []rigid.Coordinate{st.Turn, st.Slide}, err
 	})

@@ -265,6 +265,11 @@ def rods_back(n, end):
 
 
 def rams(n):
+    # a lever that turns over quickly with its arm along the travel: the ram shows what rounding leaves of its rate
+    yield (
+        (0.687347704080498, 0.6809082395686941, -0.0064392112616967374, 4.591641097259644, float(pi), 12.122486764433457,
+         -0.6809082395686941, 0.35215198038475864, float(pi) / 2),
+        [-3.1190468831246485, -3.3364586085901933, 25.259956781020698], 1)
     while n:
         r, c, e = chain_dims()
         turn = chain_turn(r, c, e)
