@@ -127,3 +127,36 @@ func TestQuickReturnLimits(t *testing.T) {
 		t.Errorf("only %d ends and %d dead centres", ends, centres)
 	}
 }
+
+// The way back gives the swing that Solve has for the turn it finds, of a turning lever
+// too, and the sides that were asked for, also where there is no telling them.
+func TestQuickReturnBackIsSolve(t *testing.T) {
+	for _, d := range []slidercrank.QuickReturnDimensions{
+		{Crank: 0.15, Centre: 0.1, Arm: 0.15, ArmAngle: 2, Rod: 0.6, Guide: across(-0.1)},
+		{Crank: 0.12, Centre: 0.3, Arm: 0.5, Rod: 0.2, Guide: across(0.15)},
+	} {
+		q := newQuickReturn(t, d)
+		var st, again, want slidercrank.QuickReturnState
+		for turn := -9.0; turn < 9; turn += 0.1 {
+			if err := q.Solve(&st, rigid.Coordinate{Pos: turn}); err != nil {
+				t.Fatal(err)
+			}
+			if err := q.SolveTravel(&again, rigid.Coordinate{Pos: st.Travel.Pos}, st.Elbow, st.Knee); err != nil {
+				t.Fatal(err)
+			}
+			if err := q.Solve(&want, rigid.Coordinate{Pos: again.Turn.Pos}); err != nil || math.Abs(again.Swing.Pos-want.Swing.Pos) > 1e-12 {
+				t.Errorf("%+v at %v: the way back has the turn %v with the swing %v, Solve has %v; %v", d, turn, again.Turn.Pos, again.Swing.Pos, want.Swing.Pos, err)
+			}
+		}
+		for _, c := range q.DeadCentres() {
+			if err := q.Solve(&st, rigid.Coordinate{Pos: c.In}); err != nil {
+				t.Fatal(err)
+			}
+			for _, knee := range []rigid.Side{rigid.Left, rigid.Right} {
+				if err := q.SolveTravel(&again, rigid.Coordinate{Pos: c.Out}, st.Elbow, knee); err == nil && (again.Knee != knee || again.Elbow != st.Elbow) {
+					t.Errorf("%+v at the dead centre %v by the knee %v: %v and %v", d, c, knee, again.Knee, again.Elbow)
+				}
+			}
+		}
+	}
+}

@@ -195,6 +195,7 @@ func TestQuickReturnRefuses(t *testing.T) {
 	short := ok
 	short.Rod = 0.02
 	part := newQuickReturn(t, short)
+	long := newQuickReturn(t, slidercrank.QuickReturnDimensions{Crank: 1, Centre: 3, Arm: 1e10})
 	over := part.Range()
 	if len(over) != 2 {
 		t.Errorf("a rod that only reaches now and then: %v", over)
@@ -217,6 +218,9 @@ func TestQuickReturnRefuses(t *testing.T) {
 	}{
 		{"turn not a number", turn(q, math.NaN(), 0), rigid.ErrNotFinite},
 		{"speed would overflow", turn(q, 1, 1e160), rigid.ErrNotFinite},
+		{"acceleration of the output pin would overflow", func(st *slidercrank.QuickReturnState) error {
+			return long.Solve(st, rigid.Coordinate{Acc: 1e300})
+		}, rigid.ErrNotFinite},
 		{"rod does not reach", turn(part, (over[0].Hi+over[1].Lo)/2, 0), rigid.ErrUnreachable},
 		{"rates where the rod is square to the guide", turn(part, over[1].Lo, 1), rigid.ErrSingular},
 		{"zero drive", turn(zero, 0, 1), rigid.ErrInput},

@@ -234,3 +234,23 @@ func TestReturnedPositionsAreSingular(t *testing.T) {
 		}
 	}
 }
+
+// TestPressOverflows: of what is answered, the rod's and the slider's accelerations and
+// the crank pin's are each seen to overflow, where the others do not.
+func TestPressOverflows(t *testing.T) {
+	near := func(size float64) slidercrank.Dimensions { // next to where the rod is square to the guide
+		return slidercrank.Dimensions{Crank: size * (1 - 1e-10), Rod: size}
+	}
+	for _, row := range []struct {
+		name string
+		d    slidercrank.Dimensions
+		turn rigid.Coordinate
+	}{
+		{"rod", near(1e-3), rigid.Coordinate{Pos: math.Pi / 2, Vel: 1e152}},
+		{"slider", near(1e3), rigid.Coordinate{Pos: math.Pi / 2, Vel: 1e151}},
+		{"pin", slidercrank.Dimensions{Crank: 1e10, Rod: 3e10}, rigid.Coordinate{Acc: 1e300}},
+	} {
+		l := newPress(t, row.d)
+		outcome(t, row.name, slidercrank.State{Margin: 7}, func(st *slidercrank.State) error { return l.Solve(st, row.turn) }, rigid.ErrNotFinite)
+	}
+}

@@ -49,10 +49,7 @@ func (s *SliderRod) major(f r2.Vec) float64 {
 	if s.sin < 0 {
 		g = r2.Scale(-1, g)
 	}
-	sum := math.Atan2(g.Y, g.X)
-	if f.X != 0 || f.Y != 0 {
-		sum += math.Atan2(f.Y, f.X)
-	}
+	sum := math.Atan2(g.Y, g.X) + math.Atan2(f.Y, f.X)
 	u := s.mount.Axis
 	a := math.Remainder(sum/2+math.Atan2(u.Y, u.X), math.Pi)
 	if a <= -math.Pi/2 {

@@ -50,6 +50,10 @@ func TestScotchYokeRefuses(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
+	steep, err := slidercrank.NewScotchYoke(slidercrank.YokeDimensions{Crank: 10, Tilt: math.Pi/2 - 1e-8})
+	if err != nil {
+		t.Fatal(err)
+	}
 	zero := new(slidercrank.ScotchYoke)
 	slide := func(y *slidercrank.ScotchYoke, pos, vel, acc float64, knee rigid.Side) func(*slidercrank.YokeState) error {
 		return func(st *slidercrank.YokeState) error {
@@ -68,6 +72,7 @@ func TestScotchYokeRefuses(t *testing.T) {
 	}{
 		{"turn not a number", turn(y, math.NaN(), 0, 0), rigid.ErrNotFinite},
 		{"speed would overflow", turn(y, 1, 1e160, 0), rigid.ErrNotFinite},
+		{"acceleration of the slide would overflow", turn(steep, 1, 1e150, 0), rigid.ErrNotFinite},
 		{"zero yoke", turn(zero, 1, 0, 0), rigid.ErrInput},
 		{"slide not a number", slide(y, 0, math.NaN(), 0, 0), rigid.ErrNotFinite},
 		{"slide beyond the stroke", slide(y, 0.1+1e-12, 0, 0, 0), rigid.ErrUnreachable},
