@@ -132,7 +132,7 @@ func TestQuickReturnLimits(t *testing.T) {
 // too, and the sides that were asked for, also where there is no telling them.
 func TestQuickReturnBackIsSolve(t *testing.T) {
 	for _, d := range []slidercrank.QuickReturnDimensions{
-		{Crank: 0.15, Centre: 0.1, Arm: 0.15, ArmAngle: 2, Rod: 0.6, Guide: across(-0.1)},
+		{Crank: 0.15, Centre: 0.1, Slot: 0.03, Arm: 0.15, ArmAngle: 2, Rod: 0.6, Guide: across(-0.1)},
 		{Crank: 0.12, Centre: 0.3, Arm: 0.5, Rod: 0.2, Guide: across(0.15)},
 	} {
 		q := newQuickReturn(t, d)
@@ -158,5 +158,27 @@ func TestQuickReturnBackIsSolve(t *testing.T) {
 				}
 			}
 		}
+	}
+}
+
+// Limits that fall together: a cut at half a turn begins the range at −π, a rod that
+// just reaches at one place cuts nothing, and an arm along the travel where the lever
+// turns back is one dead centre.
+func TestQuickReturnCoincidences(t *testing.T) {
+	half := newQuickReturn(t, slidercrank.QuickReturnDimensions{Crank: 0.1, Centre: 0.3, Arm: 0.5, Rod: 0.2, Guide: rigid.Placement{Y: -0.2}})
+	if got := half.Range(); len(got) != 1 || got[0].Lo != -math.Pi || math.Abs(got[0].Hi) > 1e-14 {
+		t.Errorf("a rod that reaches below the line of centres alone: %v", got)
+	}
+	rng := rand.New(rand.NewPCG(11, 43))
+	for range rounds() {
+		d := slidercrank.QuickReturnDimensions{Crank: 0.1, Centre: 0.2 + rng.Float64(), Arm: 0.5 + rng.Float64(), Rod: 0.2 + 0.3*rng.Float64()}
+		d.Guide = across(d.Arm - d.Centre - d.Rod)
+		if got := newQuickReturn(t, d).Range(); len(got) != 1 || got[0] != (rigid.Interval{Lo: -math.Pi, Hi: math.Pi}) {
+			t.Fatalf("%+v: %v", d, got)
+		}
+	}
+	q := newQuickReturn(t, slidercrank.QuickReturnDimensions{Crank: 0.12, Centre: 0.24, Arm: 0.4, Guide: rigid.Placement{Angle: math.Pi / 6}})
+	if got := q.DeadCentres(); len(got) != 2 || math.Abs(got[0].In+2*math.Pi/3) > 1e-14 || math.Abs(got[1].In-2*math.Pi/3) > 1e-7 {
+		t.Errorf("dead centres %+v", got)
 	}
 }
