@@ -78,6 +78,11 @@ func TestQuickReturnLimits(t *testing.T) {
 			Crank: 520.8526339717472, Centre: 541.6060109223436, Slot: -20.336839408215003, Arm: 2082.7434566363604, ArmAngle: 4.873610354076923,
 			Rod: 841.1061184775389, Branch: slidercrank.Behind, Guide: rigid.Placement{X: 427.13675580840714, Y: -29.785927226878425, Angle: math.Pi / 2},
 		},
+		// a crank far shorter than the centre distance, and a slot offset by nearly as much
+		{
+			Crank: 5.36747594492029e-05, Centre: 0.08855726137842593, Slot: -0.08850358662050772, Arm: 0.0685500200094702,
+			Guide: across(-0.08855726137842593),
+		},
 	}
 	for range 10 * rounds() {
 		machines = append(machines, awkwardRam(rng))

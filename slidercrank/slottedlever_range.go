@@ -52,7 +52,8 @@ func (k *slotForm) deadCentre(side float64) (swing, sigma float64) {
 // swings returns the angles of the line where it turns back, and those at the ends of
 // turns, NaN for each that there is not. At these d = ieu, so that from |d − c| = r
 //
-//	u = (y − ix)/e,  x = (e² + c² − r²)/2c,  y = ±√(e² − x²)
+//	u = (y − ix)/e,  x = (e² + c² − r²)/2c = |e| − (r − c + |e|)(r + c − |e|)/2c
+//	y² = e² − x² = [e² − (r − c)²][(r + c)² − e²]/4c²
 func (k *slotForm) swings() [4]float64 {
 	var all [4]float64
 	for i, side := range [...]float64{-1, 1} {
@@ -61,9 +62,12 @@ func (k *slotForm) swings() [4]float64 {
 			all[i] = swing
 		}
 		if k.least < 0 {
-			x := (k.e*k.e - k.difference) / (2 * k.c)
-			y, _ := leg(math.Abs(k.e), x, k.size)
-			all[2+i] = math.Atan2(-x*k.e, side*y*math.Abs(k.e))
+			d, y := math.Abs(k.e), math.Sqrt(-k.least*k.most)/(2*k.c)
+			p, q := k.gap+d, k.most/(k.r+k.c+d)
+			if k.across > 0 {
+				p = -k.least / p
+			}
+			all[2+i] = math.Atan2((p*q/(2*k.c)-d)*k.e, side*y*d)
 		}
 	}
 	return all
