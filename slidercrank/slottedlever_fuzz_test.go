@@ -114,6 +114,11 @@ func FuzzOscillatingCylinder(f *testing.F) {
 		st = slidercrank.CylinderState{}
 		err = o.SolveSlide(&st, in, knee)
 		sound(t, err, st == slidercrank.CylinderState{}, st.Margin, []rigid.Motion{st.Crank, st.Rod, st.Cylinder}, st.Turn, st.Swing, st.Slide)
+		for _, at := range o.Range() {
+			if err := o.Solve(&st, rigid.Coordinate{Pos: at.Lo}); err != nil {
+				t.Errorf("end of the range %v: %v", at, err)
+			}
+		}
 		need := o.Lengths()
 		for _, at := range []float64{need.Lo, need.Hi} {
 			if err := o.SolveSlide(&st, rigid.Coordinate{Pos: at}, knee); err != nil {
