@@ -71,8 +71,13 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	cw := c * w
 	w3, w4 := cw*qc, cw*rc
 	ww3, ww4 := w3*w3, w4*w4
-	al3 := c * (al*qc + mm*qd - (ww3*x + ww4*k.cc))
-	al4 := c * (al*rc + mm*rd + (ww3*k.bb + ww4*x))
+	g3, g4 := ww3*x+ww4*k.cc, ww3*k.bb+ww4*x
+	if d2 < k.short {
+		e := 2 * cw * cross * (w3 + w4) // ω4² − ω3²
+		g3, g4 = k.cc*e-ww3*v, ww4*u-k.bb*e
+	}
+	al3 := c * (al*qc + mm*qd - g3)
+	al4 := c * (al*rc + mm*rd + g4)
 	if k.long {
 		w3, w4, al3, al4 = w3+w, w4+w, al3+al, al4+al
 	}
@@ -139,6 +144,12 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 //	ω3 = −2ω m×Q/F,  α3 = −2(α m×Q − ω² m·Q + ω3² x/2 + ω4² c²)/F
 //	ω4 = −2ω m×R/F,  α4 = −2(α m×R − ω² m·R − ω3² b² − ω4² x/2)/F
 //
+// Where d is short beside R and Q, these are nearly one vector, and so the last two
+// terms of α3, and of α4, nearly cancel. With ω4 − ω3 = −2ω m×d/F there
+//
+//	ω3² x/2 + ω4² c² = (ω4² − ω3²) c² − ω3² v/2,  v = b² − c² − d²
+//	ω3² b² + ω4² x/2 = ω4² u/2 − (ω4² − ω3²) b²,  u = b² − c² + d²
+//
 // A crank much longer than the frame has all links turn almost as one, and seen from
 // the frame their accelerations are small differences of large terms. There it looks
 // from the crank, with −m the vector along the frame, which turns at −ω: ω×m and α×m
@@ -150,6 +161,7 @@ type kernel struct {
 	least          float64 // Margin above which nothing is out of the ordinary
 	g, h, ig       float64 // 2bc, bc, 1/2bc
 	n, m           float64 // b² + c², (b − c)(b + c)
+	short          float64 // d² below which coupler and follower lie nearly along one another
 	s, e           float64 // (b + c)², (b − c)²
 	hb, hc, bb, cc float64 // 1/2b, 1/2c, 2b², 2c²
 }
@@ -159,7 +171,7 @@ func (l *Linkage) newKernel() kernel {
 	k := kernel{
 		base: l.frame, arm: l.crank, long: l.crank > l.frame, side: l.side,
 		g: 2 * b * c, h: b * c, ig: 1 / (2 * b * c),
-		n: b*b + c*c, m: (b - c) * (b + c),
+		n: b*b + c*c, m: (b - c) * (b + c), short: min(b*b, c*c) / 4,
 		s: (b + c) * (b + c), e: (b - c) * (b - c),
 		hb: 0.5 / b, hc: 0.5 / c, bb: 2 * b * b, cc: 2 * c * c,
 	}

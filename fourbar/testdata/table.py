@@ -86,7 +86,15 @@ def lengths():
     return [float(v * size) for v in l]
 
 
-def case(drive):
+def slender(drive):
+    """Lengths of a short frame and driven link with two long links, which lie nearly along one another."""
+    short = 10 ** random.uniform(-4, -2)
+    base, arm, p = short * random.uniform(0.3, 1), short * random.uniform(0.3, 1), random.uniform(0.3, 1)
+    q = p + random.uniform(-1, 1) * (base + arm)
+    return {"crank": (base, arm, p, q), "follower": (base, p, q, arm), "coupler": (base, p, arm, q)}[drive]
+
+
+def case(drive, lengths):
     while True:
         d, a, b, c = l = lengths()
         if min(l) <= 0 or max(l) > 1.02e4 * min(l) or 2 * max(l) > sum(l) * 0.999999:
@@ -107,8 +115,8 @@ def case(drive):
         return x
 
 
-def row(drive):
-    x = case(drive)
+def row(drive, lengths):
+    x = case(drive, lengths)
     side = random.choice((1, -1))
     y = solve(drive, side, x)
     total = [mpf(0)] * len(y)
@@ -130,4 +138,7 @@ def row(drive):
 print(",".join("drive branch side frame crank coupler follower mount pos vel acc".split() + [f for n in NAMES for f in (n, "sum " + n)]))
 for drive, n in (("crank", 200), ("follower", 100), ("coupler", 100)):
     for _ in range(n):
-        print(",".join(row(drive)))
+        print(",".join(row(drive, lengths)))
+for drive, n in (("crank", 120), ("follower", 40), ("coupler", 40)):
+    for _ in range(n):
+        print(",".join(row(drive, lambda: slender(drive))))

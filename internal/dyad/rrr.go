@@ -18,6 +18,7 @@ type RRR struct {
 	m      float64 // (b − c)(b + c)
 	s      float64 // (b + c)²
 	e      float64 // (b − c)²
+	short  float64 // |AC|² below which the two links lie nearly along one another
 	point  float64 // |AC|² below which A and C are one point: then the direction AC is rounding
 }
 
@@ -28,6 +29,7 @@ func NewRRR(b, c float64) RRR {
 		B: b, C: c, ib: 1 / b, ic: 1 / c,
 		g: 2 * b * c, h: b * c, ig: 1 / (2 * b * c), n: b*b + c*c,
 		m: (b - c) * (b + c), s: (b + c) * (b + c), e: (b - c) * (b - c),
+		short: min(b*b, c*c) / 4,
 		point: point * point,
 	}
 }
@@ -92,9 +94,15 @@ func (k *RRR) Move(t *Triangle, ab, cb *Link, d, w, z r2.Vec, side float64) bool
 	c *= f // −2/F
 	w1, w2 := c*(w.X*qx+w.Y*qy), c*(w.X*rx+w.Y*ry)
 	ab.Omega, cb.Omega = w1, w2
-	w1, w2 = w1*w1, w2*w2
-	zx, zy := z.X-w1*rx+w2*qx, z.Y-w1*ry+w2*qy
-	ab.Alpha, cb.Alpha = c*(zx*qx+zy*qy), c*(zx*rx+zy*ry)
+	ww1, ww2 := w1*w1, w2*w2
+	z1x, z1y := z.X-ww1*rx+ww2*qx, z.Y-ww1*ry+ww2*qy
+	z2x, z2y := z1x, z1y
+	if d2 < k.short { // R is nearly Q: R = Q + d, ω2 − ω1 = −2 w·d/F
+		e := c * (w.X*d.X + w.Y*d.Y) * (w1 + w2) // ω2² − ω1²
+		z1x, z1y = z.X-ww1*d.X+e*qx, z.Y-ww1*d.Y+e*qy
+		z2x, z2y = z.X-ww2*d.X+e*rx, z.Y-ww2*d.Y+e*ry
+	}
+	ab.Alpha, cb.Alpha = c*(z1x*qx+z1y*qy), c*(z2x*rx+z2y*ry)
 	ab.Axis = unit(r2.Vec{X: k.ib * rx, Y: k.ib * ry})
 	cb.Axis = unit(r2.Vec{X: k.ic * qx, Y: k.ic * qy})
 	return true
