@@ -167,5 +167,11 @@ func (l *Linkage) Transmission() (least, greatest float64) {
 
 func (l *Linkage) transmission(x float64) float64 {
 	near, far := math.Abs(l.coupler-l.follower), l.coupler+l.follower
-	return 2 * math.Atan2(math.Sqrt(max(x-near, 0)*(x+near)), math.Sqrt(max(far-x, 0)*(far+x)))
+	inside := func(by float64) float64 {
+		if by <= equal*l.longest { // as Class has it
+			return 0
+		}
+		return by
+	}
+	return 2 * math.Atan2(math.Sqrt(inside(x-near)*(x+near)), math.Sqrt(inside(far-x)*(far+x)))
 }

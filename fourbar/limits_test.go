@@ -182,3 +182,21 @@ func TestTransmission(t *testing.T) {
 		t.Errorf("greatest %v, want %v", greatest, w)
 	}
 }
+
+// Lengths whose sums differ by rounding alone: coupler and follower fall into one line.
+func TestTransmissionAtChangePoints(t *testing.T) {
+	for _, row := range []struct {
+		d               fourbar.Dimensions
+		least, greatest bool
+	}{
+		{fourbar.Dimensions{Frame: 0.6, Crank: 0.1, Coupler: 0.2, Follower: 0.7}, true, false},
+		{fourbar.Dimensions{Frame: 6.1, Crank: 1.8, Coupler: 5.7, Follower: 2.2}, false, true},
+		{fourbar.Dimensions{Frame: 6.2, Crank: 2.6, Coupler: 1.2, Follower: 4.8}, true, true},
+		{fourbar.Dimensions{Frame: 0.3, Crank: 0.08, Coupler: 0.28, Follower: 0.2}, false, false},
+	} {
+		least, greatest := mustNew(t, row.d).Transmission()
+		if (least == 0) != row.least || (greatest == math.Pi) != row.greatest {
+			t.Errorf("%+v: from %v to %v", row.d, least, greatest)
+		}
+	}
+}
