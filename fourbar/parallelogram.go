@@ -25,7 +25,7 @@ func (l *Linkage) solveCell(dst *State, turn rigid.Coordinate) error {
 	if l.dim.Branch == Contrary {
 		dst.Swing.Pos = l.swing(turn.Pos, p.follower.Axis)
 	}
-	dst.Margin = math.Abs(r2.Cross(p.coupler.Axis, p.follower.Axis))
+	dst.Margin = min(math.Abs(r2.Cross(p.coupler.Axis, p.follower.Axis)), 1)
 	return nil
 }
 
@@ -37,7 +37,7 @@ func (l *Linkage) solveCellBack(dst *State, swing rigid.Coordinate) error {
 		return err
 	}
 	dst.Swing = swing
-	dst.Margin = math.Abs(r2.Cross(p.crank.Axis, p.coupler.Axis))
+	dst.Margin = min(math.Abs(r2.Cross(p.crank.Axis, p.coupler.Axis)), 1)
 	return nil
 }
 
@@ -54,7 +54,8 @@ func (l *Linkage) writeCell(dst *State, p *pose, in float64) error {
 // Parallel: the coupler keeps the frame's direction, the opposite link the driven
 // one's. Contrary is the mirror image of that in the diagonal d of drive.span,
 // which turns at ωd: with e = d/|d| as a complex number the frame's direction 1 and
-// the driven link's u become e² and e²u*, their angular velocities 2ωd and 2ωd − ω. With m = arm·u, d' = −ω m⊥ and so on,
+// the driven link's u become e² and e²u*, their angular velocities 2ωd and 2ωd − ω.
+// With m = arm·u, d' = −ω m⊥ and so on,
 //
 //	ωd = d×d'/d² = −ω d·m/d²,  αd = (−α d·m − ω (2ωd − ω) d×m)/d²
 func (l *Linkage) cell(driven *dyad.Link, k *drive, coupler, opposite *dyad.Link) {
@@ -131,5 +132,5 @@ func (l *Linkage) contraryCoupler(p *pose, in rigid.Coordinate, side float64) (m
 		p.crank.Omega, p.follower.Omega = w-b1, w+b1
 		p.crank.Alpha, p.follower.Alpha = al-b2, al+b2
 	}
-	return 2 * math.Abs(sin*cos), nil
+	return min(2*math.Abs(sin*cos), 1), nil
 }

@@ -186,3 +186,20 @@ func TestKite(t *testing.T) {
 		t.Error(err)
 	}
 }
+
+// The links of an antiparallelogram at right angles: a sine of no more than 1.
+func TestContraryMargin(t *testing.T) {
+	for _, frame := range []float64{1, 1.4, 2.1, 3.7, 9.3} {
+		l := mustNew(t, fourbar.Dimensions{Frame: frame, Crank: 1.3, Coupler: frame, Follower: 1.3, Branch: fourbar.Contrary})
+		for i := range 2000 {
+			turn := math.Pi/2 + float64(i-1000)*1e-9
+			var st, back fourbar.State
+			if err := l.Solve(&st, rigid.Coordinate{Pos: turn}); err != nil || st.Margin > 1 {
+				t.Fatalf("frame %v, crank at %v: margin %v, %v", frame, turn, st.Margin, err)
+			}
+			if err := l.SolveFollower(&back, rigid.Coordinate{Pos: turn}, st.Knee); err != nil || back.Margin > 1 {
+				t.Fatalf("frame %v, follower at %v: margin %v, %v", frame, turn, back.Margin, err)
+			}
+		}
+	}
+}
