@@ -99,7 +99,7 @@ func (l *Linkage) writeBack(dst *State, p *pose) error {
 		switch {
 		case !l.turns:
 			branch = Crossed - branch
-		case math.Abs(sin) > l.flat:
+		case math.Abs(sin) > l.byCrank.near:
 			return rigid.ErrUnreachable
 		}
 	}

@@ -20,7 +20,6 @@ type Linkage struct {
 
 	side    float64 // +1 for Open, −1 for Crossed
 	turns   bool    // whether the crank turns fully
-	flat    float64 // a sine that rounding alone makes out of 0 where three links fall into one line
 	winding winding
 
 	byCrank, byFollower, byCoupler drive
@@ -80,7 +79,6 @@ func New(d Dimensions) (*Linkage, error) {
 	l.byCrank = newDrive(l.frame, a, b, c)
 	l.byFollower = newDrive(l.frame, -c, a, b)
 	l.byCoupler = newDrive(l.frame, b, a, c)
-	l.flat = l.byCrank.near + l.byFollower.near + l.byCoupler.near
 	l.quick = l.newKernel()
 	return l, nil
 }

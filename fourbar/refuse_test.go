@@ -6,6 +6,7 @@ import (
 	"testing"
 
 	"github.com/google/go-cmp/cmp"
+	"gonum.org/v1/gonum/spatial/r2"
 
 	"example.com/twopoint/fourbar"
 	"example.com/twopoint/rigid"
@@ -223,5 +224,33 @@ func TestLimitedCrankMeetsBothBranches(t *testing.T) {
 	}
 	if seen[fourbar.Open] < 90 || seen[fourbar.Crossed] < 90 {
 		t.Errorf("poses of each branch: %v", seen)
+	}
+}
+
+// TestBackOnItsBranch: with links of very unequal length, too, a pose on the other
+// branch of a crank that turns fully is refused.
+func TestBackOnItsBranch(t *testing.T) {
+	d := fourbar.Dimensions{Frame: 1e-6, Crank: 3e-6, Coupler: 1, Follower: 1 + 1e-6} // a double crank
+	l := mustNew(t, d)
+	for k := range 36 {
+		in := rigid.Coordinate{Pos: (float64(k) + 0.5) * 10 * rigid.Degree}
+		solved := 0
+		for _, side := range []rigid.Side{rigid.Left, rigid.Right} {
+			for _, solve := range []func(*fourbar.State, rigid.Coordinate, rigid.Side) error{l.SolveFollower, l.SolveCoupler} {
+				var st fourbar.State
+				err := solve(&st, in, side)
+				if err == nil {
+					solved++
+					if r2.Cross(st.Coupler.Pose.Axis, st.Follower.Pose.Axis) < 0 {
+						t.Errorf("at %v, %v: open has the follower pin right", in.Pos, side)
+					}
+				} else if err != rigid.ErrUnreachable {
+					t.Errorf("at %v, %v: %v", in.Pos, side, err)
+				}
+			}
+		}
+		if solved != 2 {
+			t.Errorf("at %v: %d poses, want one by each drive", in.Pos, solved)
+		}
 	}
 }
