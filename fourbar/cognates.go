@@ -30,12 +30,12 @@ type Cognate struct {
 // on the other Branch: Solve of the linkage's Turn follows. The Mounts turn the axes in
 // which these angles are alike.
 //
-// Where Range has two intervals, the first's Branch is that for the first of them: the
-// other may need the other. Where the first's crank does not turn fully, one motion of it passes both
-// branches, and Dimensions has one of them. The cognates of a parallelogram are
-// kites, which can't be driven through their flattened positions; Branch is then
-// that for crank angles in (0, π). For a coupler point in a pin one cognate
-// shrinks to nothing: its lengths are 0, which New refuses.
+// Where Range has two intervals, the first's Branch is that for the first of them:
+// the other may need the other. Where the first's crank does not turn fully, one
+// motion of it passes both branches, and Dimensions has one of them. The cognates of
+// a parallelogram are kites, which can't be driven through their flattened
+// positions; Branch is then that for crank angles in (0, π). For a coupler point in
+// a pin one cognate shrinks to nothing: its lengths are 0, which New refuses.
 func (l *Linkage) Cognates(coupler r2.Vec) [2]Cognate {
 	if l.longest == 0 {
 		return [2]Cognate{}

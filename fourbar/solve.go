@@ -23,10 +23,10 @@ import (
 //   - ErrInput: the linkage is not from New.
 //
 // A crank at rest, with velocity and acceleration 0, asks for the place alone,
-// which a limit of the crank has too. Within rounding of a limit counts as at it, with
-// Margin 0. Parallel and Contrary have rates in their
-// flattened positions too, where Margin is 0: it tells how well the coupler drives
-// the follower there, not whether the motion is determined.
+// which a limit of the crank has too. Within rounding of a limit counts as at it,
+// with Margin 0. Parallel and Contrary have rates in their flattened positions too,
+// where Margin is 0: it tells how well the coupler drives the follower there, not
+// whether the motion is determined.
 func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	k, w, al, ww := &l.quick, turn.Vel, turn.Acc, turn.Vel*turn.Vel
 	sin, cos := trig.Sincos(turn.Pos)
