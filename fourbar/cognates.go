@@ -34,8 +34,9 @@ type Cognate struct {
 // the other may need the other. Where the first's crank does not turn fully, one
 // motion of it passes both branches, and Dimensions has one of them. The cognates of
 // a parallelogram are kites, which can't be driven through their flattened
-// positions; Branch is then that for crank angles in (0, π). For a coupler point in
-// a pin one cognate shrinks to nothing: its lengths are 0, which New refuses.
+// positions; Branch is then that for crank angles in (0, π), where Parallel is as
+// Open, Contrary as Crossed. For a coupler point in a pin one cognate shrinks to
+// nothing: its lengths are 0, which New refuses.
 func (l *Linkage) Cognates(coupler r2.Vec) [2]Cognate {
 	if l.longest == 0 {
 		return [2]Cognate{}
@@ -59,7 +60,7 @@ func (l *Linkage) Cognates(coupler r2.Vec) [2]Cognate {
 		*second = Dimensions{Frame: n * d, Crank: n * a, Coupler: n * c, Follower: n * b}
 		o6 := mount.Pose().Point(vector(k * complex(d, 0)))
 		second.Mount = rigid.Placement{X: o6.X, Y: o6.Y, Angle: mount.Angle + cmplx.Phase(-j)}
-		if l.dim.Branch != Crossed {
+		if !l.crossed() {
 			second.Branch = Crossed
 		}
 		pair[1].Coupler = vector(complex(c/n, 0) * k * cmplx.Conj(j)) // the point is kc·u4 from the crank pin
@@ -69,10 +70,17 @@ func (l *Linkage) Cognates(coupler r2.Vec) [2]Cognate {
 
 func vector(z complex128) r2.Vec { return r2.Vec{X: real(z), Y: imag(z)} }
 
+// crossed reports whether the linkage is on Crossed: Contrary is so for crank angles
+// in (0, π).
+func (l *Linkage) crossed() bool { return l.dim.Branch == Crossed || l.dim.Branch == Contrary }
+
 // leansRight reports the Lean of the linkage in its range, at that of some
-// positions where it is clearest.
+// positions where it is clearest; of Contrary, for crank angles in (0, π).
 func (l *Linkage) leansRight() bool {
 	r, most := l.Range()[0], 0.0
+	if l.dim.Branch == Contrary {
+		r.Lo = 0
+	}
 	for i := range 8 {
 		var st State
 		if l.Solve(&st, rigid.Coordinate{Pos: r.Lo + (r.Hi-r.Lo)*(float64(i)+0.5)/8}) != nil {

@@ -77,6 +77,37 @@ func TestCognatesTraceOneCurve(t *testing.T) {
 	}
 }
 
+// The kites of a parallelogram go with it on the way between its flattened positions.
+func TestCognatesOfParallelograms(t *testing.T) {
+	p := r2.Vec{X: 0.7, Y: -0.4}
+	for branch, lean := range map[fourbar.Branch]rigid.Side{fourbar.Parallel: rigid.Left, fourbar.Contrary: rigid.Right} {
+		for _, d := range []fourbar.Dimensions{
+			{Frame: 2, Crank: 1, Coupler: 2, Follower: 1, Branch: branch},
+			{Frame: 1, Crank: 3, Coupler: 1, Follower: 3, Branch: branch, Mount: rigid.Placement{X: 1, Angle: 2}},
+		} {
+			l := mustNew(t, d)
+			pair := l.Cognates(p)
+			first, second := mustNew(t, pair[0].Dimensions), mustNew(t, pair[1].Dimensions)
+			for k := range 30 {
+				in := rigid.Coordinate{Pos: (float64(k) + 0.5) * math.Pi / 30}
+				var st, one, two fourbar.State
+				if err := l.Solve(&st, in); err != nil {
+					t.Fatal(err)
+				}
+				if err := first.SolveCoupler(&one, in, lean); err != nil {
+					t.Fatalf("%+v at %v: first cognate: %v", d, in.Pos, err)
+				}
+				if err := second.Solve(&two, in); err != nil {
+					t.Fatalf("%+v at %v: second cognate: %v", d, in.Pos, err)
+				}
+				want := st.Coupler.At(p).Pos
+				near(t, "first", r2.Norm(r2.Sub(one.Coupler.At(pair[0].Coupler).Pos, want)), 0, 1e-13)
+				near(t, "second", r2.Norm(r2.Sub(two.Coupler.At(pair[1].Coupler).Pos, want)), 0, 1e-13)
+			}
+		}
+	}
+}
+
 // Watt's curve: the middle of the coupler of the linkage with half frame a = 1.2,
 // arms b = 1 and half coupler c = 0.5 lies on the sextic that in polar form is
 //
