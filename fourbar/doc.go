@@ -56,9 +56,9 @@
 //
 // # Accuracy
 //
-// With ε = 2⁻⁵² an output y of Solve is off by at most 4ε(|y| + Σ|x ∂y/∂x|), x all
-// lengths and the motion of the crank: what rounding the inputs does, times 4. It
-// was tested for sizes from 1e-6 to 1e3 m and ratios of lengths up to 1e4.
+// With ε = 2⁻⁵² an output y of a solve is off by at most 4ε(|y| + Σ|x ∂y/∂x|), x all
+// lengths and the motion of the driven link: what rounding the inputs does, times 4.
+// It was tested for sizes from 1e-6 to 1e3 m and ratios of lengths up to 1e4.
 //
 // The results are ideal kinematics of rigid links without play. They are no safety
 // function: guard and stop a machine by the codes and the licensed practice of

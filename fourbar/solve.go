@@ -34,9 +34,9 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	dx := k.base - ax // d = (dx, −ay)
 	d2 := dx*dx + ay*ay
 	x := d2 - k.n
-	p := (k.g - x) * (k.g + x) // F², by the law of cosines
-	if math.Abs(x) > k.h {
-		p = (k.s - d2) * (d2 - k.e) // or Heron's formula
+	p := (k.g - x) * (k.g + x) // F²: see dyad's solve
+	if d2 < k.short {
+		p = (k.s - d2) * (d2 - k.e)
 	}
 	root := math.Sqrt(p)
 	margin := root * k.ig
@@ -50,7 +50,10 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	if k.long {
 		dot, mm = k.base*dx, -ww
 	}
-	u, v := d2+k.m, k.m-d2
+	u, v := x+k.bb, -(x + k.cc)
+	if d2 < k.short {
+		u, v = d2+k.m, k.m-d2
+	}
 	ex, ey := i*dx, i*ay
 	di, ci := i*dot, i*cross
 
@@ -144,8 +147,8 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 //	ω3 = −2ω m×Q/F,  α3 = −2(α m×Q − ω² m·Q + ω3² x/2 + ω4² c²)/F
 //	ω4 = −2ω m×R/F,  α4 = −2(α m×R − ω² m·R − ω3² b² − ω4² x/2)/F
 //
-// Where d is short beside R and Q, these are nearly one vector, and so the last two
-// terms of α3, and of α4, nearly cancel. With ω4 − ω3 = −2ω m×d/F there
+// Where d is short R and Q may be nearly one vector, and so the last two terms of α3,
+// and of α4, nearly cancel. With ω4 − ω3 = −2ω m×d/F there
 //
 //	ω3² x/2 + ω4² c² = (ω4² − ω3²) c² − ω3² v/2,  v = b² − c² − d²
 //	ω3² b² + ω4² x/2 = ω4² u/2 − (ω4² − ω3²) b²,  u = b² − c² + d²
@@ -159,21 +162,20 @@ type kernel struct {
 	long           bool    // whether the crank is longer than the frame
 	side           float64 // +1 for Open, −1 for Crossed
 	least          float64 // Margin above which nothing is out of the ordinary
-	g, h, ig       float64 // 2bc, bc, 1/2bc
-	n, m           float64 // b² + c², (b − c)(b + c)
-	short          float64 // d² below which coupler and follower lie nearly along one another
-	s, e           float64 // (b + c)², (b − c)²
+	g, ig, n       float64 // 2bc, 1/2bc, b² + c²
 	hb, hc, bb, cc float64 // 1/2b, 1/2c, 2b², 2c²
+	short          float64 // d² below which d is shorter than coupler and follower
+	m, s, e        float64 // (b − c)(b + c), (b + c)², (b − c)²
 }
 
 func (l *Linkage) newKernel() kernel {
 	b, c := l.coupler, l.follower
 	k := kernel{
 		base: l.frame, arm: l.crank, long: l.crank > l.frame, side: l.side,
-		g: 2 * b * c, h: b * c, ig: 1 / (2 * b * c),
-		n: b*b + c*c, m: (b - c) * (b + c), short: min(b*b, c*c) / 4,
-		s: (b + c) * (b + c), e: (b - c) * (b - c),
+		g: 2 * b * c, ig: 1 / (2 * b * c), n: b*b + c*c,
 		hb: 0.5 / b, hc: 0.5 / c, bb: 2 * b * b, cc: 2 * c * c,
+		short: min(b*b, c*c),
+		m:     (b - c) * (b + c), s: (b + c) * (b + c), e: (b - c) * (b - c),
 	}
 	k.least = max(rigid.LeastMargin, l.byCrank.near)
 	if l.dim.Branch > Crossed || l.longest > 1e6*min(l.frame, l.crank, b, c) {

@@ -115,9 +115,20 @@ def case(drive, lengths):
         return x
 
 
-def row(drive, lengths):
-    x = case(drive, lengths)
-    side = random.choice((1, -1))
+# Found among 20 000: an acceleration, or a velocity, depends on a length far less than
+# the terms that make it.
+HARD = [
+    ("crank", -1, (0.0012014608841344914, 1.3738898376239472e-07, 0.0012013761563900505, 2.9093246584040917e-07, 0.0, 2.0347847694916417, 21.356686098244808, -172.70242715569586)),
+    ("crank", -1, (1.762521059996713e-10, 7.766899920277247e-07, 7.767552905294807e-07, 2.8904310912836915e-10, 0.0, -0.5579246012080477, 14.175019245184203, 0.0)),
+    ("crank", -1, (0.545009146012466, 0.0001571781467595989, 0.5449429946085852, 0.00026952595744527053, 1.89920769668025, 2.5578194207517044, -28.44706349069253, 0.0)),
+    ("crank", -1, (8.840757576638965e-07, 0.00044137249381412435, 1.0698964004699644e-06, 0.0004412560459791944, 0.0, -0.6853449723234064, 19.646342721989683, 0.0)),
+    ("crank", -1, (4.574667146268575e-05, 0.04260568452894476, 0.00012339645936943974, 0.0425669495204913, 0.0, 2.1614152577013788, 27.58232267932565, 0.0)),
+    ("follower", 1, (5.873556775056361e-06, 0.013385554237677694, 8.515600160821557e-06, 0.013385793051165312, -0.3222377230298523, 0.5425808288582341, 18.631816264728442, 0.0)),
+    ("coupler", 1, (4.351503198791935e-10, 1.3903684700924844e-09, 1.245715909875445e-06, 1.2462820353121672e-06, 1.590201115417754, 0.5620010601078844, -19.970765130566924, 186.28552832152872)),
+]
+
+
+def row(drive, side, x):
     y = solve(drive, side, x)
     total = [mpf(0)] * len(y)
     for i, v in enumerate(x):
@@ -138,7 +149,11 @@ def row(drive, lengths):
 print(",".join("drive branch side frame crank coupler follower mount pos vel acc".split() + [f for n in NAMES for f in (n, "sum " + n)]))
 for drive, n in (("crank", 200), ("follower", 100), ("coupler", 100)):
     for _ in range(n):
-        print(",".join(row(drive, lengths)))
+        x = case(drive, lengths)
+        print(",".join(row(drive, random.choice((1, -1)), x)))
 for drive, n in (("crank", 120), ("follower", 40), ("coupler", 40)):
     for _ in range(n):
-        print(",".join(row(drive, lambda: slender(drive))))
+        x = case(drive, lambda: slender(drive))
+        print(",".join(row(drive, random.choice((1, -1)), x)))
+for drive, side, x in HARD:
+    print(",".join(row(drive, side, [mpf(v) for v in x])))

@@ -12,13 +12,13 @@ type RRR struct {
 	B, C   float64
 	ib, ic float64 // 1/b, 1/c
 	g      float64 // 2bc
-	h      float64 // bc
 	ig     float64 // 1/2bc
 	n      float64 // b² + c²
+	bb, cc float64 // 2b², 2c²
+	short  float64 // |AC|² below which AC is the shortest side
 	m      float64 // (b − c)(b + c)
 	s      float64 // (b + c)²
 	e      float64 // (b − c)²
-	short  float64 // |AC|² below which the two links lie nearly along one another
 	point  float64 // |AC|² below which A and C are one point: then the direction AC is rounding
 }
 
@@ -27,9 +27,9 @@ func NewRRR(b, c float64) RRR {
 	point := 0x1p-50 * (b + c)
 	return RRR{
 		B: b, C: c, ib: 1 / b, ic: 1 / c,
-		g: 2 * b * c, h: b * c, ig: 1 / (2 * b * c), n: b*b + c*c,
+		g: 2 * b * c, ig: 1 / (2 * b * c), n: b*b + c*c,
+		bb: 2 * b * b, cc: 2 * c * c, short: min(b*b, c*c),
 		m: (b - c) * (b + c), s: (b + c) * (b + c), e: (b - c) * (b - c),
-		short: min(b*b, c*c) / 4,
 		point: point * point,
 	}
 }
@@ -46,22 +46,29 @@ type Triangle struct {
 // left of the line A→C and −1 for right. It reports false out of reach, where d
 // is 0 within rounding or not a number, and leaves t as it was. At a limit F is
 // 0, and there are no rates.
-//
-// F² is 16 times the square of the area in the form that has the least rounding
-// error: the law of cosines where the angle at B is between 60° and 120°, Heron's
-// formula elsewhere.
 func (k *RRR) Place(t *Triangle, d r2.Vec, side float64) bool {
 	d2 := d.X*d.X + d.Y*d.Y
-	x := d2 - k.n
-	p := (k.g - x) * (k.g + x)
-	if math.Abs(x) > k.h {
-		p = (k.s - d2) * (d2 - k.e)
-	}
+	x, u, v, p := k.solve(d2)
 	if !(p >= 0 && d2 > k.point) {
 		return false
 	}
-	k.set(t, d, d2, x, side*math.Sqrt(p))
+	k.set(t, d, 0.5/d2, u, v, x, side*math.Sqrt(p))
 	return true
+}
+
+// solve returns for d² = |AC|²
+//
+//	x = d² − b² − c²,  u = d² + b² − c²,  v = b² − c² − d²,  F² = (2bc − x)(2bc + x)
+//
+// F² is 16 times the square of the area. All are formed from x, so that its rounding
+// is to all of them one small change of d. Where d is the shortest side it would be
+// a large one: there F² has Heron's factors.
+func (k *RRR) solve(d2 float64) (x, u, v, ff float64) {
+	x = d2 - k.n
+	if d2 < k.short {
+		return x, d2 + k.m, k.m - d2, (k.s - d2) * (d2 - k.e)
+	}
+	return x, x + k.bb, -(x + k.cc), (k.g - x) * (k.g + x)
 }
 
 // A Link is the direction of a link, with its angular velocity and acceleration.
@@ -76,20 +83,14 @@ type Link struct {
 // are not finite: see Margin.
 func (k *RRR) Move(t *Triangle, ab, cb *Link, d, w, z r2.Vec, side float64) bool {
 	d2 := d.X*d.X + d.Y*d.Y
-	x := d2 - k.n
-	p := (k.g - x) * (k.g + x)
-	if math.Abs(x) > k.h {
-		p = (k.s - d2) * (d2 - k.e)
-	}
+	x, u, v, p := k.solve(d2)
 	if !(p >= 0 && d2 > k.point) {
 		return false
 	}
 	f := side * math.Sqrt(p)
 	i, c := 0.5/d2, -2/p // while the root is on its way
-	u, v, h := (d2+k.m)*i, (k.m-d2)*i, f*i
-	rx, ry := u*d.X-h*d.Y, u*d.Y+h*d.X
-	qx, qy := v*d.X-h*d.Y, v*d.Y+h*d.X
-	t.R, t.Q, t.X, t.F = r2.Vec{X: rx, Y: ry}, r2.Vec{X: qx, Y: qy}, x, f
+	k.set(t, d, i, u, v, x, f)
+	rx, ry, qx, qy := t.R.X, t.R.Y, t.Q.X, t.Q.Y
 
 	c *= f // −2/F
 	w1, w2 := c*(w.X*qx+w.Y*qy), c*(w.X*rx+w.Y*ry)
@@ -97,7 +98,7 @@ func (k *RRR) Move(t *Triangle, ab, cb *Link, d, w, z r2.Vec, side float64) bool
 	ww1, ww2 := w1*w1, w2*w2
 	z1x, z1y := z.X-ww1*rx+ww2*qx, z.Y-ww1*ry+ww2*qy
 	z2x, z2y := z1x, z1y
-	if d2 < k.short { // R is nearly Q: R = Q + d, ω2 − ω1 = −2 w·d/F
+	if d2 < k.short { // R may be nearly Q: R = Q + d, ω2 − ω1 = −2 w·d/F
 		e := c * (w.X*d.X + w.Y*d.Y) * (w1 + w2) // ω2² − ω1²
 		z1x, z1y = z.X-ww1*d.X+e*qx, z.Y-ww1*d.Y+e*qy
 		z2x, z2y = z.X-ww2*d.X+e*rx, z.Y-ww2*d.Y+e*ry
@@ -122,10 +123,9 @@ func (k *RRR) Flatten(t *Triangle, d r2.Vec) {
 //
 //	R = (d² + b² − c²)/(2d) u + h u⊥,  Q = R − d
 //
-// where Q is formed as R is, since R − d cancels.
-func (k *RRR) set(t *Triangle, d r2.Vec, d2, x, f float64) {
-	i := 0.5 / d2
-	u, v, h := (d2+k.m)*i, (k.m-d2)*i, f*i
+// where Q is formed as R is, since R − d cancels; i is 1/2d².
+func (k *RRR) set(t *Triangle, d r2.Vec, i, u, v, x, f float64) {
+	u, v, h := u*i, v*i, f*i
 	t.R = r2.Vec{X: u*d.X - h*d.Y, Y: u*d.Y + h*d.X}
 	t.Q = r2.Vec{X: v*d.X - h*d.Y, Y: v*d.Y + h*d.X}
 	t.X, t.F = x, f
