@@ -107,9 +107,3 @@ func TestCognatesOfParallelograms(t *testing.T) {
 		}
 	}
 }
-
-// Watt's curve: the middle of the coupler of the linkage with half frame a = 1.2,
-// arms b = 1 and half coupler c = 0.5 lies on the sextic that in polar form is
-//
-//	r² = b² − (a sin θ ± √(c² − a² cos² θ))²
-//

@@ -11,6 +11,11 @@ import (
 	"example.com/twopoint/rigid"
 )
 
+// Watt's curve: the middle of the coupler of the linkage with half frame a = 1.2,
+// arms b = 1 and half coupler c = 0.5 lies on the sextic that in polar form is
+//
+//	r² = b² − (a sin θ ± √(c² − a² cos² θ))²
+//
 // (https://everything.explained.today/Watt%27s_curve).
 func TestCurveOnWattsSextic(t *testing.T) {
 	l := mustNew(t, fourbar.Dimensions{Frame: 2.4, Crank: 1, Coupler: 1, Follower: 1, Mount: rigid.Placement{X: -1.2}})
