@@ -2,6 +2,7 @@ package fourbar
 
 import (
 	"iter"
+	"math"
 
 	"gonum.org/v1/gonum/spatial/r2"
 
@@ -13,7 +14,7 @@ type CurvePoint struct {
 	Turn  float64     // of the crank, in rad
 	Point rigid.Point // for a crank that turns at 1 rad/s: derivatives by Turn
 	Path  rigid.Path  // tangent and curvature of the curve; zero at a cusp
-	Cusp  bool        // the point is at rest: the curve turns back on itself
+	Cusp  bool        // the point is at rest, within rounding: the curve turns back on itself
 }
 
 // Curve yields n points of the curve that a coupler point, in m in the coupler,
@@ -58,9 +59,12 @@ func (l *Linkage) curvePoint(coupler r2.Vec, turn float64) (CurvePoint, error) {
 		return p, err
 	}
 	p.Point = st.Coupler.At(coupler)
-	p.Path, err = p.Point.Path()
-	if err == rigid.ErrSingular {
-		p.Cusp, err = true, nil
+	// At a cusp the velocity of the crank pin and that about it cancel, but for rounding.
+	terms := l.crank + math.Abs(st.Coupler.Omega)*r2.Norm(coupler)
+	if r2.Norm(p.Point.Vel) < 16*0x1p-52*terms {
+		p.Cusp = true
+		return p, nil
 	}
+	p.Path, err = p.Point.Path()
 	return p, err
 }

@@ -110,21 +110,33 @@ func TestCurveRefuses(t *testing.T) {
 	}
 }
 
-// A point of the coupler in its pole is at rest: its curve has a cusp there.
+// A point of the coupler in its pole is at rest: its curve has a cusp there, and on
+// both sides of it nearly opposite tangents.
 func TestCurveCusp(t *testing.T) {
-	l := mustNew(t, fourbar.Dimensions{Frame: 1, Crank: 1, Coupler: math.Sqrt2, Follower: math.Sqrt2})
-	var st fourbar.State
-	if err := l.Solve(&st, rigid.Coordinate{Pos: math.Pi / 2, Vel: 1}); err != nil {
-		t.Fatal(err)
-	}
-	pole, err := st.Coupler.Pole()
-	if err != nil {
-		t.Fatal(err)
-	}
-	p := st.Coupler.Pose.Local(pole)
-	for c, err := range l.Curve(p, rigid.Interval{Lo: math.Pi / 2, Hi: math.Pi / 2}, 2) {
-		if err != nil || !c.Cusp && c.Path.Speed > 1e-14 {
-			t.Errorf("%+v, %v", c, err)
+	l := mustNew(t, crankRocker)
+	for k := range 200 {
+		turn := 0.3 + float64(k)*0.01
+		var st fourbar.State
+		if err := l.Solve(&st, rigid.Coordinate{Pos: turn, Vel: 1}); err != nil {
+			t.Fatal(err)
 		}
+		pole, err := st.Coupler.Pole()
+		p := st.Coupler.Pose.Local(pole)
+		if err != nil || r2.Norm(p) > 10*crankRocker.Frame {
+			continue
+		}
+		for c, err := range l.Curve(p, rigid.Interval{Lo: turn, Hi: turn}, 2) {
+			if err != nil || !c.Cusp || c.Path != (rigid.Path{}) {
+				t.Errorf("at %v: %+v, %v", turn, c, err)
+			}
+		}
+		var beside []rigid.Path
+		for c, err := range l.Curve(p, rigid.Interval{Lo: turn - 1e-6, Hi: turn + 1e-6}, 2) {
+			if err != nil || c.Cusp {
+				t.Errorf("beside %v: %+v, %v", turn, c, err)
+			}
+			beside = append(beside, c.Path)
+		}
+		near(t, "cosine across the cusp", r2.Dot(beside[0].Tangent, beside[1].Tangent), -1, 1e-6)
 	}
 }
