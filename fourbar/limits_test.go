@@ -137,14 +137,15 @@ func TestTimeRatio(t *testing.T) {
 			}
 			continue
 		}
-		rising, const64 := 0, 4096
-		for i := range const64 {
-			x, _ := l.Coefficients(-math.Pi + rigid.Revolution*float64(i)/float64(const64))
+		const n = 4096
+		rising := 0
+		for i := range n {
+			x, _ := l.Coefficients(-math.Pi + rigid.Revolution*float64(i)/n)
 			if x.First > 0 {
 				rising++
 			}
 		}
-		if sampled := float64(rising) / float64(const64-rising); math.Abs(got/sampled-1) > 0.01*(1+got+1/got) {
+		if sampled := float64(rising) / float64(n-rising); math.Abs(got/sampled-1) > 0.01*(1+got+1/got) {
 			t.Fatalf("%+v: %v, by sampling %v", l.Dimensions(), got, sampled)
 		}
 	}

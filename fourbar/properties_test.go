@@ -108,6 +108,31 @@ func TestClosure(t *testing.T) {
 	})
 }
 
+// TestUnequalLengths: the axes have length 1, and the loop closes, for links of any
+// lengths.
+func TestUnequalLengths(t *testing.T) {
+	r := rand.New(rand.NewPCG(12, 12))
+	for n := 0; n < rounds(20_000); {
+		x := [4]float64{1, 1, 1, 1}
+		i, j := r.IntN(4), r.IntN(4)
+		x[i], x[j] = math.Pow(10, -12*r.Float64()), math.Pow(10, -12*r.Float64())
+		d := fourbar.Dimensions{Frame: x[0], Crank: x[1], Coupler: x[2], Follower: x[3], Branch: fourbar.Branch(r.IntN(2))}
+		l, err := fourbar.New(d)
+		if err != nil {
+			continue
+		}
+		in := anyTurn(r, l)
+		var st fourbar.State
+		if l.Solve(&st, in) != nil {
+			continue
+		}
+		n++
+		if off := gap(&st, d); off > 1e-14 {
+			t.Fatalf("%+v at %+v: off by %v", d, in, off)
+		}
+	}
+}
+
 // TestDerivatives compares velocity and acceleration with differences of position
 // and velocity along the motion of the crank.
 func TestDerivatives(t *testing.T) {

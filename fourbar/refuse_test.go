@@ -61,6 +61,7 @@ func TestSolversRefuse(t *testing.T) {
 	l := mustNew(t, crankRocker)
 	rocker := mustNew(t, fourbar.Dimensions{Frame: 4, Crank: 5, Coupler: 2, Follower: 5})
 	end := rocker.Range()[1].Hi
+	long := mustNew(t, fourbar.Dimensions{Frame: 0.2, Crank: 6, Coupler: 5, Follower: 5.9})
 	contrary := mustNew(t, fourbar.Dimensions{Frame: 2, Crank: 1, Coupler: 2, Follower: 1, Branch: fourbar.Contrary})
 	parallel := mustNew(t, fourbar.Dimensions{Frame: 2, Crank: 1, Coupler: 2, Follower: 1, Branch: fourbar.Parallel})
 	zero := new(fourbar.Linkage)
@@ -79,6 +80,8 @@ func TestSolversRefuse(t *testing.T) {
 		{"NaN speed", func(dst *fourbar.State) error { return l.Solve(dst, in{Vel: nan}) }, rigid.ErrNotFinite},
 		{"infinite acceleration", func(dst *fourbar.State) error { return l.Solve(dst, in{Acc: inf}) }, rigid.ErrNotFinite},
 		{"overflow", func(dst *fourbar.State) error { return l.Solve(dst, in{Vel: 1e200}) }, rigid.ErrNotFinite},
+		{"overflow of the crank pin", func(dst *fourbar.State) error { return long.Solve(dst, in{Pos: 1, Acc: 1e308}) }, rigid.ErrNotFinite},
+		{"overflow near a limit", func(dst *fourbar.State) error { return rocker.Solve(dst, in{Pos: end - 1e-9, Vel: 1e150}) }, rigid.ErrNotFinite},
 		{"zero linkage", func(dst *fourbar.State) error { return zero.Solve(dst, in{Vel: 1}) }, rigid.ErrInput},
 		{"zero linkage, follower", func(dst *fourbar.State) error { return zero.SolveFollower(dst, in{}, rigid.Left) }, rigid.ErrInput},
 		{"zero linkage, coupler", func(dst *fourbar.State) error { return zero.SolveCoupler(dst, in{}, rigid.Left) }, rigid.ErrInput},

@@ -8,6 +8,8 @@ import (
 	"strconv"
 	"testing"
 
+	"gonum.org/v1/gonum/spatial/r2"
+
 	"example.com/twopoint/fourbar"
 	"example.com/twopoint/rigid"
 )
@@ -58,6 +60,9 @@ func TestTable(t *testing.T) {
 			t.Errorf("row %d %v: %v", i, row[:11], err)
 			continue
 		}
+		if d := l.Dimensions(); !(gap(&st, d) <= 1e-14) {
+			t.Errorf("row %d %v: the loop is open by %.2g of the longest link", i, row[:11], gap(&st, d))
+		}
 		for j, got := range outputs(&st) {
 			name := rows[0][11+2*j]
 			bound := math.Abs(got) + number(t, row[12+2*j])
@@ -74,6 +79,17 @@ func TestTable(t *testing.T) {
 		}
 	}
 	t.Logf("worst, in eps: %.2v", worst)
+}
+
+// gap returns how far the loop is from closing, of the longest link, or the farthest
+// that the length of an axis is from 1.
+func gap(st *fourbar.State, d fourbar.Dimensions) float64 {
+	p, q := st.Coupler.At(r2.Vec{X: d.Coupler}).Pos, st.Follower.At(r2.Vec{X: d.Follower}).Pos
+	off := r2.Norm(r2.Sub(p, q)) / max(d.Frame, d.Crank, d.Coupler, d.Follower)
+	for _, m := range [...]*rigid.Motion{&st.Crank, &st.Coupler, &st.Follower} {
+		off = max(off, math.Abs(r2.Norm(m.Pose.Axis)-1))
+	}
+	return off
 }
 
 func number(t *testing.T, s string) float64 {
