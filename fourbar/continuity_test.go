@@ -70,7 +70,18 @@ func TestSwingContinuous(t *testing.T) {
 				turns := (last - first) / rigid.Revolution / 4
 				near(t, "whole turns", turns, math.Round(turns), 1e-14)
 				wound[math.Round(turns)]++
-			} else if last-first > 2*math.Pi || first < -2*math.Pi || first > 2*math.Pi {
+				continue
+			}
+			var st, on fourbar.State
+			middle := rigid.Coordinate{Pos: (over.Lo + over.Hi) / 2, Vel: 1}
+			if solveOrRest(&st, l, middle) == nil {
+				middle.Pos += 3 * rigid.Revolution
+				if err := solveOrRest(&on, l, middle); err != nil {
+					t.Fatalf("%+v: %v", d, err)
+				}
+				near(t, "swing three turns on", on.Swing.Pos, st.Swing.Pos, 1e-9)
+			}
+			if last-first > 2*math.Pi || first < -2*math.Pi || first > 2*math.Pi {
 				t.Errorf("%+v: swings from %v to %v", d, first, last)
 			}
 		}

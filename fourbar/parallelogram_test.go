@@ -72,6 +72,9 @@ func TestFlattened(t *testing.T) {
 						t.Errorf("%+v from the follower at %v: %v", d, st.Swing.Pos, err)
 						continue
 					}
+					if !(back.Turn.Pos > -math.Pi && back.Turn.Pos <= math.Pi) {
+						t.Errorf("%+v from the follower at %v: turn at %v", d, st.Swing.Pos, back.Turn.Pos)
+					}
 					near(t, "turn back", rigid.Wrap(back.Turn.Pos-turn), 0, 1e-14*(1+math.Abs(1/first)))
 					near(t, "ω2 back", back.Turn.Vel, 3, 1e-13*(1+math.Abs(1/first)))
 					near(t, "α2 back", back.Turn.Acc, -2, 1e-11*(1+math.Abs(1/first)))

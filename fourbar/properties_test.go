@@ -127,8 +127,8 @@ func TestUnequalLengths(t *testing.T) {
 			continue
 		}
 		n++
-		if off := gap(&st, d); off > 1e-14 {
-			t.Fatalf("%+v at %+v: off by %v", d, in, off)
+		if gap, off := gap(&st, d), axes(&st); gap > 1e-14 || off > 3*eps {
+			t.Fatalf("%+v at %+v: open by %v, axes off by %v", d, in, gap, off)
 		}
 	}
 }

@@ -73,6 +73,7 @@ func TestSolversRefuse(t *testing.T) {
 		want  error
 	}{
 		{"beyond a limit", func(dst *fourbar.State) error { return rocker.Solve(dst, in{Pos: end + 1e-6}) }, rigid.ErrUnreachable},
+		{"just beyond a limit", func(dst *fourbar.State) error { return rocker.Solve(dst, in{Pos: end + 3e-13}) }, rigid.ErrUnreachable},
 		{"rates at a limit", func(dst *fourbar.State) error { return rocker.Solve(dst, in{Pos: end, Vel: 1}) }, rigid.ErrSingular},
 		{"acceleration at a limit", func(dst *fourbar.State) error { return rocker.Solve(dst, in{Pos: end, Acc: 1}) }, rigid.ErrSingular},
 		{"NaN", func(dst *fourbar.State) error { return l.Solve(dst, in{Pos: nan}) }, rigid.ErrNotFinite},

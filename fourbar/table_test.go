@@ -63,6 +63,9 @@ func TestTable(t *testing.T) {
 		if d := l.Dimensions(); !(gap(&st, d) <= 1e-14) {
 			t.Errorf("row %d %v: the loop is open by %.2g of the longest link", i, row[:11], gap(&st, d))
 		}
+		if off := axes(&st); off > 3*eps {
+			t.Errorf("row %d %v: an axis is off length 1 by %.2g", i, row[:11], off)
+		}
 		for j, got := range outputs(&st) {
 			name := rows[0][11+2*j]
 			bound := math.Abs(got) + number(t, row[12+2*j])
@@ -81,11 +84,15 @@ func TestTable(t *testing.T) {
 	t.Logf("worst, in eps: %.2v", worst)
 }
 
-// gap returns how far the loop is from closing, of the longest link, or the farthest
-// that the length of an axis is from 1.
+// gap returns how far the loop is from closing, of the longest link.
 func gap(st *fourbar.State, d fourbar.Dimensions) float64 {
 	p, q := st.Coupler.At(r2.Vec{X: d.Coupler}).Pos, st.Follower.At(r2.Vec{X: d.Follower}).Pos
-	off := r2.Norm(r2.Sub(p, q)) / max(d.Frame, d.Crank, d.Coupler, d.Follower)
+	return r2.Norm(r2.Sub(p, q)) / max(d.Frame, d.Crank, d.Coupler, d.Follower)
+}
+
+// axes returns the farthest that the length of an axis is from 1.
+func axes(st *fourbar.State) float64 {
+	off := 0.0
 	for _, m := range [...]*rigid.Motion{&st.Crank, &st.Coupler, &st.Follower} {
 		off = max(off, math.Abs(r2.Norm(m.Pose.Axis)-1))
 	}
