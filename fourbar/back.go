@@ -28,7 +28,7 @@ func (l *Linkage) SolveFollower(dst *State, swing rigid.Coordinate, knee rigid.S
 		return l.solveCellBack(dst, swing)
 	}
 	p := pose{follower: dyad.Link{Axis: direction(swing.Pos), Omega: swing.Vel, Alpha: swing.Acc}}
-	margin, err := l.solveDyad(&p, &l.byFollower, &p.follower, sign(knee), &p.coupler)
+	margin, err := l.solve(&l.byFollower, &dyad.Triangle{}, &p.crank, &p.coupler, &p.follower, sign(knee))
 	if err != nil {
 		return err
 	}
@@ -63,7 +63,7 @@ func (l *Linkage) SolveCoupler(dst *State, coupler rigid.Coordinate, lean rigid.
 	if l.dim.Branch == Contrary {
 		margin, err = l.contraryCoupler(&p, coupler, sign(lean))
 	} else {
-		margin, err = l.solveDyad(&p, &l.byCoupler, &p.coupler, sign(lean), &p.follower)
+		margin, err = l.solve(&l.byCoupler, &dyad.Triangle{}, &p.crank, &p.follower, &p.coupler, sign(lean))
 	}
 	if err != nil {
 		return err
@@ -74,20 +74,6 @@ func (l *Linkage) SolveCoupler(dst *State, coupler rigid.Coordinate, lean rigid.
 	dst.Swing.Pos = l.swing(dst.Turn.Pos, p.follower.Axis)
 	dst.Lean, dst.Margin = lean, margin
 	return nil
-}
-
-// solveDyad solves the dyad of crank and other for a driven link, all in p. The
-// arm is r as it comes: the errors of a short crank's direction and of its rate
-// are one error, which cancels in its pin's velocity. Seen from a long driven link
-// that is so of a part of the rate only, the smaller one.
-func (l *Linkage) solveDyad(p *pose, k *drive, driven *dyad.Link, side float64, other *dyad.Link) (margin float64, err error) {
-	var t dyad.Triangle
-	margin, err = l.solve(k, &t, &p.crank, other, driven, side)
-	p.arm = t.R
-	if k.long {
-		p.arm = r2.Scale(l.crank, p.crank.Axis)
-	}
-	return margin, err
 }
 
 // writeBack writes a pose found from the follower or the coupler, but for what
@@ -119,7 +105,7 @@ func (l *Linkage) writeBack(dst *State, p *pose) error {
 // follower's: its product with the coupler's length is d×u4, d from the crank pin
 // to the follower pivot, which keeps its digits where d is short.
 func (l *Linkage) kink(p *pose) float64 {
-	d := r2.Vec{X: l.frame - p.arm.X, Y: -p.arm.Y}
+	d := l.byCrank.span(p.crank.Axis)
 	if d.X*d.X+d.Y*d.Y < l.coupler*l.coupler {
 		return r2.Cross(d, p.follower.Axis) / l.coupler
 	}

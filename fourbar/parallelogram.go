@@ -45,7 +45,6 @@ func (l *Linkage) writeCell(dst *State, p *pose, in float64) error {
 	if in*0 != 0 {
 		return rigid.ErrNotFinite
 	}
-	p.arm = r2.Scale(l.crank, p.crank.Axis)
 	return l.writeBack(dst, p)
 }
 
@@ -121,7 +120,6 @@ func (l *Linkage) contraryCoupler(p *pose, in rigid.Coordinate, side float64) (m
 	}
 	p.crank.Axis = less(half, r2.Vec{X: cos, Y: sin})
 	p.follower.Axis = less(half, r2.Vec{X: cos, Y: -sin})
-	p.arm = r2.Scale(l.crank, p.crank.Axis)
 	if in.Vel != 0 || in.Acc != 0 {
 		if math.Abs(cos) < rigid.LeastMargin {
 			return 0, rigid.ErrSingular

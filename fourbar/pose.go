@@ -21,7 +21,6 @@ func (l *Linkage) solveRare(dst *State, turn rigid.Coordinate) error {
 	if err != nil {
 		return err
 	}
-	p.arm = r2.Scale(l.crank, p.crank.Axis)
 	if !l.write(dst, &p) {
 		return rigid.ErrNotFinite
 	}
@@ -34,10 +33,7 @@ func (l *Linkage) solveRare(dst *State, turn rigid.Coordinate) error {
 }
 
 // A pose is the motion of the three moving links in the mechanism's own axes.
-type pose struct {
-	crank, coupler, follower dyad.Link
-	arm                      r2.Vec // along the crank, for the motion of its pin
-}
+type pose struct{ crank, coupler, follower dyad.Link }
 
 // direction returns the unit vector at an angle.
 func direction(angle float64) r2.Vec {
@@ -50,19 +46,19 @@ func direction(angle float64) r2.Vec {
 // reports false, and writes nothing, where a rate is not finite.
 func (l *Linkage) write(dst *State, p *pose) bool {
 	w, al, w2 := p.crank.Omega, p.crank.Alpha, p.crank.Omega*p.crank.Omega
-	arm := l.mounted(p.arm)
+	axis := l.mounted(p.crank.Axis)
+	arm := r2.Scale(l.crank, axis)
 	acc := r2.Vec{X: -al*arm.Y - w2*arm.X, Y: al*arm.X - w2*arm.Y}
 	if acc.X*0+acc.Y*0+al*0+p.coupler.Alpha*0+p.follower.Alpha*0 != 0 { // NaN unless all are finite
 		return false
 	}
 	m := &dst.Crank
-	m.Pose.Origin, m.Pose.Axis = l.origin, l.mounted(p.crank.Axis)
+	m.Pose.Origin, m.Pose.Axis = l.origin, axis
 	m.Vel, m.Acc = r2.Vec{}, r2.Vec{}
 	m.Omega, m.Alpha = w, al
 
 	m = &dst.Coupler
-	m.Pose.Origin.X = l.origin.X + l.crank*dst.Crank.Pose.Axis.X
-	m.Pose.Origin.Y = l.origin.Y + l.crank*dst.Crank.Pose.Axis.Y
+	m.Pose.Origin = r2.Add(l.origin, arm)
 	m.Pose.Axis = l.mounted(p.coupler.Axis)
 	m.Vel.X, m.Vel.Y = -w*arm.Y, w*arm.X
 	m.Acc = acc
