@@ -89,8 +89,11 @@ func (k *RRR) Move(t *Triangle, ab, cb *Link, d, w, z r2.Vec, side float64) bool
 	}
 	f := side * math.Sqrt(p)
 	i, c := 0.5/d2, -2/p // while the root is on its way
-	k.set(t, d, i, u, v, x, f)
-	rx, ry, qx, qy := t.R.X, t.R.Y, t.Q.X, t.Q.Y
+	u, v, h := u*i, v*i, f*i // as in set
+	hx, hy := h*d.X, h*d.Y
+	rx, ry := u*d.X-hy, u*d.Y+hx
+	qx, qy := v*d.X-hy, v*d.Y+hx
+	t.R, t.Q, t.X, t.F = r2.Vec{X: rx, Y: ry}, r2.Vec{X: qx, Y: qy}, x, f
 
 	c *= f // −2/F
 	w1, w2 := c*(w.X*qx+w.Y*qy), c*(w.X*rx+w.Y*ry)
