@@ -53,10 +53,12 @@ func (b *Branch) UnmarshalText(text []byte) error { return branches.Read(b, text
 
 // Causes for which dimensions are refused.
 var (
-	errClose   = dims.Because(rigid.ErrUnreachable, "the longest link must be shorter than the other three together")
-	errBranch  = dims.Because(rigid.ErrInput, "the branches are Open, Crossed, Parallel and Contrary")
-	errUnequal = dims.Because(rigid.ErrInput, "a parallelogram needs Frame = Coupler and Crank = Follower")
-	errRhombus = dims.Because(rigid.ErrChangePoint, "Contrary needs Frame ≠ Crank")
+	errClose     = dims.Because(rigid.ErrUnreachable, "the longest link must be shorter than the other three together")
+	errBranch    = dims.Because(rigid.ErrInput, "the branches are Open, Crossed, Parallel and Contrary")
+	errUnequal   = dims.Because(rigid.ErrInput, "a parallelogram needs Frame = Coupler and Crank = Follower")
+	errRhombus   = dims.Because(rigid.ErrChangePoint, "Contrary needs Frame ≠ Crank")
+	errPositions = dims.Because(rigid.ErrSingular, "the precision positions do not determine the lengths")
+	errEndless   = dims.Because(rigid.ErrUnreachable, "the precision positions ask for links without end")
 )
 
 // check returns every *rigid.DimensionError of the dimensions, joined.

@@ -223,5 +223,5 @@ func ExamplePrecision() {
 	_, err := fourbar.Freudenstein(0.400, [3]fourbar.Precision{{Turn: 0.2, Swing: 1}, {Turn: 0.6, Swing: 1}, {Turn: 1.0, Swing: 1}})
 	fmt.Println(err)
 	// Output:
-	// twopoint: singular position: the rates are not determined
+	// twopoint: the precision positions do not determine the lengths
 }

@@ -13,6 +13,3 @@ func (l *Linkage) Coefficients(turn float64) (rigid.Coefficients, error) {
 	}
 	return rigid.Coefficients{In: turn, Out: st.Swing.Pos, First: st.Swing.Vel, Second: st.Swing.Acc}, nil
 }
-
-// Law returns the law of motion of Swing for Turn: Coefficients as a rigid.Law.
-func (l *Linkage) Law() rigid.Law { return l.Coefficients }

@@ -123,7 +123,7 @@ func TestSolversRefuse(t *testing.T) {
 func TestNoAllocation(t *testing.T) {
 	l := mustNew(t, crankRocker)
 	contrary := mustNew(t, fourbar.Dimensions{Frame: 2, Crank: 1, Coupler: 2, Follower: 1, Branch: fourbar.Contrary})
-	law := l.Law()
+	law := rigid.Law(l.Coefficients)
 	var st fourbar.State
 	in := rigid.Coordinate{Pos: 1, Vel: 2}
 	for name, f := range map[string]func() error{

@@ -44,9 +44,9 @@ type Generator struct {
 //
 // A solution of the equation may still not do: ErrBranch and ErrOrder. The crank
 // must pass the positions in one direction: Turn of the second between those of the
-// first and the third (else ErrOrder). ErrSingular where the positions do not
-// determine the lengths, ErrUnreachable where they ask for links without end,
-// ErrNotFinite for an angle that is not finite, and for a frame that
+// first and the third (else ErrOrder). An error that wraps ErrSingular where the
+// positions do not determine the lengths, ErrUnreachable where they ask for links
+// without end; ErrNotFinite for an angle that is not finite, and for a frame that
 // is no length a *rigid.DimensionError.
 func Freudenstein(frame float64, at [3]Precision) (Generator, error) {
 	if err := dims.Length(frame); err != nil {
@@ -76,14 +76,14 @@ func generator(d float64, at [3]Precision) (Generator, error) {
 	}
 	det := p[0]*q[1] - p[1]*q[0]
 	if scale := math.Hypot(p[0], p[1]) * math.Hypot(q[0], q[1]); !(math.Abs(det) > 1e-13*scale) {
-		return Generator{}, rigid.ErrSingular
+		return Generator{}, errPositions
 	}
 	k1, k2 := (w[0]*q[1]-w[1]*q[0])/det, (p[0]*w[1]-p[1]*w[0])/det
 	k3 := math.Cos(at[0].Turn-at[0].Swing) - k1*math.Cos(at[0].Swing) + k2*math.Cos(at[0].Turn)
 	a, c := d/k1, d/k2
 	b2 := a*a + c*c + d*d - 2*a*c*k3
 	if math.IsInf(a, 0) || math.IsInf(c, 0) || !(b2 > 0) {
-		return Generator{}, rigid.ErrUnreachable
+		return Generator{}, errEndless
 	}
 	g := Generator{Dimensions: Dimensions{Frame: d, Crank: math.Abs(a), Coupler: math.Sqrt(b2), Follower: math.Abs(c)}}
 	if a < 0 {

@@ -1,6 +1,7 @@
 package fourbar_test
 
 import (
+	"errors"
 	"fmt"
 	"math"
 	"math/rand/v2"
@@ -66,7 +67,7 @@ func TestFreudensteinRefuses(t *testing.T) {
 	}
 	// The middle position asked for out of turn.
 	at := p(0.7, 1.0283, 1.8, 1.5, 1.1, 1.2)
-	if _, err := fourbar.Freudenstein(1, at); err != fourbar.ErrOrder && err != rigid.ErrUnreachable {
+	if _, err := fourbar.Freudenstein(1, at); !errors.Is(err, fourbar.ErrOrder) && !errors.Is(err, rigid.ErrUnreachable) {
 		t.Errorf("out of order: %v", err)
 	}
 }

@@ -192,7 +192,7 @@ func TestLawOfALinkage(t *testing.T) {
 		}
 	}
 	a, err := law.Extremes(rigid.Interval{Lo: 0, Hi: rigid.Revolution})
-	b, err2 := l.Law().Extremes(rigid.Interval{Lo: 0, Hi: rigid.Revolution})
+	b, err2 := rigid.Law(l.Coefficients).Extremes(rigid.Interval{Lo: 0, Hi: rigid.Revolution})
 	if err != nil || err2 != nil || len(a) != len(b) || len(a) != 2 || math.Abs(a[0].In-b[0].In) > 1e-12 {
 		t.Errorf("%+v, %+v, %v, %v", a, b, err, err2)
 	}

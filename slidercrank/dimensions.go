@@ -45,10 +45,11 @@ func (b *Branch) UnmarshalText(text []byte) error { return branches.Read(b, text
 var (
 	errBranch   = dims.Because(rigid.ErrInput, "the branches are Ahead and Behind")
 	errShort    = dims.Because(rigid.ErrUnreachable, "crank and rod together must be longer than the offset")
-	errSlot     = dims.Because(rigid.ErrUnreachable, "the offset must be smaller than crank and centre distance together")
-	errFlat     = dims.Because(rigid.ErrChangePoint, "crank and centre distance differ by just the offset, so that the motion could go on in two ways: a change point")
+	errSlot     = dims.Because(rigid.ErrUnreachable, "the slot's offset must be smaller than crank and centre distance together")
+	errFlat     = dims.Because(rigid.ErrChangePoint, "crank and centre distance differ by just the slot's offset, so that the motion could go on in two ways: a change point")
 	errRam      = dims.Because(rigid.ErrUnreachable, "the rod reaches the guide at no angle of the crank")
 	errParallel = dims.Because(rigid.ErrSingular, "the two guides are parallel")
+	errAlong    = dims.Because(rigid.ErrSingular, "the slot lies along the travel")
 )
 
 // check returns every *rigid.DimensionError of the dimensions, joined.

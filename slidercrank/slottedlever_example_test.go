@@ -59,7 +59,7 @@ func ExampleLeverDimensions() {
 	_, err := slidercrank.NewSlottedLever(slidercrank.LeverDimensions{Crank: 0.2, Centre: 0.2})
 	fmt.Println(err)
 	// Output:
-	// twopoint: dimensions: crank and centre distance differ by just the offset, so that the motion could go on in two ways: a change point
+	// twopoint: dimensions: crank and centre distance differ by just the slot's offset, so that the motion could go on in two ways: a change point
 }
 
 func ExampleLeverState() {

@@ -54,7 +54,7 @@ func NewScotchYoke(d YokeDimensions) (*ScotchYoke, error) {
 	f.Mount(d.Mount)
 	sin, cos := math.Sincos(d.Tilt)
 	if math.Abs(cos) <= parallel {
-		f.Add("Tilt", d.Tilt, errParallel)
+		f.Add("Tilt", d.Tilt, errAlong)
 	}
 	if !f.OK() {
 		return nil, f.Err()

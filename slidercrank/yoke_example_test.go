@@ -59,5 +59,5 @@ func ExampleYokeDimensions() {
 	fmt.Println(err)
 	// Output:
 	// stroke 34.6 mm with the slot at 30°
-	// twopoint: dimension Tilt = 1.5707963267948966: the two guides are parallel
+	// twopoint: dimension Tilt = 1.5707963267948966: the slot lies along the travel
 }

@@ -88,7 +88,7 @@ func (k *RRR) Move(t *Triangle, ab, cb *Link, d, w, z r2.Vec, side float64) bool
 		return false
 	}
 	f := side * math.Sqrt(p)
-	i, c := 0.5/d2, -2/p // while the root is on its way
+	i, c := 0.5/d2, -2/p     // while the root is on its way
 	u, v, h := u*i, v*i, f*i // as in set
 	hx, hy := h*d.X, h*d.Y
 	rx, ry := u*d.X-hy, u*d.Y+hx
