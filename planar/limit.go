@@ -99,7 +99,7 @@ func (s *State) approach(to float64, err error) Limit {
 	l.In = s.now.in[0].Pos
 	switch m := s.Margin(); {
 	case l.Kind == ChangePoint:
-		s.extend(&l, m*ahead)
+		s.extend(&l, math.Max(m, 1e-4)*ahead) // with less the margins would differ by rounding too much
 	case l.Kind == DriveEnd && m > 1e-6:
 		s.extrapolate(&l, ahead)
 	}

@@ -21,7 +21,8 @@ const (
 //
 // The linkage goes along the straight path from the inputs before to these, and
 // stays in its assembly mode: it never jumps. No velocity or acceleration asks for
-// the place alone, with all rates zero; that is answered at a limit of a drive too.
+// the place alone, with all rates zero; that is answered at a limit of a drive too, to
+// which a group of higher class comes as near as a margin of 1e-7.
 //
 // Errors leave the State as it was, and Stop tells more. They wrap
 // rigid.ErrUnreachable where a group can't follow, at the place given or on the
@@ -37,7 +38,7 @@ func (s *State) Move(in ...rigid.Coordinate) error {
 		return rigid.ErrInput
 	}
 	p := s.l.program
-	finite, moving, steps := 0.0, false, 1.0
+	finite, moving, steps := 0.0, false, 0.0
 	for i := range in {
 		c := &in[i]
 		finite += c.Pos*0 + c.Vel*0 + c.Acc*0
@@ -57,7 +58,7 @@ func (s *State) Move(in ...rigid.Coordinate) error {
 		s.stop = stop{err: ErrTooFar, op: -1}
 		return ErrTooFar
 	}
-	if steps == 1 && len(p.newtons) == 0 {
+	if steps <= 1 && len(p.newtons) == 0 {
 		st, op := p.solve(s.now, s.next, moving)
 		if st == solved {
 			return s.accept(s.next)

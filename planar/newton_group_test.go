@@ -23,6 +23,11 @@ type swap struct {
 }
 
 func (w *swap) linkages(t testing.TB) (easy, hard *Linkage) {
+	if w.from == w.to { // as it was drawn
+		first := w.design.Drives[0].(Turn)
+		w.from = w.guess[first.Of].Angle - w.guess[first.From].Angle
+		w.to = w.from + 0.4
+	}
 	easy, err := New(w.design)
 	if err != nil {
 		t.Fatalf("%s: %v", w.name, err)
@@ -157,11 +162,6 @@ func TestSwaps(t *testing.T) {
 		}
 		if g := groups(hard); w.groups != "" && g != w.groups {
 			t.Errorf("%s: groups %s", w.name, g)
-		}
-		first := easy.Design().Drives[0]
-		if w.from == w.to { // as it was drawn
-			w.from = w.guess[first.(Turn).Of].Angle - w.guess[first.(Turn).From].Angle
-			w.to = w.from + 0.4
 		}
 		truth, err := easy.Assemble(w.guess, rigid.Coordinate{Pos: w.from})
 		if err != nil {

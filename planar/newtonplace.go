@@ -18,6 +18,7 @@ const (
 	settled   = 1e-9  // the square of a correction so small is rounding
 	reused    = 1e-5  // after a correction so small the factors are good for one more
 	rounding  = 1e-16 // what the next correction would be, to end with
+	blurred   = 1e-7  // with a margin so small rounding hides on which side of a limit a place is
 	mostTurns = 16
 )
 
@@ -61,7 +62,7 @@ func (n *newton) place(to *scene, p, d *desk) status {
 		}
 		size = next
 	}
-	if !d.keeps(sign) || len(n.cells) > 0 && n.parted(d) {
+	if !d.keeps(sign) || d.blurs(p) || len(n.cells) > 0 && n.parted(d) {
 		return n.fail(d)
 	}
 	n.pose(to, d)
@@ -71,6 +72,12 @@ func (n *newton) place(to *scene, p, d *desk) status {
 // keeps factors the slopes, and reports whether their determinant has the sign given,
 // or that is 0.
 func (d *desk) keeps(sign float64) bool { return d.factor() && d.last[detSign]*sign >= 0 }
+
+// blurs reports whether the place is too near to a singular one to be told from one
+// beyond a limit, and nearer than the place p before.
+func (d *desk) blurs(p *desk) bool {
+	return !(d.last[detSquare] >= blurred*blurred) && !(d.margin() >= math.Min(blurred, p.margin()))
+}
 
 // closes reports whether what the loops miss is rounding.
 func (n *newton) closes(d *desk) bool {

@@ -218,10 +218,14 @@ func (n *newton) spread(sc *scene, d *desk) {
 	}
 }
 
-// agrees reports whether path rates at both ends of a step fit each other:
-// |v₁ − v₀ − a₀| ≤ 0.1 of every unknown, with the rates by the same unit of time as
-// in place, those of the start in p. It notes how the path goes on, by the quintic
-// through both ends with their rates, for t from −1 at the start to 0:
+// agrees reports whether path rates at both ends of a step fit each other, with the
+// rates by the same unit of time as in place, those of the start in p: |v₁ − v₀ − a₀|
+// of every unknown is at most 0.1 and hardly more than the largest v₁, v₀ or a₀, which
+// it is where a cam's accelerations jump. Next to a limit, where unknowns go but little,
+// the latter tells a place beyond it from one on the way.
+//
+// It notes how the path goes on, by the quintic through both ends with their rates, for
+// t from −1 at the start to 0:
 //
 //	q = q₁ + v₁t + a₁t²/2 + c₃t³ + c₄t⁴ + c₅t⁵
 //
@@ -231,18 +235,17 @@ func (n *newton) spread(sc *scene, d *desk) {
 func (n *newton) agrees(d, p *desk) bool {
 	k := p.last[pathScale]
 	known := d.last[pathSpeed] != 0
+	off, most := 0.0, 0.0
 	for i, v := range d.vel {
 		v0, a0, a := k*p.vel[i], k*k*p.acc[i], d.acc[i]
-		if !(math.Abs(v-v0-a0) <= widest) {
-			return false
-		}
+		off, most = max(off, math.Abs(v-v0-a0)), max(most, math.Abs(v), math.Abs(v0), math.Abs(a0))
 		if known {
 			x, y, z := v-a/2-n.gone(d, p, i), v0-v+a, a0-a
 			l := d.later[3*i : 3*i+3]
 			l[0], l[1], l[2] = -10*x-4*y-z/2, -15*x-7*y-z, -6*x-3*y-z/2
 		}
 	}
-	return true
+	return off <= min(widest, 1.05*most+settled)
 }
 
 // gone returns how far an unknown went from p to d.

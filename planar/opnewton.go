@@ -60,22 +60,26 @@ func (o *group) choose(sc *scene) status  { return o.n.assemble(sc, &sc.desks[o.
 //
 //	ẍ/ẋ² = 1/x
 //
-// which is about 1/margin; where motions part the rates stay as they are.
+// which is about 1/margin; where motions part the rates stay as they are. On the way
+// from a limit the unknowns slow down.
 func (p *program) stuck(op int, at *scene) status {
 	const low, parts = 0.05, 0.03
 	g, ok := p.ops[op].(*group)
 	if !ok {
 		return tooLong
 	}
-	d, margin, v, a := &at.desks[g.at], g.margin(at), 0.0, 0.0
+	d, margin, v, a, slows := &at.desks[g.at], g.margin(at), 0.0, 0.0, 0.0
 	for i := range d.vel {
 		v, a = math.Max(v, math.Abs(d.vel[i])), math.Max(a, math.Abs(d.acc[i]))
+		slows -= d.vel[i] * d.acc[i]
 	}
 	switch {
 	case !(margin < low):
 		return tooLong
 	case a*margin < parts*v*v:
 		return singular
+	case slows > 0:
+		return tooLong
 	}
 	return unreachable
 }

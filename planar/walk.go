@@ -11,10 +11,12 @@ type walk struct {
 	*State
 	from, to *scene
 	t        float64 // how far along the path from is
-	legs     [mostHalvings + 2]leg
+	legs     [mostHalvings + 1]leg
 	top      int
 	suspect  suspect
-	paced    int // the first op without path rates at the end of the last step, −1 where none were solved
+	paced    int  // the first op without path rates at the end of the last step, −1 where none were solved
+	close    bool // whether the last step was cut as it is next to a limit
+	failed   bool // whether the last step was too long
 }
 
 // A leg is a step that lies ahead: its end, and how often it has been halved.
@@ -33,9 +35,10 @@ type suspect struct {
 	pending   bool
 }
 
-// walk moves the State to s.to in n equal steps, or more.
+// walk moves the State to s.to in n equal steps, or more. In none it stays where it is,
+// and only its rates change.
 func (s *State) walk(n int, moving bool) error {
-	w := walk{State: s, from: s.spare, to: s.next}
+	w := walk{State: s, from: s.spare, to: s.next, paced: -1}
 	w.from.set(s.now)
 	w.suspect.op = -1
 	steps := 0
@@ -44,19 +47,23 @@ func (s *State) walk(n int, moving bool) error {
 		for w.top >= 0 {
 			l := &w.legs[w.top]
 			st, op, cut := w.step(l.t)
+			w.failed = st == tooLong
 			switch st {
 			case solved:
 				if steps++; steps > mostSteps {
-					return s.fail(op, tooLong, w.t, l.t, w.to)
+					s.stop = stop{err: ErrTooFar, op: -1, done: w.t, blocked: l.t}
+					return ErrTooFar
 				}
 				w.t = l.t
 				w.from, w.to = w.to, w.from
 				w.top--
 			case tooLong:
-				if l.depth == mostHalvings {
+				if l.depth == mostHalvings || w.top == mostHalvings {
 					return s.fail(op, s.l.program.stuck(op, w.from), w.t, l.t, w.to)
 				}
-				l.depth++
+				if !w.close {
+					l.depth++
+				}
 				w.top++
 				w.legs[w.top] = leg{w.t + cut*(l.t-w.t), l.depth}
 			default:
@@ -102,7 +109,7 @@ func (p *program) rate(sc *scene) int {
 func (w *walk) step(t float64) (st status, op int, cut float64) {
 	p := w.l.program
 	size := 0.0
-	w.paced = -1
+	w.paced, w.close = -1, false
 	for i := range w.to.in {
 		a, b := w.now.in[i].Pos, w.State.to[i].Pos
 		pos := a + t*(b-a)
@@ -120,7 +127,7 @@ func (w *walk) step(t float64) (st status, op int, cut float64) {
 		rated, fresh = p.rate(w.from), true
 	}
 	if st, op = w.place(); st != solved {
-		return st, op, 0.5
+		return st, op, w.pace()
 	}
 	if w.suspect.pending {
 		w.judge()
@@ -143,7 +150,7 @@ func (w *walk) step(t float64) (st status, op int, cut float64) {
 	}
 	for i, o := range p.ops {
 		if g, ok := o.(*group); ok && rated == len(p.ops) && !g.n.agrees(&w.to.desks[g.at], &w.from.desks[g.at]) {
-			return tooLong, i, 0.5
+			return tooLong, i, w.pace()
 		}
 	}
 	return solved, 0, 0
@@ -174,7 +181,7 @@ func (w *walk) place() (status, int) {
 func (w *walk) crossed(h float64, rated int) (op int, cut float64, ok bool) {
 	for _, i := range w.doubt {
 		if i > rated {
-			return i, 0.5, true // no path rates here: halve until the guard is content
+			return i, w.pace(), true // no path rates here: cut until the guard is content
 		}
 		o := w.l.program.ops[i].(crosser)
 		a, n := o.rooms(w.from)
@@ -191,6 +198,9 @@ func (w *walk) crossed(h float64, rated int) (op int, cut float64, ok bool) {
 			}
 			if value > off {
 				continue
+			}
+			if off > a[k].size { // next to a limit of another dyad: the cubic tells nothing
+				return i, w.pace(), true
 			}
 			w.suspect = suspect{op: i, room: k, predicted: value, off: w.suspect.off, size: a[k].size, pending: true}
 			return i, min(max(at, 1./16), 15./16), true
