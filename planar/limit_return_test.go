@@ -95,3 +95,37 @@ func TestNotBeyondLimit(t *testing.T) {
 		}
 	}
 }
+
+// However short the steps, none leads onto another motion where motions part, not even
+// one that ends there to rounding.
+func TestShortStepsToChangePoint(t *testing.T) {
+	cell, _ := swingThrough().linkages(t)
+	tried := 0
+	for s, err := range cell.Modes(rigid.Coordinate{Pos: 1.6}) {
+		if err != nil {
+			t.Fatal(err)
+		}
+		if lo, _, err := s.Limits(rigid.Interval{Lo: -3, Hi: 5}); err != nil || lo.Kind != ChangePoint {
+			continue
+		}
+		tried++
+		for _, h := range []float64{1e-2, 1e-3, 1e-4, 1e-5, 1e-6, 1e-7} {
+			for k := range 25 {
+				c := s.Clone()
+				if err := c.Move(rigid.Coordinate{Pos: flatAt[0] + 5*h}); err != nil {
+					t.Fatalf("to %g before the change point: %v", 5*h, err)
+				}
+				for i := 0; i < 7 && err == nil; i++ {
+					err = c.Move(rigid.Coordinate{Pos: flatAt[0] + h*(5-float64(i)-float64(k)/25)})
+				}
+				if !errors.Is(err, rigid.ErrSingular) {
+					t.Errorf("in steps of %g from %d/25 of one: %v", h, k, err)
+				}
+				err = nil
+			}
+		}
+	}
+	if tried != 1 {
+		t.Errorf("%d modes come to a change point", tried)
+	}
+}

@@ -34,7 +34,11 @@ const (
 //
 // Move doesn't allocate, even when it fails.
 func (s *State) Move(in ...rigid.Coordinate) error {
-	if s.l == nil || len(in) != len(s.to) {
+	if s.l == nil {
+		return rigid.ErrInput
+	}
+	if len(in) != len(s.to) {
+		s.stop = stop{err: rigid.ErrInput, op: -1}
 		return rigid.ErrInput
 	}
 	p := s.l.program
@@ -48,6 +52,7 @@ func (s *State) Move(in ...rigid.Coordinate) error {
 	}
 	s.stop = stop{}
 	if finite != 0 { // NaN
+		s.stop = stop{err: rigid.ErrNotFinite, op: -1}
 		return rigid.ErrNotFinite
 	}
 	if !s.l.extended(in) {
@@ -108,7 +113,7 @@ func (s *State) accept(to *scene) error {
 	}
 	for i := range s.l.program.checks {
 		if miss := s.l.program.miss(i, to); !(miss <= s.most[i]) {
-			s.stop = stop{err: s.l.program.breaches[i], op: -1, gap: miss, done: 1, blocked: 1}
+			s.stop = stop{err: s.l.program.breaches[i], op: -1, gap: miss, blocked: 1}
 			return s.stop.err
 		}
 	}

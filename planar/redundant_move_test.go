@@ -81,8 +81,13 @@ func TestBrokenConstraint(t *testing.T) {
 			t.Errorf("at %v: %v", to, err)
 		}
 		stop, ok := s.Stop()
-		if !ok || stop.Err != err || !(stop.Gap > 6e-9 && stop.Gap < 2e-8) || math.IsNaN(stop.Done) {
+		if !ok || stop.Err != err || !(stop.Gap > 6e-9 && stop.Gap < 2e-8) || !(stop.Done > 0 && stop.Done < 1) {
 			t.Errorf("at %v: %+v", to, stop)
+		}
+		from := s.Inputs()[0].Pos
+		part := func(d float64) error { return s.Clone().Move(at(from + d*(to-from))) }
+		if err, beyond := part(stop.Done), part(stop.Done+1e-6); err != nil || !errors.Is(beyond, ErrInconsistent) {
+			t.Errorf("at %v: %v at the part %v of the way, %v beyond", to, err, stop.Done, beyond)
 		}
 		return
 	}

@@ -11,7 +11,7 @@ type Stop struct {
 	Err   error   // what Move returned
 	Group int     // index into Linkage.Groups of the group that can't follow, or −1
 	Links []Link  // its links
-	Done  float64 // how far along the path, from 0 to 1, the linkage can go; within 1e-9 short of the obstacle
+	Done  float64 // how far along the path, from 0 to 1, the linkage can go; within 1e-9 short of the obstacle. 0 for no path, or one too long
 	Gap   float64 // m: how far the group's loop is from closing where the Move last tried; 0 where it closes
 }
 
@@ -48,7 +48,7 @@ func (s *State) Stop() (Stop, bool) {
 	if out.Group >= 0 {
 		out.Links = slices.Clone(s.l.program.groups[out.Group].Links)
 	}
-	if at.blocked < 1 || at.done < 1 {
+	if at.blocked > at.done {
 		out.Done = s.reach(at.done, at.blocked)
 	}
 	s.stop = at

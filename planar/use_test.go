@@ -30,16 +30,22 @@ func TestBadUse(t *testing.T) {
 			t.Errorf("%s: %q", what, err)
 		}
 	}
+	stopped := func(want error) {
+		t.Helper()
+		if stop, ok := s.Stop(); !ok || stop.Err != want || stop.Group != -1 || stop.Done != 0 {
+			t.Errorf("want %v: %+v, %v", want, stop, ok)
+		}
+	}
 	is("no input", s.Move(), rigid.ErrInput)
+	stopped(rigid.ErrInput)
 	is("two inputs", s.Move(at(1), at(1)), rigid.ErrInput)
 	for _, c := range []rigid.Coordinate{{Pos: nan}, {Vel: nan}, {Acc: nan}, {Pos: inf}, {Vel: -inf}, {Acc: inf}} {
 		is("not finite", s.Move(c), rigid.ErrNotFinite)
+		stopped(rigid.ErrNotFinite)
 	}
 	is("overflow", s.Move(rigid.Coordinate{Pos: 1, Vel: 1e200}), rigid.ErrNotFinite)
 	is("too far", s.Move(at(1e3)), ErrTooFar)
-	if stop, ok := s.Stop(); !ok || stop.Err != ErrTooFar || stop.Group != -1 {
-		t.Errorf("too far: %+v", stop)
-	}
+	stopped(ErrTooFar)
 	is("another linkage", s.Set(mode(t, l.Design(), ".+", at(1))), rigid.ErrInput)
 	if far(l, s, before) != 0 {
 		t.Error("moved")
