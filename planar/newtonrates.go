@@ -220,8 +220,8 @@ func (n *newton) spread(sc *scene, d *desk) {
 
 // agrees reports whether path rates at both ends of a step fit each other, with the
 // rates by the same unit of time as in place, those of the start in p: |v₁ − v₀ − a₀|
-// of every unknown is at most 0.1 and hardly more than the largest v₁, v₀ or a₀, which
-// it is where a cam's accelerations jump. Next to a limit, where unknowns go but little,
+// of every unknown is at most 0.1 and hardly more than the largest v₁ or v₀, or with
+// cams, whose accelerations may jump, a₀. Next to a limit, where unknowns go but little,
 // the latter tells a place beyond it from one on the way.
 //
 // It notes how the path goes on, by the quintic through both ends with their rates, for
@@ -238,7 +238,10 @@ func (n *newton) agrees(d, p *desk) bool {
 	off, most := 0.0, 0.0
 	for i, v := range d.vel {
 		v0, a0, a := k*p.vel[i], k*k*p.acc[i], d.acc[i]
-		off, most = max(off, math.Abs(v-v0-a0)), max(most, math.Abs(v), math.Abs(v0), math.Abs(a0))
+		off, most = max(off, math.Abs(v-v0-a0)), max(most, math.Abs(v), math.Abs(v0))
+		if len(n.customs) > 0 {
+			most = max(most, math.Abs(a0))
+		}
 		if known {
 			x, y, z := v-a/2-n.gone(d, p, i), v0-v+a, a0-a
 			l := d.later[3*i : 3*i+3]

@@ -8,7 +8,7 @@ import (
 
 // pace returns at which part a step that was too long is best cut: in the middle, but
 // next to a limit where a step may go. There every motion is as √δ of the distance δ,
-// with v/a = ∓2δ of its path rates: away from the limit a step may go on to 3δ, and
+// with v/a = ∓2δ of its path rates: away from the limit a step may go on to 2δ, and
 // towards it must leave some of δ.
 func (w *walk) pace() float64 {
 	w.from.rest()
@@ -23,9 +23,9 @@ func (w *walk) pace() float64 {
 		a += r2.Norm2(m.Acc) + arm*m.Alpha*m.Alpha
 		both += r2.Dot(m.Vel, m.Acc) + arm*m.Omega*m.Alpha
 	}
-	cut, most := math.Sqrt(v/a), 0.5
+	cut, most := 0.5*math.Sqrt(v/a), 0.5
 	if both > 0 {
-		if cut *= 0.4; !w.failed {
+		if cut *= 0.8; !w.failed {
 			most = 0.9 // the end of the step may be next to the limit
 		}
 	}
