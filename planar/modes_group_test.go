@@ -103,7 +103,7 @@ func TestModesOfPlatforms(t *testing.T) {
 			off, margin := math.Inf(1), 1.0
 			for _, s := range modes {
 				got := s.Motion(1).Pose
-				d := max(r2.Norm(r2.Sub(got.Origin, want.Origin))/size, r2.Norm(r2.Sub(got.Axis, want.Axis)))
+				d := max(r2.Norm(r2.Sub(got.Origin, want.Origin))/(size*max(1, math.Hypot(p[0], p[1]))), r2.Norm(r2.Sub(got.Axis, want.Axis)))
 				if d < off {
 					off, margin = d, s.Margin()
 				}
