@@ -145,10 +145,10 @@ func (s *State) fitter(log iter.Seq2[Sample, error], c Calibration) (*fitter, er
 	f.machine()
 	check := checker{d: &f.all}
 	for i, o := range c.Outputs {
-		check.drive(i, o)
+		check.drive("Outputs", i, o)
 	}
 	if !check.OK() {
-		return nil, fmt.Errorf("outputs: %w", errors.Join(check.Faults...))
+		return nil, errors.Join(check.Faults...)
 	}
 	for i, m := range c.By {
 		if len(m.Of) == 0 {

@@ -5,6 +5,7 @@ import (
 	"iter"
 	"math"
 	"slices"
+	"strings"
 	"testing"
 
 	. "example.com/twopoint/planar"
@@ -61,6 +62,9 @@ func TestCalibrateSays(t *testing.T) {
 		if c, err := st.Calibrate(x.log, x.c); !errors.Is(err, x.want) || c != nil {
 			t.Errorf("%s: %+v, %v", x.name, c, err)
 		}
+	}
+	if _, err := st.Calibrate(played(constant), Calibration{Outputs: []Drive{rocker[0], nil}, By: by}); err == nil || !strings.Contains(err.Error(), "Outputs[1]") {
+		t.Errorf("of a second output that is nil: %v", err)
 	}
 	if c, err := new(State).Calibrate(played(constant), Calibration{Outputs: rocker, By: by}); !errors.Is(err, rigid.ErrInput) || c != nil {
 		t.Errorf("a zero State: %v, %v", c, err)

@@ -22,7 +22,10 @@ type Curve func(t float64) rigid.Point
 //	c = r·e,  c′ = r′·e + r·e⊥,  c″ = (r″ − r)·e + 2r′·e⊥,  e = (cos t, sin t)
 func Polar(radius rigid.Law) Curve {
 	return func(t float64) rigid.Point {
-		k, err := radius(t)
+		k, err := rigid.Coefficients{}, rigid.ErrInput
+		if radius != nil {
+			k, err = radius(t)
+		}
 		if err != nil {
 			k.Out = math.NaN()
 		}

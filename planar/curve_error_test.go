@@ -10,6 +10,16 @@ import (
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
+// A curve by a law that is none has no point, and one of a law with a gap none in it.
+func TestPolarWithoutRadius(t *testing.T) {
+	gap := func(in float64) (rigid.Coefficients, error) { return rigid.Coefficients{Out: 1}, rigid.ErrUnreachable }
+	for _, c := range []Curve{Polar(nil), Polar(gap)} {
+		if p := c(1); !math.IsNaN(p.Pos.X) || !math.IsNaN(p.Pos.Y) {
+			t.Errorf("%+v", p)
+		}
+	}
+}
+
 // TestBadProfiles refuses the package's own Constraints where their numbers are of no use.
 func TestBadProfiles(t *testing.T) {
 	good := Profile{On: Link(1).Line(0.02, 0, 0), Curve: Circle(0.05), Over: round, Closed: true}

@@ -18,7 +18,7 @@ func (d *Design) validate() error {
 		c.joint(i, j)
 	}
 	for i, m := range d.Drives {
-		c.drive(i, m)
+		c.drive("Drives", i, m)
 	}
 	c.guess()
 	if c.OK() {
@@ -109,9 +109,9 @@ func (c *checker) joint(i int, j Joint) {
 	}
 }
 
-func (c *checker) drive(i int, m Drive) {
+func (c *checker) drive(list string, i int, m Drive) {
 	before := len(c.Faults)
-	at := fmt.Sprintf("Drives[%d]", i)
+	at := fmt.Sprintf("%s[%d]", list, i)
 	switch m := m.(type) {
 	case Turn:
 		c.two(at, m.Of, m.From)
