@@ -209,8 +209,11 @@ func (c *checker) guess() {
 		c.wrong("Guess has %d placements for %d links", len(c.d.Guess), len(c.d.Links))
 		return
 	}
-	for i, g := range c.d.Guess[1:] {
-		at := fmt.Sprintf("Guess[%d]", i+1)
+	for i, g := range c.d.Guess {
+		if i == 0 {
+			continue // of the frame
+		}
+		at := fmt.Sprintf("Guess[%d]", i)
 		c.Distance(at+".X", g.X)
 		c.Distance(at+".Y", g.Y)
 		c.Number(at+".Angle", g.Angle)
