@@ -23,11 +23,11 @@ import (
 // rigid.ErrInput (a wrong number of placements or inputs, no guess at all, a
 // Linkage that no New made), rigid.ErrNotFinite or ErrTooFar.
 func (l *Linkage) Assemble(guess []rigid.Placement, in ...rigid.Coordinate) (*State, error) {
-	if guess == nil && l.system != nil {
+	if guess == nil && l.program != nil {
 		guess = l.design.Guess
 	}
 	switch {
-	case l.system == nil:
+	case l.program == nil:
 		return nil, rigid.ErrInput
 	case guess == nil:
 		return nil, fmt.Errorf("%w: no guess, and none in the design", rigid.ErrInput)

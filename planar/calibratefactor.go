@@ -93,7 +93,7 @@ func (f *fitter) unit(j int) float64 {
 			return 1
 		}
 	}
-	return f.s.l.system.length
+	return f.s.l.program.length
 }
 
 // step returns the damped step, without what the readings cannot tell apart, and the

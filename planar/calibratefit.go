@@ -144,7 +144,7 @@ func (f *fitter) result() (*Calibrated, error) {
 	}
 	c.Alike = p.sets(rank)
 	for i, span := range f.span {
-		if span.Hi-span.Lo <= 1e-9*math.Min(1, f.s.l.system.length) {
+		if span.Hi-span.Lo <= 1e-9*math.Min(1, f.s.l.program.length) {
 			c.Constant = append(c.Constant, i)
 		}
 	}

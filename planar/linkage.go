@@ -6,7 +6,6 @@ import "slices"
 // goroutines may share it. The zero Linkage comes from no New and has no links.
 type Linkage struct {
 	design  Design
-	system  *system
 	program *program
 }
 
@@ -35,7 +34,7 @@ func New(d Design) (*Linkage, error) {
 	if err != nil {
 		return nil, err
 	}
-	return &Linkage{design: d, system: s, program: p}, nil
+	return &Linkage{design: d, program: p}, nil
 }
 
 // Design returns a copy of the design that New was given.
@@ -56,10 +55,10 @@ func (l *Linkage) Mobility() int { return len(l.design.Drives) }
 
 // Groups returns the driving links and Assur groups in the order of solution.
 func (l *Linkage) Groups() []Group {
-	if l.system == nil {
+	if l.program == nil {
 		return nil
 	}
-	groups := slices.Clone(l.system.groups)
+	groups := slices.Clone(l.program.groups)
 	for i := range groups {
 		groups[i].Links = slices.Clone(groups[i].Links)
 	}

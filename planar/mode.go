@@ -65,7 +65,7 @@ var runes = map[branch]rune{left: '+', right: '-', parallel: '=', contrary: 'x'}
 // mode that the linkage doesn't have, and for a group of higher class, whose modes
 // have no names; rigid.ErrUnreachable where the mode doesn't close at in.
 func (l *Linkage) AssembleMode(mode string, in ...rigid.Coordinate) (*State, error) {
-	if l.system == nil || len(in) != l.program.drives {
+	if l.program == nil || len(in) != l.program.drives {
 		return nil, rigid.ErrInput
 	}
 	s := newState(l)

@@ -51,7 +51,7 @@ var ErrIncomplete = errors.New("twopoint: assembly modes not complete")
 func (l *Linkage) Modes(in ...rigid.Coordinate) iter.Seq2[*State, error] {
 	in = slices.Clone(in)
 	return func(yield func(*State, error) bool) {
-		if l.system == nil || len(in) != l.program.drives {
+		if l.program == nil || len(in) != l.program.drives {
 			yield(nil, rigid.ErrInput)
 			return
 		}
@@ -253,7 +253,7 @@ func (l *Linkage) names(group int) (names []string) {
 	if group < 0 {
 		return nil
 	}
-	for _, k := range l.system.groups[group].Links {
+	for _, k := range l.program.groups[group].Links {
 		names = append(names, l.design.Links[k])
 	}
 	return names

@@ -131,8 +131,8 @@ type variation struct {
 
 func newVariation(s *State) *variation {
 	links := s.l.program.system.links
-	v := &variation{s: s, length: s.l.system.length, n: 3 * (links - 1), orders: 3, links: make([]deviation, links)}
-	v.column = s.l.system.columns()
+	v := &variation{s: s, length: s.l.program.length, n: 3 * (links - 1), orders: 3, links: make([]deviation, links)}
+	v.column = s.l.program.columns()
 	v.bonds, v.unknown = s.l.design.bonds(v.column)
 	v.force, v.right = make([]rigid.Coordinate, len(v.bonds)), make([]float64, len(v.bonds))
 	for i := range v.x {

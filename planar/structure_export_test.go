@@ -8,7 +8,7 @@ import (
 // Checks returns what of a linkage is checked instead of solved.
 func Checks(l *Linkage) []string {
 	var units []string
-	for _, c := range l.system.checks {
+	for _, c := range l.program.checks {
 		units = append(units, c.unit)
 	}
 	return units
@@ -17,7 +17,7 @@ func Checks(l *Linkage) []string {
 // Once reports whether every unknown and every row is in one block, and no row
 // needs an unknown of a later one.
 func Once(l *Linkage) error {
-	s := l.system
+	s := &l.program.system
 	var unknowns, rows []int
 	for _, b := range s.blocks {
 		if len(b.unknowns) != len(b.rows) || len(b.rows) == 0 || b.group < 0 || b.group >= len(s.groups) {
@@ -48,7 +48,7 @@ func Once(l *Linkage) error {
 // Sizes returns the number of unknowns of every block, in the order of solution.
 func Sizes(l *Linkage) []int {
 	var sizes []int
-	for _, b := range l.system.blocks {
+	for _, b := range l.program.blocks {
 		sizes = append(sizes, len(b.unknowns))
 	}
 	return sizes
