@@ -1,6 +1,7 @@
 package planar
 
 import (
+	"fmt"
 	"math"
 
 	"example.com/twopoint/rigid"
@@ -14,7 +15,8 @@ import (
 //	Σ |sensitivity| × tolerance
 //
 // by are the derivatives from State.Sensitivity; tolerances are ± so many m or rad,
-// one a dimension. A wrong number of them, or one below zero, is rigid.ErrInput.
+// one a dimension. A wrong number of them, or one below zero, is an error that wraps
+// rigid.ErrInput.
 func WorstCase(by []rigid.Point, tolerances []float64) (rigid.Point, error) {
 	return band(by, tolerances, func(sum, x float64) float64 { return sum + math.Abs(x) })
 }
@@ -33,13 +35,13 @@ func RootSumSquare(by []rigid.Point, tolerances []float64) (rigid.Point, error) 
 // band adds up the effects of all dimensions, number by number.
 func band(by []rigid.Point, tolerances []float64, add func(sum, x float64) float64) (rigid.Point, error) {
 	if len(by) != len(tolerances) {
-		return rigid.Point{}, rigid.ErrInput
+		return rigid.Point{}, fmt.Errorf("%w: %d tolerances for %d dimensions", rigid.ErrInput, len(tolerances), len(by))
 	}
 	var sum rigid.Point
 	for i, p := range by {
 		t := tolerances[i]
 		if t < 0 {
-			return rigid.Point{}, rigid.ErrInput
+			return rigid.Point{}, fmt.Errorf("%w: tolerance %d is %g", rigid.ErrInput, i, t)
 		}
 		all := func(s, v r2.Vec) r2.Vec { return r2.Vec{X: add(s.X, t*v.X), Y: add(s.Y, t*v.Y)} }
 		sum = rigid.Point{Pos: all(sum.Pos, p.Pos), Vel: all(sum.Vel, p.Vel), Acc: all(sum.Acc, p.Acc)}
