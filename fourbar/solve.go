@@ -28,41 +28,33 @@ import (
 // where Margin is 0: it tells how well the coupler drives the follower there, not
 // whether the motion is determined.
 func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
-	k, w, al, ww := &l.quick, turn.Vel, turn.Acc, turn.Vel*turn.Vel
+	k, w, al, ww := &l.byCrank, turn.Vel, turn.Acc, turn.Vel*turn.Vel
 	sin, cos := trig.Sincos(turn.Pos)
 	ax, ay := k.arm*cos, k.arm*sin
 	dx := k.base - ax // d = (dx, −ay)
 	d2 := dx*dx + ay*ay
-	x := d2 - k.n
-	p := (k.g - x) * (k.g + x) // F²: see dyad's solve
-	if d2 < k.short {
-		p = (k.s - d2) * (d2 - k.e)
-	}
-	root := math.Sqrt(p)
-	margin := root * k.ig
-	if rate := ww + al*al; !(margin > k.least && rate > 0 && rate < 1e100) {
+	x, u, v, ff := k.dyad.Sides(d2)
+	root := math.Sqrt(ff)
+	margin := root * k.dyad.IG
+	if rate := ww + al*al; !(margin > l.quick.least && rate > 0 && rate < 1e100) {
 		return l.solveRare(dst, turn)
 	}
 
 	// What the root is not needed for, while it is on its way: m·d and −m×d.
-	i, c := 1/d2, k.side/p
+	i, c := 1/d2, l.side/ff
 	dot, cross, mm := ax*dx-ay*ay, k.base*ay, ww
 	if k.long {
 		dot, mm = k.base*dx, -ww
-	}
-	u, v := x+k.bb, -(x + k.cc)
-	if d2 < k.short {
-		u, v = d2+k.m, k.m-d2
 	}
 	ex, ey := i*dx, i*ay
 	di, ci := i*dot, i*cross
 
 	// The directions of R = (u d + F d⊥)/2d² and Q = (v d + F d⊥)/2d², and the
 	// factors that bring them to length 1: see dyad's unit.
-	f := k.side * root
-	along, across := k.hb*u, k.hb*f
+	f := l.side * root
+	along, across := l.quick.hb*u, l.quick.hb*f
 	rx, ry := along*ex+across*ey, across*ex-along*ey
-	along, across = k.hc*v, k.hc*f
+	along, across = l.quick.hc*v, l.quick.hc*f
 	qx, qy := along*ex+across*ey, across*ex-along*ey
 	nr, nq := 1.5-0.5*(rx*rx+ry*ry), 1.5-0.5*(qx*qx+qy*qy)
 
@@ -74,10 +66,10 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 	cw := c * w
 	w3, w4 := cw*qc, cw*rc
 	ww3, ww4 := w3*w3, w4*w4
-	g3, g4 := ww3*x+ww4*k.cc, ww3*k.bb+ww4*x
-	if d2 < k.short {
+	g3, g4 := ww3*x+ww4*k.dyad.CC, ww3*k.dyad.BB+ww4*x
+	if d2 < k.dyad.Short {
 		e := 2 * cw * cross * (w3 + w4) // ω4² − ω3²
-		g3, g4 = k.cc*e-ww3*v, ww4*u-k.bb*e
+		g3, g4 = k.dyad.CC*e-ww3*v, ww4*u-k.dyad.BB*e
 	}
 	al3 := c * (al*qc + mm*qd - g3)
 	al4 := c * (al*rc + mm*rd + g4)
@@ -124,11 +116,11 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 		swing = l.wind(turn.Pos, swing)
 	}
 	dst.Swing.Pos = swing
-	dst.Transmission = trig.AngleOf(-x*k.ig, margin, 1)
+	dst.Transmission = trig.AngleOf(-x*k.dyad.IG, margin, 1)
 	return nil
 }
 
-// A kernel holds the constants of Solve's inner loop.
+// A kernel holds the constants of Solve's inner loop beside those of byCrank.
 //
 // That is one long function for the sake of speed: its numbers stay in registers,
 // where in the parts that solveRare is made of they go through memory from one to
@@ -158,27 +150,13 @@ func (l *Linkage) Solve(dst *State, turn rigid.Coordinate) error {
 // from the crank, with −m the vector along the frame, which turns at −ω: ω×m and α×m
 // keep their signs, ω²m changes its own, and ω and α are added in the end.
 type kernel struct {
-	base, arm      float64 // Frame and Crank
-	long           bool    // whether the crank is longer than the frame
-	side           float64 // +1 for Open, −1 for Crossed
-	least          float64 // Margin above which nothing is out of the ordinary
-	g, ig, n       float64 // 2bc, 1/2bc, b² + c²
-	hb, hc, bb, cc float64 // 1/2b, 1/2c, 2b², 2c²
-	short          float64 // d² below which d is shorter than coupler and follower
-	m, s, e        float64 // (b − c)(b + c), (b + c)², (b − c)²
+	least  float64 // Margin above which nothing is out of the ordinary
+	hb, hc float64 // 1/2b, 1/2c
 }
 
 func (l *Linkage) newKernel() kernel {
-	b, c := l.coupler, l.follower
-	k := kernel{
-		base: l.frame, arm: l.crank, long: l.crank > l.frame, side: l.side,
-		g: 2 * b * c, ig: 1 / (2 * b * c), n: b*b + c*c,
-		hb: 0.5 / b, hc: 0.5 / c, bb: 2 * b * b, cc: 2 * c * c,
-		short: min(b*b, c*c),
-		m:     (b - c) * (b + c), s: (b + c) * (b + c), e: (b - c) * (b - c),
-	}
-	k.least = max(rigid.LeastMargin, l.byCrank.near)
-	if l.dim.Branch > Crossed || l.longest > 1e6*min(l.frame, l.crank, b, c) {
+	k := kernel{least: max(rigid.LeastMargin, l.byCrank.near), hb: 0.5 / l.coupler, hc: 0.5 / l.follower}
+	if l.dim.Branch > Crossed || l.longest > 1e6*min(l.frame, l.crank, l.coupler, l.follower) {
 		k.least = math.Inf(1)
 	}
 	return k

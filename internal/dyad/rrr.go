@@ -12,10 +12,10 @@ type RRR struct {
 	B, C   float64
 	ib, ic float64 // 1/b, 1/c
 	g      float64 // 2bc
-	ig     float64 // 1/2bc
+	IG     float64 // 1/2bc
 	n      float64 // b² + c²
-	bb, cc float64 // 2b², 2c²
-	short  float64 // |AC|² below which AC is the shortest side
+	BB, CC float64 // 2b², 2c²
+	Short  float64 // |AC|² below which AC is the shortest side
 	m      float64 // (b − c)(b + c)
 	s      float64 // (b + c)²
 	e      float64 // (b − c)²
@@ -27,8 +27,8 @@ func NewRRR(b, c float64) RRR {
 	point := 0x1p-50 * (b + c)
 	return RRR{
 		B: b, C: c, ib: 1 / b, ic: 1 / c,
-		g: 2 * b * c, ig: 1 / (2 * b * c), n: b*b + c*c,
-		bb: 2 * b * b, cc: 2 * c * c, short: min(b*b, c*c),
+		g: 2 * b * c, IG: 1 / (2 * b * c), n: b*b + c*c,
+		BB: 2 * b * b, CC: 2 * c * c, Short: min(b*b, c*c),
 		m: (b - c) * (b + c), s: (b + c) * (b + c), e: (b - c) * (b - c),
 		point: point * point,
 	}
@@ -48,7 +48,7 @@ type Triangle struct {
 // 0, and there are no rates.
 func (k *RRR) Place(t *Triangle, d r2.Vec, side float64) bool {
 	d2 := d.X*d.X + d.Y*d.Y
-	x, u, v, p := k.solve(d2)
+	x, u, v, p := k.Sides(d2)
 	if !(p >= 0 && d2 > k.point) {
 		return false
 	}
@@ -56,19 +56,19 @@ func (k *RRR) Place(t *Triangle, d r2.Vec, side float64) bool {
 	return true
 }
 
-// solve returns for d² = |AC|²
+// Sides returns for d² = |AC|²
 //
 //	x = d² − b² − c²,  u = d² + b² − c²,  v = b² − c² − d²,  F² = (2bc − x)(2bc + x)
 //
 // F² is 16 times the square of the area. All are formed from x, so that its rounding
 // is to all of them one small change of d. Where d is the shortest side it would be
 // a large one: there F² has Heron's factors.
-func (k *RRR) solve(d2 float64) (x, u, v, ff float64) {
+func (k *RRR) Sides(d2 float64) (x, u, v, ff float64) {
 	x = d2 - k.n
-	if d2 < k.short {
+	if d2 < k.Short {
 		return x, d2 + k.m, k.m - d2, (k.s - d2) * (d2 - k.e)
 	}
-	return x, x + k.bb, -(x + k.cc), (k.g - x) * (k.g + x)
+	return x, x + k.BB, -(x + k.CC), (k.g - x) * (k.g + x)
 }
 
 // A Link is the direction of a link, with its angular velocity and acceleration.
@@ -83,7 +83,7 @@ type Link struct {
 // are not finite: see Margin.
 func (k *RRR) Move(t *Triangle, ab, cb *Link, d, w, z r2.Vec, side float64) bool {
 	d2 := d.X*d.X + d.Y*d.Y
-	x, u, v, p := k.solve(d2)
+	x, u, v, p := k.Sides(d2)
 	if !(p >= 0 && d2 > k.point) {
 		return false
 	}
@@ -101,7 +101,7 @@ func (k *RRR) Move(t *Triangle, ab, cb *Link, d, w, z r2.Vec, side float64) bool
 	ww1, ww2 := w1*w1, w2*w2
 	z1x, z1y := z.X-ww1*rx+ww2*qx, z.Y-ww1*ry+ww2*qy
 	z2x, z2y := z1x, z1y
-	if d2 < k.short { // R may be nearly Q: R = Q + d, ω2 − ω1 = −2 w·d/F
+	if d2 < k.Short { // R may be nearly Q: R = Q + d, ω2 − ω1 = −2 w·d/F
 		e := c * (w.X*d.X + w.Y*d.Y) * (w1 + w2) // ω2² − ω1²
 		z1x, z1y = z.X-ww1*d.X+e*qx, z.Y-ww1*d.Y+e*qy
 		z2x, z2y = z.X-ww2*d.X+e*rx, z.Y-ww2*d.Y+e*ry
@@ -188,7 +188,7 @@ func (g *Growth) Acc(t *Triangle, w1, w2 float64) r2.Vec {
 
 // Margin returns |sin| of the angle between the links, at most 1.
 func (k *RRR) Margin(t *Triangle) float64 {
-	m := math.Abs(t.F) * k.ig
+	m := math.Abs(t.F) * k.IG
 	if m > 1 {
 		return 1
 	}
@@ -196,7 +196,7 @@ func (k *RRR) Margin(t *Triangle) float64 {
 }
 
 // Cos returns the cosine of the angle between the links at B.
-func (k *RRR) Cos(t *Triangle) float64 { return -t.X * k.ig }
+func (k *RRR) Cos(t *Triangle) float64 { return -t.X * k.IG }
 
 // unit brings a vector near length 1 to it: 3/2 − n/2 is 1/√n to first order about
 // n = 1. Only a link shorter than the rounding of the other lengths is farther off.
