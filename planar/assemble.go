@@ -180,12 +180,7 @@ func (s *State) guessed(guess []rigid.Placement, l Link) rigid.Pose {
 // driven returns where a guess has a drive.
 func (s *State) driven(i int, guess []rigid.Placement) float64 {
 	at := func(l Link, x, y float64) r2.Vec { return s.guessed(guess, l).Point(r2.Vec{X: x, Y: y}) }
-	angle := func(l Link) float64 {
-		if l == Frame {
-			return 0
-		}
-		return guess[l].Angle
-	}
+	angle := func(l Link) float64 { return guessedAngle(guess, l) }
 	switch d := s.l.design.Drives[i].(type) {
 	case Turn:
 		return angle(d.Of) - angle(d.From)

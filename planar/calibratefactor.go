@@ -100,9 +100,7 @@ func (f *fitter) unit(j int) float64 {
 // share of the squared residuals that it should take away.
 func (p *split) step(damping float64) (step []float64, gain float64) {
 	step = make([]float64, len(p.s))
-	rest := p.rest
 	for k, s := range p.s {
-		rest += p.along[k] * p.along[k]
 		if s < alike {
 			continue
 		}
@@ -114,10 +112,19 @@ func (p *split) step(damping float64) (step []float64, gain float64) {
 			}
 		}
 	}
-	if rest > 0 {
-		gain /= rest
+	if all := p.total(); all > 0 {
+		gain /= all
 	}
 	return step, gain
+}
+
+// total returns the square of all residuals.
+func (p *split) total() float64 {
+	sum := p.rest
+	for _, x := range p.along {
+		sum += x * x
+	}
+	return sum
 }
 
 // sets names the dimensions of each combination that changes no reading: a basis of

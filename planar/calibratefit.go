@@ -19,12 +19,17 @@ func (f *fitter) fit() error {
 		return err
 	}
 	damping, refused := 1e-4, 0
+	var p *split // of the pass that was taken last
 	for f.passes < mostPasses && !f.done {
-		step, gain := f.factors().step(damping)
+		if p == nil {
+			p = f.factors()
+		}
+		step, gain := p.step(damping)
 		if f.done = f.still(step); f.done {
 			break
 		}
-		next, err := f.run(plus(f.change, step))
+		to := plus(f.change, step)
+		next, err := f.run(to)
 		if err != nil {
 			return err
 		}
@@ -35,7 +40,7 @@ func (f *fitter) fit() error {
 		}
 		// within a hundredth of a standard deviation of all changes together
 		f.done = gain*float64(next.used) < 1e-4 && damping <= 1e-4
-		f.now, f.change, refused = next, plus(f.change, step), 0
+		f.now, f.change, refused, p = next, to, 0, nil
 		damping = math.Max(damping/10, 1e-12)
 		if moved, err := f.trim(); err != nil {
 			return err
@@ -119,15 +124,14 @@ func (f *fitter) result() (*Calibrated, error) {
 		Readings: f.now.used, Outliers: f.now.out, Lost: f.now.lost,
 		Passes: f.passes, Converged: f.done,
 	}
-	sum, rank := p.rest, 0
-	for k, s := range p.s {
-		sum += p.along[k] * p.along[k]
+	all, rank := p.total(), 0
+	for _, s := range p.s {
 		if s >= alike {
 			rank++
 		}
 	}
-	c.RMS = math.Sqrt(sum / float64(f.now.used))
-	variance := sum / float64(f.now.used-rank)
+	c.RMS = math.Sqrt(all / float64(f.now.used))
+	variance := all / float64(f.now.used-rank)
 	for i := range n {
 		for j := i; j < n; j++ {
 			v := 0.0

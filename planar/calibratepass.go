@@ -13,9 +13,8 @@ type fitter struct {
 	s     *State
 	log   iter.Seq2[Sample, error]
 	c     Calibration
-	all   Design // the design, phases given; its drives go on through the outputs
-	joint int    // of the first output
-	guess []rigid.Placement
+	all   Design         // the design, phases given; its drives go on through the outputs
+	joint int            // of the first output
 	inner []Dimension    // of each dimension what the linkage has
 	outer [][]outerEntry // and what the outputs have
 	cut   float64        // residuals beyond it are left out
@@ -60,11 +59,11 @@ func (f *fitter) machine() {
 	}
 	f.joint = len(f.all.Joints) + len(f.all.Drives)
 	f.all.Drives = append(f.all.Drives, f.c.Outputs...)
+	f.all.Guess = make([]rigid.Placement, len(f.all.Links))
 	for l := range f.all.Links {
 		p := f.s.Motion(Link(l)).Pose
-		f.guess = append(f.guess, rigid.Placement{X: p.Origin.X, Y: p.Origin.Y, Angle: p.Angle()})
+		f.all.Guess[l] = rigid.Placement{X: p.Origin.X, Y: p.Origin.Y, Angle: p.Angle()}
 	}
-	f.all.Guess = f.guess
 	f.change, f.samples = make([]float64, len(f.c.By)), -1
 	f.span = make([]rigid.Interval, len(f.s.now.in))
 	for i := range f.span {
@@ -122,7 +121,7 @@ func (f *fitter) put(d Design, zero []float64) (*State, error) {
 	for i := range in {
 		in[i] = rigid.Coordinate{Pos: in[i].Pos + zero[i]}
 	}
-	return l.Assemble(f.guess, in...)
+	return l.Assemble(d.Guess, in...)
 }
 
 // run reads the log once, with changes made. The pass is nil, and why says it, where

@@ -183,17 +183,16 @@ func (c *compiler) rpr(p *puzzle, d dyadTies) bool {
 	if r.a == one.body { // the slot is in the second
 		one, a, two, at = two, at, one, a
 	}
-	fa, fb := form0(&c.angles[one.body]), form0(&c.angles[two.body])
-	turn := fa.add(-1, &fb)
-	if len(turn.psi)+len(turn.in)+len(turn.phase) > 0 {
+	turn, ok := c.fixedTurn(one.body, two.body)
+	if !ok {
 		return false
 	}
 	n := r2.Vec{X: -r.u.Y, Y: r.u.X}
 	// n·(A − C) = n·(A − pb) + value + n·(pa − C), in the axes of the slot
-	e := r2.Dot(n, rotate(r2.Sub(one.at, r.pb), turn.c)) + r.value + r2.Dot(n, r2.Sub(r.pa, two.at))
+	e := r2.Dot(n, rotate(r2.Sub(one.at, r.pb), turn)) + r.value + r2.Dot(n, r2.Sub(r.pa, two.at))
 	o := &rpr{k: dyad.RPR{E: e}, i: c.dyads, at: c.slots, a: a, c: at, one: one, two: two, limit: c.limit(), seen: c.seen(one.body, two.body)}
 	o.u2 = r2.Vec{X: r.u.X, Y: -r.u.Y}
-	o.u1 = turned(o.u2, r2.Vec{X: math.Cos(turn.c), Y: math.Sin(turn.c)})
+	o.u1 = turned(o.u2, r2.Vec{X: math.Cos(turn), Y: math.Sin(turn)})
 	o.size = c.reachOf(p)
 	c.dyads++
 	c.slots++

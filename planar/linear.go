@@ -106,6 +106,14 @@ func (l *linear) sum() angleSum {
 	return s
 }
 
+// fixedTurn returns the angle of a body less that of another, and whether it is
+// constant.
+func (c *compiler) fixedTurn(of, from int) (float64, bool) {
+	a, b := form0(&c.angles[of]), form0(&c.angles[from])
+	turn := a.add(-1, &b)
+	return turn.c, len(turn.psi)+len(turn.in)+len(turn.phase) == 0
+}
+
 // total returns the angle of a body with its whole turns.
 func (c *compiler) total(body int) angleSum {
 	if c.counted[body] {
@@ -117,11 +125,14 @@ func (c *compiler) total(body int) angleSum {
 
 // turn sets the angle of a body, if it is known and not set.
 func (c *compiler) turn(body int) {
-	if c.turned[body] || !c.known(body) {
+	if c.turned[body] {
+		return
+	}
+	l := c.linear(body)
+	if len(l.psi) > 0 {
 		return
 	}
 	c.turned[body] = true
-	l := c.linear(body)
 	if s := l.sum(); s.follows() {
 		c.emit(-1, &follow{body, s.bodies[0].Index, s.u})
 	} else {

@@ -5,14 +5,17 @@ import (
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
+// guessedAngle returns the angle that a guess has of a link.
+func guessedAngle(guess []rigid.Placement, l Link) float64 {
+	if l == Frame {
+		return 0
+	}
+	return guess[l].Angle
+}
+
 // readPhases reads the phases that are as assembled from the guess.
 func (s *State) readPhases(guess []rigid.Placement) {
-	angle := func(l Link) float64 {
-		if l == Frame {
-			return 0
-		}
-		return guess[l].Angle
-	}
+	angle := func(l Link) float64 { return guessedAngle(guess, l) }
 	for i, j := range s.l.design.Joints {
 		switch j := j.(type) {
 		case GearPair:

@@ -64,9 +64,8 @@ func (c *compiler) besideOf(r *row, p spot) (r2.Vec, bool) {
 	if v == (r2.Vec{}) {
 		return v, true
 	}
-	a, b := form0(&c.angles[r.b]), form0(&c.angles[r.a])
-	turn := a.add(-1, &b)
-	return rotate(v, turn.c), len(turn.psi)+len(turn.in)+len(turn.phase) == 0
+	turn, ok := c.fixedTurn(r.b, r.a)
+	return rotate(v, turn), ok
 }
 
 // displacement returns the part of a row's displacement along its line that
@@ -78,10 +77,10 @@ func (c *compiler) displacement(r *row) *angleSum {
 	if r.kind == rowSlide {
 		return &angleSum{in: []term{{r.drive, 1}}}
 	}
-	if !c.known(r.a) || !c.known(r.b) {
+	a, b := c.linear(r.a), c.linear(r.b)
+	if len(a.psi)+len(b.psi) > 0 {
 		return nil
 	}
-	a, b := c.linear(r.a), c.linear(r.b)
 	turn := b.add(-1, &a)
 	turn = linear{}.add(-r.rate, &turn)
 	if r.phased {
