@@ -47,7 +47,7 @@ func newSlotForm(r, c, e float64, mount rigid.Placement) slotForm {
 	if r > c {
 		long, short, across = r, c, -c
 	}
-	d := math.Abs(e)
+	m, d := mount.Pose(), math.Abs(e)
 	gap, size, past := long-short, max(long, d), long-d
 	least := (gap - d) * (gap + d)
 	if d > short { // the longer of the two first: where lengths nearly cancel that difference is exact
@@ -64,8 +64,8 @@ func newSlotForm(r, c, e float64, mount rigid.Placement) slotForm {
 		clear: max(floor, 4*rigid.LeastMargin*rigid.LeastMargin*r*r),
 		minus: -r * c, perCrank: 1 / r, near: r * (r - c), rc2: 2 * r * c, rc4: 4 * r * c, difference: (r - c) * (r + c),
 		slack: 2 * beyond * size * d,
-		mount: mount.Pose(),
-		pivot: mount.Pose().Point(r2.Vec{X: -c}),
+		mount: m,
+		pivot: m.Point(r2.Vec{X: -c}),
 	}
 }
 
@@ -122,7 +122,8 @@ func (k *slotForm) margin(s float64) float64 {
 }
 
 // place solves the position for the crank's angle φ, the sine and cosine of its
-// half, D² and σ², all cases of it: move is quicker in the usual one.
+// half, D² and σ², all cases of it: SlottedLever.Solve is quicker in the usual
+// one.
 //
 // At the limit of a crank that cannot turn fully σ is 0 and there are no
 // derivatives. The swing is continuous in φ: less the turn of the longer of crank
