@@ -102,6 +102,23 @@ func arrow(p *plot.Plot, from, by r2.Vec, c color.Color) error {
 	return line(p, plotter.XYs{xy(from), xy(tip), xy(a), xy(tip), xy(b)}, c, 0.8, "")
 }
 
+// fill draws areas without an outline and enters them in the legend, if they have a
+// name.
+func fill(p *plot.Plot, rings []plotter.XYs, c color.Color, name string) error {
+	for i, ring := range rings {
+		area, err := plotter.NewPolygon(ring)
+		if err != nil {
+			return err
+		}
+		area.Color, area.LineStyle.Width = c, 0
+		p.Add(area)
+		if i == 0 && name != "" {
+			p.Legend.Add(name, area)
+		}
+	}
+	return nil
+}
+
 func xy(v r2.Vec) plotter.XY { return plotter.XY{X: v.X, Y: v.Y} }
 
 // square gives both axes one scale, and returns the height of the picture.

@@ -129,17 +129,12 @@ func drawTerms(m *machine, rows []row) (vg.Length, []*plot.Plot, error) {
 		})
 		up, down := stack(above, part, 1), stack(below, part, -1)
 		for i, side := range [][2]plotter.XYs{{above, up}, {below, down}} {
-			for _, ring := range bands(side[0], side[1]) {
-				area, err := plotter.NewPolygon(ring)
-				if err != nil {
-					return 0, nil, err
-				}
-				area.Color, area.LineStyle.Width = t.ink, 0
-				p.Add(area)
-				if i == 0 {
-					p.Legend.Add(t.name, area)
-				}
-				break
+			name := t.name
+			if i > 0 {
+				name = ""
+			}
+			if err := fill(p, bands(side[0], side[1]), t.ink, name); err != nil {
+				return 0, nil, err
 			}
 		}
 		above, below = up, down
@@ -248,13 +243,8 @@ func drawBand(m *machine, rows []row) (vg.Length, []*plot.Plot, error) {
 	for i, x := range off {
 		less[i] = plotter.XY{X: x.X, Y: -x.Y}
 	}
-	for _, ring := range bands(less, off) {
-		area, err := plotter.NewPolygon(ring)
-		if err != nil {
-			return 0, nil, err
-		}
-		area.Color, area.LineStyle.Width = sky, 0
-		p.Add(area)
+	if err := fill(p, bands(less, off), sky, ""); err != nil {
+		return 0, nil, err
 	}
 	if err := line(p, off, blue, 1.2, ""); err != nil {
 		return 0, nil, err

@@ -28,15 +28,15 @@ func (e estimate) beyond(tolerance float64) bool {
 
 // A report is what a log says about a press.
 type report struct {
-	Log         logged      `json:"log"`
-	Calibration calibration `json:"calibration"`
-	Slip        slip        `json:"slip"`
-	Jumps       []jumped    `json:"jumps"`
-	MoreJumps   int         `json:"moreJumps"` // not followed one by one
-	Links       links       `json:"links"`
-	Pattern     pattern     `json:"pattern"`
-	Motion      motions     `json:"motion"`
-	Verdict     verdict     `json:"verdict"`
+	Log         logged
+	Calibration calibration
+	Slip        slip
+	Jumps       []jumped
+	MoreJumps   int // not followed one by one
+	Links       links
+	Pattern     pattern
+	Motion      motions
+	Verdict     verdict
 }
 
 // logged says what was read.
